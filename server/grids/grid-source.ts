@@ -1,0 +1,50 @@
+import type { Grid, GridWindow } from '../../shared/science/grid'
+
+export type GridFormat = 'netcdf-classic' | 'netcdf4' | 'geotiff'
+
+/** One instant or period a variable holds. Epoch milliseconds UTC; null when the file itself has no time. */
+export interface LayerTime {
+  observedAt: number | null
+  /** Set for composites: the period is [observedAt, endsAt]. */
+  endsAt: number | null
+  /** False when only a date is known (shown without a clock time). */
+  hasClock: boolean
+  /** Where the time came from, for the report: 'time axis', 'global attribute', 'none'. */
+  from: string
+}
+
+/** A variable on a grid that could serve as a layer, as understood. */
+export interface GridVariable {
+  name: string
+  longName: string | null
+  standardName: string | null
+  /** Unit as the file spells it (null when none). */
+  fileUnit: string | null
+  /** Unit of the values `readWindow` returns ('mg m-3', 'sr-1', or the file's own spelling). */
+  unit: string | null
+  /** What was done to get there, for the report, e.g. 'scale 0.01, offset 0; kg m-3 to mg m-3'; null if nothing. */
+  conversion: string | null
+  /** 'chlorophyll', 'reflectance' (with wavelengthNm), or 'other'. Never 'chlorophyll' for an error, bias or count variable. */
+  quantity: 'chlorophyll' | 'reflectance' | 'other'
+  wavelengthNm: number | null
+  validMin: number | null
+  validMax: number | null
+  grid: Grid
+  times: LayerTime[]
+  attributes: Record<string, string | number | number[]>
+  dimensions: { name: string; size: number }[]
+}
+
+/**
+ * What the pipeline sees of a file, whatever its format. Values come unpacked, unit-converted and with NaN for
+ * missing (fill, missing value, outside the valid range), row-major over the window.
+ */
+export interface GridSource {
+  readonly format: GridFormat
+  readonly variables: GridVariable[]
+  readonly globalAttributes: Record<string, string | number | number[]>
+  readonly warnings: string[]
+  /** `step` indexes `times` of the variable. Throws LayerRefused when the bytes can't be trusted. */
+  readWindow(variable: string, step: number, window: GridWindow): Promise<Float64Array>
+  close(): void
+}
