@@ -1,0 +1,62 @@
+import { z } from 'zod'
+import { id, instant, version } from './common'
+
+export const quantities = ['chlorophyll', 'reflectance', 'other'] as const
+export const stages = ['near-real-time', 'reprocessed'] as const
+export const cadences = ['daily', '8-day', 'monthly'] as const
+
+const text = (max: number) => z.string().trim().min(1).max(max)
+
+export const feedFields = z.object({
+  name: text(100),
+  quantity: z.enum(quantities),
+  variable: text(200),
+  unit: text(50).nullable(),
+  /** log10: merged and averaged in log space, as suits chlorophyll. */
+  scale: z.enum(['log10', 'linear']),
+  cadence: z.enum(cadences).default('daily'),
+  stage: z.enum(stages).default('near-real-time'),
+  processingVersion: text(50).default('1'),
+  validMin: z.number().nullable().default(null),
+  validMax: z.number().nullable().default(null),
+  /** A file-name pattern: {yyyy} {MM} {dd} {DDD} {HH} {mm} are parts of the date, * is anything. */
+  fileNamePattern: text(200).nullable().default(null),
+  /** Views older than this when they arrive raise no letter at once. */
+  freshnessLimitHours: z.number().min(1).max(24 * 60).default(72),
+  /** No layer for this long: the feed is silent. */
+  silentAfterHours: z.number().min(1).max(24 * 120).default(72),
+})
+
+export const newFeed = feedFields.extend({ fileId: id.optional() })
+export type NewFeed = z.infer<typeof newFeed>
+export const feedProposal = feedFields
+export type FeedProposal = z.infer<typeof feedProposal>
+
+export const feedChange = z.object({
+  version,
+  name: text(100).optional(),
+  stage: z.enum(stages).optional(),
+  processingVersion: text(50).optional(),
+  validMin: z.number().nullable().optional(),
+  validMax: z.number().nullable().optional(),
+  fileNamePattern: text(200).nullable().optional(),
+  freshnessLimitHours: z.number().min(1).max(24 * 60).optional(),
+  silentAfterHours: z.number().min(1).max(24 * 120).optional(),
+  retired: z.boolean().optional(),
+})
+
+export const feed = feedFields.extend({
+  id,
+  derivedFrom: id.nullable(),
+  formula: z.string().nullable(),
+  formulaVersion: z.string().nullable(),
+  retired: z.boolean(),
+  createdAt: instant,
+  version,
+  layers: z.number().int(),
+  oldestLayerAt: instant.nullable(),
+  newestLayerAt: instant.nullable(),
+  newestAgeHours: z.number().nullable(),
+  silent: z.boolean(),
+})
+export type Feed = z.infer<typeof feed>

@@ -1,0 +1,105 @@
+import { z } from 'zod'
+import { id, instant } from './common'
+import { feedProposal } from './feeds'
+
+export const fileStatuses = ['received', 'processing', 'processed', 'waiting', 'refused'] as const
+export const fileStatus = z.enum(fileStatuses)
+export type FileStatus = z.infer<typeof fileStatus>
+
+export const reportVariable = z.object({
+  name: z.string(),
+  longName: z.string().nullable(),
+  quantity: z.string(),
+  unit: z.string().nullable(),
+  fileUnit: z.string().nullable(),
+  conversion: z.string().nullable(),
+  dimensions: z.array(z.object({ name: z.string(), size: z.number() })),
+  grid: z.object({
+    kind: z.string(),
+    rows: z.number(),
+    columns: z.number(),
+    west: z.number(),
+    south: z.number(),
+    east: z.number(),
+    north: z.number(),
+    crs: z.string().nullable(),
+  }),
+  times: z.object({
+    count: z.number(),
+    first: instant.nullable(),
+    last: instant.nullable(),
+    hasClock: z.boolean(),
+    from: z.string(),
+  }),
+  cells: z.number(),
+  valid: z.number(),
+  min: z.number().nullable(),
+  median: z.number().nullable(),
+  max: z.number().nullable(),
+})
+export type ReportVariable = z.infer<typeof reportVariable>
+
+export const fileReport = z.object({
+  format: z.string(),
+  variables: z.array(reportVariable),
+  warnings: z.array(z.string()),
+  /** Which feed took which variable, and in how many layers. */
+  feeds: z.array(z.object({ feedId: id, variable: z.string(), layers: z.number() })).default([]),
+})
+export type FileReport = z.infer<typeof fileReport>
+
+export const refusal = z.object({
+  code: z.string(),
+  message: z.string(),
+  details: z.record(z.string(), z.unknown()),
+})
+
+export const fileItem = z.object({
+  id,
+  name: z.string(),
+  checksum: z.string(),
+  bytes: z.number().int(),
+  status: fileStatus,
+  origin: z.enum(['upload', 'inbox', 'command']),
+  uploadedBy: z.object({ id, name: z.string() }).nullable(),
+  receivedAt: instant,
+  processedAt: instant.nullable(),
+  feedId: id.nullable(),
+  observedAt: instant.nullable(),
+  refusal: refusal.nullable(),
+  /** A sentence while the file waits: for what. */
+  waitingFor: z.string().nullable(),
+  progress: z.object({ done: z.number().int(), total: z.number().int() }).nullable(),
+})
+export type FileItem = z.infer<typeof fileItem>
+
+export const file = fileItem.extend({
+  report: fileReport.nullable(),
+  proposal: feedProposal.nullable(),
+  layers: z.array(z.object({ id, feedId: id, observedAt: instant })),
+  /** The figures this file gave, newest first: one row a region, feed and day (at most 200). */
+  summaries: z.array(
+    z.object({
+      regionId: id,
+      regionName: z.string(),
+      feedId: id,
+      day: z.string(),
+      coverage: z.number().nullable(),
+      median: z.number().nullable(),
+      geometricMean: z.number().nullable(),
+    }),
+  ),
+})
+export type OffingFile = z.infer<typeof file>
+
+export const receipt = z.object({
+  id,
+  name: z.string(),
+  checksum: z.string(),
+  status: fileStatus,
+})
+
+export const uploadFields = z.object({
+  feedId: z.coerce.number().int().positive().optional(),
+  observedAt: instant.optional(),
+})
