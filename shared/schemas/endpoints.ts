@@ -102,7 +102,7 @@ export const endpoints = {
   metrics: endpoint({ method: 'GET', path: '/metrics', may: 'metrics:read', summary: 'Counters for a monitor', contentType: 'text/plain' }),
 
   listCaughtMail: endpoint({ method: 'GET', path: '/mail', may: 'anyone', summary: 'Letters caught by the local mail catcher (demo and development only)', reply: z.object({ items: z.array(duty.caughtLetter), nextCursor: z.null() }) }),
-  mailTo: endpoint({ method: 'GET', path: '/mail/:id', may: 'anyone', summary: 'One caught letter (demo and development only)', params: z.object({ id: z.string() }), reply: duty.caughtLetter }),
+  caughtLetter: endpoint({ method: 'GET', path: '/mail/:id', may: 'anyone', summary: 'One caught letter (demo and development only)', params: z.object({ id: z.string() }), reply: duty.caughtLetter }),
 } as const
 
 export type EndpointName = keyof typeof endpoints
