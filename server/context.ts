@@ -1,0 +1,21 @@
+import type { Logger } from 'pino'
+import type { Clock } from './clock'
+import type { Database } from './db'
+import type { Env } from './env'
+import type { Models } from './models'
+import type { News } from './news'
+import type { MailCatcher } from './mail/catcher'
+import type { Workers } from './workers/workers'
+
+/** What every use case is handed: one per process, or one per test. */
+export interface Context {
+  env: Env
+  clock: Clock
+  db: Database
+  models: Models
+  log: Logger
+  news: News
+  workers: Workers
+  /** Set in the demo and in development only. */
+  mailCatcher: MailCatcher | null
+}

@@ -1,0 +1,30 @@
+import { Umzug } from 'umzug'
+import type { Database } from '../db'
+import { sql as firstSchema } from './001-first-schema'
+
+const migrations = [{ name: '001-first-schema', sql: firstSchema }]
+
+/** Brings the database to the newest schema; answers the names of what was applied. */
+export async function migrate(db: Database): Promise<string[]> {
+  await db.sequelize.query('CREATE TABLE IF NOT EXISTS migrations (name TEXT PRIMARY KEY) WITHOUT ROWID')
+  const umzug = new Umzug({
+    migrations: migrations.map(({ name, sql }) => ({ name, up: () => apply(db, name, sql) })),
+    storage: {
+      // Recorded in the same transaction as the migration itself, in `apply`.
+      logMigration: async () => undefined,
+      unlogMigration: async () => undefined,
+      executed: async () => (await db.all<{ name: string }>('SELECT name FROM migrations ORDER BY name')).map((row) => row.name),
+    },
+    logger: undefined,
+  })
+  return (await umzug.up()).map((migration) => migration.name)
+}
+
+async function apply(db: Database, name: string, sql: string): Promise<void> {
+  await db.write(async (tx) => {
+    for (const statement of sql.split(/;\s*\n/).map((part) => part.trim()).filter(Boolean)) {
+      await db.sequelize.query(statement, { transaction: tx })
+    }
+    await db.run('INSERT INTO migrations (name) VALUES ($name)', { name }, tx)
+  })
+}
