@@ -8,7 +8,7 @@ type Vector = [number, number, number]
 const piecesPerSide = 4
 const fullHeightKm2 = areaToEquatorKm2(90)
 
-/** The point on the unit authalic sphere: areas there are areas on the ellipsoid, and the poles are points like others. */
+/** The point on the unit authalic sphere: its areas are the ellipsoid's, and poles are points like others. */
 function onAuthalicSphere([lon, lat]: [number, number]): Vector {
   const sine = Math.max(-1, Math.min(1, areaToEquatorKm2(lat) / fullHeightKm2))
   const cosine = Math.sqrt((1 - sine) * (1 + sine))
@@ -48,8 +48,8 @@ function transformCellKm2(grid: TransformGrid, row: number, column: number, unpr
 }
 
 /**
- * WGS84 area in km2 of each listed cell (whole cells, not shares). Axes grids: exact. Transform grids: the cell's outline,
- * four pieces a side, unprojected and measured on the sphere of equal area. A corner without a place on Earth gives NaN.
+ * WGS84 area in km2 of each listed cell (whole cells, not shares). Axes grids: exact. Transform grids: its outline, four
+ * pieces a side, unprojected and measured on the sphere of equal area. A corner without a place on Earth gives NaN.
  * RangeError for a transform grid without `unproject` (x, y of the crs to longitude, latitude), or a cell off the grid.
  */
 export function cellAreasKm2(grid: Grid, index: Uint32Array, unproject?: Unproject): Float64Array {

@@ -28,7 +28,12 @@ function withoutRepeats(edges: Float64Array): Float64Array {
   return edges.subarray(0, columns + 1)
 }
 
-function ringsOnAxes(geometry: Polygon | MultiPolygon, lon: Float64Array, mirrorX: number, mirrorY: number): PlaneRing[] {
+function ringsOnAxes(
+  geometry: Polygon | MultiPolygon,
+  lon: Float64Array,
+  mirrorX: number,
+  mirrorY: number,
+): PlaneRing[] {
   const [west, east] = [lon[0]!, lon[lon.length - 1]!]
   const rings: PlaneRing[] = []
   for (const part of partsOf(geometry)) {
@@ -80,7 +85,7 @@ type Emit = (row: number, column: number, share: number) => void
  * Longitudes in degrees; polygon and grid may count them differently (-180..180, 0..360, 170..190): the polygon is
  * shifted by full turns to wherever it meets the grid. Columns past a full circle are left out, so a repeated column
  * counts once. Rings need not be closed and may wind either way. `project` maps longitude and latitude to the plane of
- * a transform grid's crs. Errors: RangeError for a transform grid without `project`, or an outline torn by the projection.
+ * a transform grid's crs. Errors: RangeError for a transform grid without `project`, or an outline its projection tears.
  */
 export function cellShares(geometry: Polygon | MultiPolygon, grid: Grid, project?: Project): CellShares {
   const index: number[] = []

@@ -1,0 +1,64 @@
+/**
+ * Area in km2 by value: 20 bins a decade from 0.001 to 1000, so that "area above" can be answered for any level later.
+ * A Float64Array of 122: [0] below 0.001 (zero and negative values too), [1..120] the bins, [121] from 1000 on.
+ */
+export type AreaHistogram = Float64Array
+
+const binsPerDecade = 20
+const lowestExponent = -3
+const highestExponent = 3
+const bins = binsPerDecade * (highestExponent - lowestExponent)
+export const histogramLength = bins + 2
+
+/** Place of a value among the bins, as a fraction: 0 at 0.001, 120 at 1000. */
+function placeOf(value: number): number {
+  const place = (Math.log10(value) - lowestExponent) * binsPerDecade
+  const edge = Math.round(place)
+  // 0.001 and its like sit on an edge, and the logarithm misses it by its last digit.
+  return Math.abs(place - edge) < 1e-9 ? edge : place
+}
+
+/** The position of a value in an `AreaHistogram`. */
+export function binOf(value: number): number {
+  if (!(value > 0)) return 0
+  return Math.min(Math.max(Math.floor(placeOf(value)) + 1, 0), bins + 1)
+}
+
+/**
+ * Area in km2 with values at or above a level. Inside the bin that holds the level the area is taken as spread evenly
+ * in log10 of the value; at a bin's edge the answer is exact. Levels outside 0.001..1000 cannot be told: null.
+ */
+export function areaAboveKm2(histogram: AreaHistogram, level: number): number | null {
+  if (!(level > 0)) return null
+  const place = placeOf(level)
+  if (!(place >= 0 && place <= bins)) return null
+  let sum = 0
+  for (let bin = Math.floor(place) + 1; bin < histogramLength; bin++) sum += histogram[bin]!
+  return sum - histogram[Math.floor(place) + 1]! * (place - Math.floor(place))
+}
+
+/** For storage: one byte with the first bin in use, then little-endian float32 km2 up to the last one in use. */
+export function packHistogram(histogram: AreaHistogram): Uint8Array {
+  let last = histogramLength - 1
+  while (last >= 0 && histogram[last] === 0) last--
+  if (last < 0) return new Uint8Array(0)
+  let first = 0
+  while (histogram[first] === 0) first++
+  const bytes = new Uint8Array(1 + 4 * (last - first + 1))
+  const view = new DataView(bytes.buffer)
+  bytes[0] = first
+  for (let bin = first; bin <= last; bin++) view.setFloat32(1 + 4 * (bin - first), histogram[bin]!, true)
+  return bytes
+}
+
+/** The reverse of `packHistogram`. Bytes that are no packed histogram are a RangeError. */
+export function unpackHistogram(bytes: Uint8Array): AreaHistogram {
+  const histogram = new Float64Array(histogramLength)
+  if (bytes.length === 0) return histogram
+  const first = bytes[0]!
+  const count = (bytes.length - 1) / 4
+  if (!Number.isInteger(count) || first + count > histogramLength) throw new RangeError('These bytes are no histogram.')
+  const view = new DataView(bytes.buffer, bytes.byteOffset)
+  for (let i = 0; i < count; i++) histogram[first + i] = view.getFloat32(1 + 4 * i, true)
+  return histogram
+}
