@@ -1,0 +1,88 @@
+/** Digits of a figure: three significant, without an exponent and without digits it does not deserve. */
+export function threeDigits(value: number): string {
+  return significant(value, 3)
+}
+
+/** Two significant digits; "0.9", not "0.90", and whole numbers from ten up. */
+export function timesUsual(value: number): string {
+  if (value >= 10) return grouped(Math.round(value))
+  if (value >= 0.95) return value.toFixed(1)
+  return significant(value, 2).replace(/(\.\d)0$/, '$1')
+}
+
+/** A share 0..1 as whole per cent; a share that is above 0 never reads 0. */
+export function percent(share: number): string {
+  if (share > 0 && share < 0.005) return 'under 1 %'
+  return `${Math.round(share * 100)} %`
+}
+
+/** A chlorophyll or other value with the digits it deserves; undefined where it is missing. */
+export function figure(value: number | null | undefined): string | undefined {
+  return value == null ? undefined : threeDigits(value)
+}
+
+export function grouped(whole: number): string {
+  return String(whole).replace(/\B(?=(\d{3})+(?!\d))/g, '\u202f')
+}
+
+/** "mg m-3" as people write it: mg m⁻³. */
+export function unitWords(unit: string | null | undefined): string {
+  if (!unit) return ''
+  return unit.replace(/([a-zA-Z])\^?([-−]?\d+)/g, (_, letter: string, power: string) => letter + superscript(power))
+}
+
+export function megabytes(bytes: number): string {
+  if (bytes < 1000) return `${bytes} B`
+  if (bytes < 999_500) return `${significant(bytes / 1000, 2)} kB`
+  return `${significant(bytes / 1e6, bytes < 1e7 ? 2 : 3)} MB`
+}
+
+/** A checksum short enough to compare by eye: "9f2c 41d0 … 77ab". */
+export function shortChecksum(checksum: string): string {
+  return `${checksum.slice(0, 4)} ${checksum.slice(4, 8)} … ${checksum.slice(-4)}`
+}
+
+export function degrees(value: number, axis: 'latitude' | 'longitude'): string {
+  const minutes = Math.round(Math.abs(axis === 'longitude' ? wrapLongitude(value) : value) * 60)
+  const whole = Math.floor(minutes / 60)
+  const rest = minutes % 60
+  const half = minutes === 0 || whole === 180 ? '' : halfWord(value, axis)
+  return `${whole}°${rest ? `${String(rest).padStart(2, '0')}′` : ''}${half}`
+}
+
+const compass = ['N', 'NNE', 'NE', 'ENE', 'E', 'ESE', 'SE', 'SSE', 'S', 'SSW', 'SW', 'WSW', 'W', 'WNW', 'NW', 'NNW']
+
+/** "256° WSW": three digits and the compass point. */
+export function bearing(degreesFromNorth: number): string {
+  const turned = ((degreesFromNorth % 360) + 360) % 360
+  const whole = Math.round(turned) % 360
+  return `${String(whole).padStart(3, '0')}° ${compass[Math.round(turned / 22.5) % 16] ?? ''}`
+}
+
+export function countWords(count: number, one: string, many = `${one}s`): string {
+  return `${grouped(count)} ${count === 1 ? one : many}`
+}
+
+function significant(value: number, digits: number): string {
+  if (value === 0) return '0'
+  const magnitude = Math.floor(Math.log10(Math.abs(Number(value.toPrecision(digits)))))
+  if (magnitude >= digits - 1) {
+    const step = 10 ** (magnitude - digits + 1)
+    const rounded = Math.round(value / step) * step
+    return (rounded < 0 ? '−' : '') + grouped(Math.abs(rounded))
+  }
+  return value.toFixed(digits - 1 - magnitude).replace('-', '−')
+}
+
+function superscript(power: string): string {
+  return [...power].map((c) => (c === '-' || c === '−' ? '⁻' : '⁰¹²³⁴⁵⁶⁷⁸⁹'[Number(c)] ?? c)).join('')
+}
+
+function wrapLongitude(value: number): number {
+  return ((((value + 180) % 360) + 360) % 360) - 180
+}
+
+function halfWord(value: number, axis: 'latitude' | 'longitude'): string {
+  if (axis === 'latitude') return value < 0 ? 'S' : 'N'
+  return wrapLongitude(value) < 0 ? 'W' : 'E'
+}
