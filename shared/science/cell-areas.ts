@@ -48,7 +48,7 @@ function transformCellKm2(grid: TransformGrid, row: number, column: number, unpr
 }
 
 /**
- * WGS84 area in km2 of each listed cell (whole cells, not shares). Axes grids: exact. Transform grids: its outline, four
+ * WGS84 area in km2 of each listed cell (whole cells, not shares). Axes grids: exact. Transform: its outline, four
  * pieces a side, unprojected and measured on the sphere of equal area. A corner without a place on Earth gives NaN.
  * RangeError for a transform grid without `unproject` (x, y of the crs to longitude, latitude), or a cell off the grid.
  */

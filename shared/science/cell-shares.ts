@@ -85,7 +85,7 @@ type Emit = (row: number, column: number, share: number) => void
  * Longitudes in degrees; polygon and grid may count them differently (-180..180, 0..360, 170..190): the polygon is
  * shifted by full turns to wherever it meets the grid. Columns past a full circle are left out, so a repeated column
  * counts once. Rings need not be closed and may wind either way. `project` maps longitude and latitude to the plane of
- * a transform grid's crs. Errors: RangeError for a transform grid without `project`, or an outline its projection tears.
+ * a transform grid's crs. Errors: RangeError for a transform grid without `project`, or a torn outline.
  */
 export function cellShares(geometry: Polygon | MultiPolygon, grid: Grid, project?: Project): CellShares {
   const index: number[] = []

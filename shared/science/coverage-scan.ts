@@ -10,7 +10,7 @@ const roundingShare = 1e-13
 
 interface Edges {
   count: number
-  /** Five numbers an edge: x, y of the lower end, x, y of the upper end, weight (+1 right of the water, -1 left of it). */
+  /** Five numbers an edge: x, y of the lower end, x, y of the upper end, weight (+1 right of water, -1 left). */
   numbers: Float64Array
 }
 

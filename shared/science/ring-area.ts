@@ -1,7 +1,7 @@
 import type { MultiPolygon, Polygon, Position } from 'geojson'
 import { areaToEquatorKm2 } from './wgs84'
 
-/** Five-point Gauss-Legendre on -1..1: exact to the ninth degree, which leaves nothing over in pieces of two degrees. */
+/** Gauss-Legendre on -1..1: exact to the ninth degree, and nothing is left over in pieces of two degrees. */
 const nodes = [0, 0.5384693101056831, 0.906179845938664] as const
 const weights = [0.5688888888888889, 0.47862867049936647, 0.23692688505618908] as const
 const longestPieceDeg = 2
