@@ -4,7 +4,7 @@ interface Props<T extends string> {
   /** Said to screen readers; the words themselves tell the eye. */
   label: string
   options: readonly { value: T; label: string }[]
-  value: T
+  value: T | undefined
   onChange: (value: T) => void
 }
 
