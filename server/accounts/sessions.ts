@@ -1,0 +1,1 @@
+export const sessionDays = 30
