@@ -1,0 +1,149 @@
+import type { Dataset, File, Group } from 'h5wasm'
+import { guarded, hdf5Library } from '../hdf5-library'
+import { LayerRefused } from '../layer-refused'
+import { checkHdf5Size } from './hdf5-superblock'
+import { maxChunkBytes, maxVariables } from './limits'
+import { numberType, readAttributes } from './netcdf4-attributes'
+import type { RawNetcdf, RawVariable } from './raw-netcdf'
+
+const deepestGroup = 8
+const blockCells = 4 * 1024 * 1024
+/** Filters the library and its plugins can undo: deflate, shuffle, fletcher32, szip, nbit, scale-offset, then plugins. */
+const knownFilters = new Set([1, 2, 3, 4, 5, 6, 307, 32000, 32001, 32004, 32008, 32013, 32015, 32022, 32023, 32026])
+
+/** A NetCDF-4 or HDF5 file. Dimension scales name the dimensions; variables in groups are called group/name. */
+export async function openNetcdf4(path: string, start: number, fileSize: number): Promise<RawNetcdf> {
+  checkHdf5Size(path, start, fileSize)
+  const library = await hdf5Library()
+  const file = new library.File(path, 'r')
+  if (file.file_id < 0n) {
+    throw new LayerRefused('damaged', 'This file begins like NetCDF-4 (HDF5), but its structure cannot be read.', {})
+  }
+  try {
+    const datasets = new Map<string, Dataset>()
+    const attributes = reading('its structure', () => {
+      collect(library, file, '', 0, datasets)
+      return readAttributes(file)
+    })
+    const variables = [...datasets].flatMap(([name, dataset]) =>
+      reading(name, () => describe(name, dataset)) ?? [],
+    )
+    return {
+      format: 'netcdf4',
+      variables,
+      attributes,
+      warnings: [],
+      read: (variable, from, count) => readBlocks(variable, datasets.get(variable.name)!, from, count),
+      close: () => void file.close(),
+    }
+  } catch (error) {
+    file.close()
+    throw error
+  }
+}
+
+function collect(
+  library: Awaited<ReturnType<typeof hdf5Library>>,
+  group: File | Group,
+  prefix: string,
+  depth: number,
+  found: Map<string, Dataset>,
+): void {
+  for (const key of group.keys()) {
+    const entity = group.get(key)
+    if (entity instanceof library.Dataset) found.set(prefix + key, entity)
+    // Hard links may form circles: depth and number are bounded.
+    else if (entity instanceof library.Group && depth < deepestGroup) {
+      collect(library, entity, `${prefix}${key}/`, depth + 1, found)
+    }
+    if (found.size > maxVariables) {
+      throw new LayerRefused('too-large', `The file declares more than ${maxVariables} variables.`, {})
+    }
+  }
+}
+
+/** null for a dimension that has no variable of its own. */
+function describe(name: string, dataset: Dataset): RawVariable | null {
+  const { metadata } = dataset
+  const shape = metadata.shape ?? []
+  const scaleName = dataset.get_scale_name()
+  if (scaleName?.startsWith('This is a netCDF dimension but not a netCDF variable')) return null
+  const dimensions = shape.map((size, index) => {
+    if (scaleName !== null && shape.length === 1) return { name, size }
+    const scale = dataset.get_attached_scales(index)[0]
+    return { name: scale ? scale.replace(/^\/+/, '') : `unnamed dimension of ${size}`, size }
+  })
+  return { name, type: numberType(metadata), dimensions, attributes: readAttributes(dataset) }
+}
+
+function readBlocks(variable: RawVariable, dataset: Dataset, start: number[], count: number[]): Float64Array {
+  checkEncoding(variable, dataset)
+  const total = count.reduce((product, n) => product * n, 1)
+  const values = new Float64Array(total)
+  if (total === 0) return values
+  if (count.length === 0) {
+    values[0] = Number(reading(variable.name, () => dataset.value))
+    return values
+  }
+  // Blocks run along the first dimension with more than one index, in whole chunks, so no chunk is unpacked twice.
+  const along = Math.max(0, count.findIndex((n) => n > 1))
+  const perIndex = total / count[along]!
+  const chunk = dataset.metadata.chunks?.[along] ?? 1
+  const wanted = Math.max(1, Math.floor(blockCells / perIndex))
+  const step = Math.max(chunk, wanted - (wanted % chunk))
+  let filled = 0
+  const end = start[along]! + count[along]!
+  for (let from = start[along]!; from < end; ) {
+    const to = Math.min(end, from - (from % chunk) + step)
+    const ranges = start.map((first, d): [number, number] =>
+      d === along ? [from, to] : [first, first + count[d]!],
+    )
+    const block = reading(variable.name, () => dataset.slice(ranges))
+    if (!ArrayBuffer.isView(block)) throw damagedData(variable.name, 'no numbers came back')
+    const numbers = block as Float64Array | BigInt64Array
+    for (let i = 0; i < numbers.length; i++) values[filled + i] = Number(numbers[i])
+    filled += numbers.length
+    from = to
+  }
+  if (filled !== total) throw damagedData(variable.name, 'fewer numbers came back than were asked for')
+  return values
+}
+
+function checkEncoding(variable: RawVariable, dataset: Dataset): void {
+  const unknown = reading(variable.name, () => dataset.filters).find(({ id }) => !knownFilters.has(id))
+  if (unknown) {
+    throw new LayerRefused(
+      'unsupported-encoding',
+      `${variable.name} is compressed with a method Offing does not know (${unknown.name || 'no name'}, number ${unknown.id}).`,
+      { variable: variable.name, filter: unknown.id },
+    )
+  }
+  const { chunks, size } = dataset.metadata
+  const chunkBytes = chunks ? chunks.reduce((product, n) => product * n, size) : 0
+  if (chunkBytes > maxChunkBytes) {
+    throw new LayerRefused('too-large', `${variable.name} is stored in blocks of ${chunkBytes} bytes, too large to unpack.`, {
+      variable: variable.name,
+      chunkBytes,
+      maxChunkBytes,
+    })
+  }
+}
+
+/** Reads with errors thrown; whatever the library throws becomes a refusal. */
+function reading<T>(what: string, work: () => T): T {
+  try {
+    return guarded(work)
+  } catch (error) {
+    if (error instanceof LayerRefused) throw error
+    throw damagedData(what, error instanceof Error ? error.message : String(error), error)
+  }
+}
+
+function damagedData(what: string, reason: string, cause?: unknown): LayerRefused {
+  return new LayerRefused(
+    'damaged',
+    `The file is damaged: ${what} cannot be read back whole.`,
+    { what, reason: reason.slice(0, 300) },
+    { cause },
+  )
+}

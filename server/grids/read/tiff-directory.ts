@@ -1,0 +1,164 @@
+import { closeSync, openSync } from 'node:fs'
+import { LayerRefused } from '../layer-refused'
+import { readExactly } from './bytes'
+
+/** One image of a TIFF file: its tags as numbers or text. */
+export type TiffDirectory = ReadonlyMap<number, number[] | string>
+
+export const tags = {
+  subfileType: 254, width: 256, height: 257, bits: 258, compression: 259, photometric: 262, stripOffsets: 273,
+  samples: 277, rowsPerStrip: 278, stripBytes: 279, planar: 284, tileWidth: 322, tileHeight: 323, tileOffsets: 324,
+  tileBytes: 325, extraSamples: 338, sampleFormat: 339, pixelScale: 33550, tiepoint: 33922, transformation: 34264,
+  geoKeys: 34735, noData: 42113,
+} as const
+
+const typeWidths: Record<number, number> = {
+  1: 1, 2: 1, 3: 2, 4: 4, 5: 8, 6: 1, 7: 1, 8: 2, 9: 4, 10: 8, 11: 4, 12: 8, 13: 4, 16: 8, 17: 8, 18: 8,
+}
+const maxDirectories = 256
+const maxTagBytes = 64 * 1024 * 1024
+
+/**
+ * Reads the directories of a little-endian TIFF or BigTIFF and checks that every block they point to lies inside the
+ * file. The decoder behind it would wait for ever on some cut files and answer zeros for others.
+ */
+export function readTiffDirectories(path: string, fileSize: number): TiffDirectory[] {
+  const descriptor = openSync(path, 'r')
+  try {
+    const head = readExactly(descriptor, 0, Math.min(16, fileSize))
+    if (head.length < 8) throw new LayerRefused('truncated', 'This TIFF file ends inside its header.', { fileSize })
+    const big = head.readUInt16LE(2) === 43
+    if (big && head.length < 16) {
+      throw new LayerRefused('truncated', 'This TIFF file ends inside its header.', { fileSize })
+    }
+    let next = big ? Number(head.readBigUInt64LE(8)) : head.readUInt32LE(4)
+    const directories: TiffDirectory[] = []
+    const seen = new Set<number>()
+    while (next !== 0) {
+      if (seen.has(next)) throw damaged('its directories form a circle')
+      if (directories.length >= maxDirectories) throw damaged(`it has more than ${maxDirectories} directories`)
+      seen.add(next)
+      const read = readDirectory(descriptor, next, fileSize, big)
+      directories.push(read.directory)
+      next = read.next
+    }
+    if (directories.length === 0) throw damaged('it holds no image')
+    for (const directory of directories) checkBlocks(directory, fileSize)
+    return directories
+  } finally {
+    closeSync(descriptor)
+  }
+}
+
+function readDirectory(descriptor: number, at: number, fileSize: number, big: boolean) {
+  const countBytes = big ? 8 : 2
+  const entryBytes = big ? 20 : 12
+  const inlineBytes = big ? 8 : 4
+  const inside = (offset: number, length: number, what: string) => {
+    if (offset + length > fileSize) throw cut(what, offset + length, fileSize)
+    return readExactly(descriptor, offset, length)
+  }
+  const head = inside(at, countBytes, 'its directory')
+  const count = big ? Number(head.readBigUInt64LE(0)) : head.readUInt16LE(0)
+  if (count > 4096) throw damaged(`a directory declares ${count} tags`)
+  const table = inside(at + countBytes, count * entryBytes + inlineBytes, 'its directory')
+  const directory = new Map<number, number[] | string>()
+  for (let i = 0; i < count; i++) {
+    const entry = table.subarray(i * entryBytes, (i + 1) * entryBytes)
+    const [id, type] = [entry.readUInt16LE(0), entry.readUInt16LE(2)]
+    const length = big ? Number(entry.readBigUInt64LE(4)) : entry.readUInt32LE(4)
+    const width = typeWidths[type]
+    if (width === undefined) continue
+    const bytes = length * width
+    if (bytes > maxTagBytes) throw damaged(`tag ${id} declares ${bytes} bytes`)
+    const where = entry.subarray(big ? 12 : 8)
+    const offset = big ? Number(where.readBigUInt64LE(0)) : where.readUInt32LE(0)
+    const content = bytes <= inlineBytes ? where.subarray(0, bytes) : inside(offset, bytes, `tag ${id}`)
+    directory.set(id, decodeTag(content, type, length))
+  }
+  const tail = table.subarray(count * entryBytes)
+  return { directory, next: big ? Number(tail.readBigUInt64LE(0)) : tail.readUInt32LE(0) }
+}
+
+function decodeTag(bytes: Buffer, type: number, length: number): number[] | string {
+  if (type === 2) return bytes.toString('utf8').replace(/\0[\s\S]*$/, '')
+  const read: Record<number, (i: number) => number> = {
+    3: (i) => bytes.readUInt16LE(i * 2),
+    4: (i) => bytes.readUInt32LE(i * 4),
+    6: (i) => bytes.readInt8(i),
+    8: (i) => bytes.readInt16LE(i * 2),
+    9: (i) => bytes.readInt32LE(i * 4),
+    11: (i) => bytes.readFloatLE(i * 4),
+    12: (i) => bytes.readDoubleLE(i * 8),
+    13: (i) => bytes.readUInt32LE(i * 4),
+    16: (i) => Number(bytes.readBigUInt64LE(i * 8)),
+    17: (i) => Number(bytes.readBigInt64LE(i * 8)),
+    18: (i) => Number(bytes.readBigUInt64LE(i * 8)),
+  }
+  const decode = read[type] ?? ((i: number) => bytes[i]!)
+  return Array.from({ length }, (_, i) => decode(i))
+}
+
+function checkBlocks(directory: TiffDirectory, fileSize: number): void {
+  const tiled = directory.has(tags.tileOffsets)
+  const offsets = numbersIn(directory, tiled ? tags.tileOffsets : tags.stripOffsets)
+  const bytes = numbersIn(directory, tiled ? tags.tileBytes : tags.stripBytes)
+  const width = numberIn(directory, tags.width, 0)
+  const height = numberIn(directory, tags.height, 0)
+  if (width === 0 || height === 0) throw damaged('an image has no size')
+  const blockWidth = tiled ? numberIn(directory, tags.tileWidth, 0) : width
+  const blockHeight = tiled ? numberIn(directory, tags.tileHeight, 0) : numberIn(directory, tags.rowsPerStrip, height)
+  if (blockWidth === 0 || blockHeight === 0) throw damaged('its blocks have no size')
+  const planes = numberIn(directory, tags.planar, 1) === 2 ? numberIn(directory, tags.samples, 1) : 1
+  const wanted = Math.ceil(width / blockWidth) * Math.ceil(height / blockHeight) * planes
+  if (offsets.length < wanted || bytes.length < wanted) {
+    throw damaged(`it needs ${wanted} blocks and names ${Math.min(offsets.length, bytes.length)}`)
+  }
+  for (let i = 0; i < wanted; i++) {
+    const end = offsets[i]! + bytes[i]!
+    if (end > fileSize) throw cut('its data', end, fileSize)
+  }
+  checkUncompressed(directory, bytes.slice(0, wanted), blockWidth * blockHeight, { tiled, height, blockHeight, planes })
+}
+
+/** Without compression the bytes of each block are known: fewer than that are read as zeros. */
+function checkUncompressed(
+  directory: TiffDirectory,
+  bytes: number[],
+  blockCells: number,
+  layout: { tiled: boolean; height: number; blockHeight: number; planes: number },
+): void {
+  if (numberIn(directory, tags.compression, 1) !== 1) return
+  const samples = layout.planes === 1 ? numberIn(directory, tags.samples, 1) : 1
+  const bits = numberIn(directory, tags.bits, 1)
+  if (bits % 8 !== 0) return
+  const whole = (blockCells * samples * bits) / 8
+  const perPlane = bytes.length / layout.planes
+  const lastRows = layout.height % layout.blockHeight || layout.blockHeight
+  bytes.forEach((count, i) => {
+    const isLast = !layout.tiled && i % perPlane === perPlane - 1
+    const expected = isLast ? (whole * lastRows) / layout.blockHeight : whole
+    if (count !== 0 && count < expected) throw damaged(`block ${i} has ${count} bytes instead of ${expected}`)
+  })
+}
+
+export function numbersIn(directory: TiffDirectory, tag: number): number[] {
+  const value = directory.get(tag)
+  return Array.isArray(value) ? value : []
+}
+
+export function numberIn(directory: TiffDirectory, tag: number, otherwise: number): number {
+  return numbersIn(directory, tag)[0] ?? otherwise
+}
+
+function cut(what: string, needed: number, fileSize: number): LayerRefused {
+  return new LayerRefused(
+    'truncated',
+    `This TIFF file is not whole: ${what} should reach to byte ${needed}, but the file has ${fileSize}.`,
+    { neededBytes: needed, fileSize },
+  )
+}
+
+function damaged(reason: string): LayerRefused {
+  return new LayerRefused('damaged', `This TIFF file is damaged: ${reason}.`, { reason })
+}
