@@ -2,7 +2,7 @@ import type { GeoTIFFImage } from 'geotiff'
 import { toProj4 } from 'geotiff-geokeys-to-proj4'
 import type { Grid, TransformGrid } from '../../../shared/science/grid'
 import { LayerRefused } from '../layer-refused'
-import { projectTo } from './project'
+import { projectTo, unprojectFrom } from './project'
 import { numbersIn, type TiffDirectory, tags } from './tiff-directory'
 
 type Transform = TransformGrid['transform']
@@ -75,15 +75,14 @@ function degreeGrid([x, dx, , y, , dy]: Transform, rows: number, columns: number
 
 /** The projection must be one that can be undone at the raster's corners, else its cells have no place or area. */
 function checkProjection({ transform: t, rows, columns, crs }: TransformGrid, fileName: string): void {
-  const project = projectTo(crs)
+  const [project, unproject] = [projectTo(crs), unprojectFrom(crs)]
+  const cell = Math.hypot(t[1], t[4])
   const corners = [[0, 0], [columns, 0], [0, rows], [columns, rows], [columns / 2, rows / 2]] as const
   const known = corners.some(([column, row]) => {
     const x = t[0] + t[1] * column + t[2] * row
     const y = t[3] + t[4] * column + t[5] * row
-    const place = project.inverse(x, y)
-    const back = place && project.forward(place[0], place[1])
-    const cell = Math.hypot(t[1], t[4])
-    return back !== null && Math.hypot(back[0] - x, back[1] - y) < cell * 0.01
+    const back = project(...unproject(x, y))
+    return Math.hypot(back[0] - x, back[1] - y) < cell * 0.01
   })
   if (!known) throw unknownPlace('The map projection of this TIFF file cannot be turned into places.', fileName, { crs })
 }

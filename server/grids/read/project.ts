@@ -1,39 +1,49 @@
 import proj4 from 'proj4'
 
-export interface Projector {
-  /** Degrees (WGS84) to the plane; null where the projection has no answer. */
-  forward(longitude: number, latitude: number): [number, number] | null
-  /** The plane to degrees (WGS84); null where the projection has no answer. */
-  inverse(x: number, y: number): [number, number] | null
+type Convert = (a: number, b: number) => [number, number]
+
+interface Projector {
+  project: Convert
+  unproject: Convert
 }
 
 const projectors = new Map<string, Projector>()
-const maxProjectors = 64
+const mostKept = 64
 
-/** Both ways between longitude/latitude and the plane of a `TransformGrid.crs`. Throws on an unknown definition. */
-export function projectTo(crs: string): Projector {
+/**
+ * From longitude and latitude (degrees, WGS84) to the plane of a `TransformGrid.crs`. Where the projection has no
+ * answer both numbers are NaN: such a point has no place on the raster. Throws on a definition proj4 doesn't know.
+ */
+export function projectTo(crs: string): (longitude: number, latitude: number) => [x: number, y: number] {
+  return projectorOf(crs).project
+}
+
+/** From the plane of a crs to longitude and latitude in degrees; NaN where the projection has no answer. */
+export function unprojectFrom(crs: string): (x: number, y: number) => [longitude: number, latitude: number] {
+  return projectorOf(crs).unproject
+}
+
+function projectorOf(crs: string): Projector {
   const known = projectors.get(crs)
   if (known) return known
   const converter = proj4(crs)
-  const attempt = (work: () => number[]): [number, number] | null => {
-    try {
-      const [a, b] = work()
-      return a !== undefined && b !== undefined && Number.isFinite(a) && Number.isFinite(b) ? [a, b] : null
-    } catch {
-      // proj4 throws on points outside a projection's domain; such a point has no place, which is an answer.
-      return null
-    }
+  const projector = {
+    project: answering((longitude, latitude) => converter.forward([longitude, latitude])),
+    unproject: answering((x, y) => converter.inverse([x, y])),
   }
-  const projector: Projector = {
-    forward: (longitude, latitude) => attempt(() => converter.forward([longitude, latitude])),
-    inverse: (x, y) => attempt(() => converter.inverse([x, y])),
-  }
-  if (projectors.size >= maxProjectors) projectors.clear()
+  if (projectors.size >= mostKept) projectors.clear()
   projectors.set(crs, projector)
   return projector
 }
 
-/** From the plane of a crs to degrees. */
-export function unprojectFrom(crs: string): Projector['inverse'] {
-  return projectTo(crs).inverse
+function answering(convert: (a: number, b: number) => number[]): Convert {
+  return (a, b) => {
+    try {
+      const [first = NaN, second = NaN] = convert(a, b)
+      return Number.isFinite(first) && Number.isFinite(second) ? [first, second] : [NaN, NaN]
+    } catch {
+      // proj4 throws outside a projection's domain; a point without a place is an answer, not an error.
+      return [NaN, NaN]
+    }
+  }
 }
