@@ -6,6 +6,7 @@ import { makeQueryClient } from './api/query-client'
 import { MarkSprite } from './components/ui/mark-sprite'
 import { startTheme } from './hooks/use-theme'
 import './index.css'
+import { UploadProvider } from './pages/layers/upload-provider'
 import { router } from './router'
 
 const root = document.getElementById('root')
@@ -16,7 +17,9 @@ createRoot(root).render(
   <StrictMode>
     <QueryClientProvider client={makeQueryClient()}>
       <MarkSprite />
-      <RouterProvider router={router} />
+      <UploadProvider>
+        <RouterProvider router={router} />
+      </UploadProvider>
     </QueryClientProvider>
   </StrictMode>,
 )
