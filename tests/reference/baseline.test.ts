@@ -6,9 +6,9 @@ const days = Int32Array.from(reference.days)
 const values = Float64Array.from(reference.values)
 
 describe('what is usual by date agrees with a writing in numpy', () => {
-  it.each(reference.cases.map((item) => [`${item.fromYear}-${item.toYear}, half ${item.halfWidthDays}`, item] as const))(
-    '%s days',
-    (_, { columns, ...settings }) => {
+  it.each(reference.cases)(
+    '$fromYear to $toYear, $halfWidthDays days each side, smoothed over $smoothingDays',
+    ({ columns, ...settings }) => {
       const found = seasonalBaseline({ days, values, ...settings })
       for (const [name, expected] of Object.entries(columns)) {
         const column = found[name as keyof SeasonalBaseline]

@@ -80,7 +80,8 @@ describe('WGS84 areas', () => {
 
   it('a square of 100 km in UTM zone 18, as one cell, measures what its geodesic outline measures', () => {
     const crs = '+proj=utm +zone=18 +datum=WGS84'
-    const grid: TransformGrid = { kind: 'transform', rows: 1, columns: 1, transform: [500000, 100000, 0, 4500000, 0, -100000], crs }
+    const transform: TransformGrid['transform'] = [500000, 100000, 0, 4500000, 0, -100000]
+    const grid: TransformGrid = { kind: 'transform', rows: 1, columns: 1, transform, crs }
     const utm = proj4(crs)
     const unproject = (x: number, y: number): [number, number] => utm.inverse([x, y]) as [number, number]
     const [area] = cellAreasKm2(grid, Uint32Array.of(0), unproject)
