@@ -24,6 +24,7 @@ export function drawViews(u: uPlot, laid: SeriesDays, spans: readonly EventSpan[
   ctx.beginPath()
   ctx.rect(bbox.left, bbox.top - 6 * ratio, bbox.width, bbox.height + 6 * ratio)
   ctx.clip()
+  ctx.setLineDash([])
   drawLines(ctx, laid.usable.slice(from, to + 1), (i, value) => at(from + i, value), ink.ink, ratio * (perDay < 2 ? 0.8 : 1.2))
   const radius = ratio * (perDay < 1 ? 0.9 : perDay < 3 ? 1.4 : perDay < 6 ? 2 : 2.4)
   for (let i = from; i <= to; i += 1) {
@@ -110,7 +111,7 @@ function labelNewest(
   const i = laid.usable.findLastIndex((value) => value != null)
   const value = laid.usable[i]
   const day = laid.days[i] ?? 0
-  if (value == null || !isFlagged(laid, spans, i) || day > (u.scales['x']?.max ?? 0)) return
+  if (value == null || dayWidth(u) < 2 || !isFlagged(laid, spans, i) || day > (u.scales['x']?.max ?? 0)) return
   const { x, y } = at(i, value)
   u.ctx.save()
   u.ctx.fillStyle = ink.ember

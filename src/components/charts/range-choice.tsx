@@ -1,4 +1,4 @@
-import { daySpan } from '../../lib/dates'
+import { daysBetween, daySpan } from '../../lib/dates'
 import { countWords } from '../../lib/format'
 import { Button } from '../ui/button'
 import { Choice } from '../ui/choice'
@@ -25,7 +25,7 @@ export function RangeChoice({ range, span, onChange }: Props) {
         options={[
           { value: 'days', label: '120 days' },
           { value: 'year', label: '1 year' },
-          { value: 'all', label: `all ${countWords(years.length, 'year')}` },
+          { value: 'all', label: `all ${countWords(Math.max(1, Math.round(daysBetween(span.from, span.to) / 365.25)), 'year')}` },
         ]}
         value={name}
         onChange={(next) => onChange(namedRange(next, span))}

@@ -81,15 +81,15 @@ function zoomToSelection(u: uPlot, parts: ChartParts) {
 }
 
 function timeAxis(ink: ChartInk): uPlot.Axis {
-  const room = (u: uPlot) => Math.floor(u.over.clientWidth / 64)
+  const room = (u: uPlot) => Math.floor((u.width - 56) / 64)
   const ticks = (u: uPlot, min: number, max: number) => timeTicks(Math.ceil(min), Math.floor(max), room(u))
   return {
-    size: 40,
-    gap: 14,
+    size: 44,
+    gap: 4,
     stroke: () => ink.ink3,
     font: `12px ${figuresFont}`,
     grid: { show: false },
-    ticks: { show: true, size: 18, width: 1, stroke: () => ink.ink3 },
+    ticks: { show: true, size: 20, width: 1, stroke: () => ink.ink3 },
     splits: (u, _axis, min, max) => ticks(u, min, max).map((tick) => tick.day - 0.5),
     values: (u, splits) => {
       const labels = new Map(ticks(u, u.scales['x']?.min ?? 0, u.scales['x']?.max ?? 0).map((t) => [t.day - 0.5, t.label]))

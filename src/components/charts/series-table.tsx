@@ -6,7 +6,7 @@ import { StateWord } from '../ui/mark'
 import { Table, Td, Th, Tr } from '../ui/table'
 import type { DayRow } from './day-rows'
 
-const atOnce = 60
+const atOnce = 30
 
 /** The same days as the chart above it. A day not seen has hatch where its figures would stand. */
 export function SeriesTable({ rows, unit, label }: { rows: readonly DayRow[]; unit: string | null; label: string }) {
@@ -31,7 +31,7 @@ export function SeriesTable({ rows, unit, label }: { rows: readonly DayRow[]; un
       </Table>
       {rows.length > shown && (
         <div>
-          <Button kind="text" size="small" onClick={() => setShown(shown + 5 * atOnce)}>
+          <Button kind="text" size="small" onClick={() => setShown(shown + 10 * atOnce)}>
             Show more of {rows.length} days
           </Button>
         </div>

@@ -4,7 +4,7 @@ import { FaultMark } from '../../components/ui/fault-mark'
 /** The marks of files, kin to the progress rule: empty, filling, full; a question; the square of faults. */
 export function FileStatusWord({ status }: { status: FileStatus }) {
   return (
-    <span className="inline-flex items-center gap-2 whitespace-nowrap">
+    <span className="inline-flex items-center gap-2 align-middle whitespace-nowrap">
       <StatusMark status={status} />
       {status}
     </span>
