@@ -2,7 +2,6 @@ import type { Router } from 'express'
 import type { Letter } from '../../shared/schemas/duty'
 import { endpoints } from '../../shared/schemas/endpoints'
 import type { Context } from '../context'
-import { deliverDue } from '../mail/delivery'
 import { retryLetter } from '../accounts/retry-letter'
 import type { LetterRow } from '../models/letter'
 import { lettersBefore } from '../queries/letter-list'
@@ -16,7 +15,7 @@ export function letterRoutes(router: Router, context: Context): void {
   })
   serve(router, context, endpoints.retryLetter, async ({ person, params }) => {
     const letter = await retryLetter(context, person, params.id)
-    deliverDue(context).catch((error: unknown) => context.log.error({ err: error }, 'the outbox could not be delivered'))
+    context.wake()
     return present(letter)
   })
 }
