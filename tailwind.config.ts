@@ -15,7 +15,7 @@ export default {
     },
     screens: { tab: '45rem', desk: '73rem' },
     fontFamily: {
-      text: ['Atkinson Hyperlegible Next Variable', 'system-ui', 'sans-serif'],
+      words: ['Atkinson Hyperlegible Next Variable', 'system-ui', 'sans-serif'],
       mono: ['Atkinson Hyperlegible Mono Variable', 'ui-monospace', 'monospace'],
     },
     fontSize: {

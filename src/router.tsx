@@ -1,6 +1,7 @@
 import { createBrowserRouter, type RouteObject } from 'react-router-dom'
 import { paths } from '../shared/paths'
 import { PageFault } from './components/frame/page-fault'
+import { PageOnItsWay } from './components/frame/page-on-its-way'
 import { RequireAction } from './components/frame/require-action'
 import { RequireSession } from './components/frame/require-session'
 
@@ -12,6 +13,7 @@ function page(path: { pattern: string }, folder: string): RouteObject {
   return {
     path: path.pattern,
     errorElement: <PageFault />,
+    hydrateFallbackElement: <PageOnItsWay />,
     lazy: async () => {
       const load = pages[file]
       if (!load) throw new Error(`there is no page in ${file}`)
@@ -29,6 +31,7 @@ export const router = createBrowserRouter([
   {
     element: <RequireSession />,
     errorElement: <PageFault />,
+    hydrateFallbackElement: <PageOnItsWay />,
     children: [
       page(paths.today, 'today'),
       page(paths.alerts, 'alerts'),

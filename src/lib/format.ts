@@ -1,19 +1,18 @@
-/** Digits of a figure: three significant, without an exponent and without digits it does not deserve. */
+import { figureText, percentText, timesText } from '../../shared/figure-text'
+
+/** Three significant digits, as in the letters, with the thousands apart. */
 export function threeDigits(value: number): string {
-  return significant(value, 3)
+  return Math.abs(value) < 1000 ? figureText(value).replace('-', '−') : grouped(Number(value.toPrecision(3)))
 }
 
-/** Two significant digits; "0.9", not "0.90", and whole numbers from ten up. */
+/** Two significant digits. */
 export function timesUsual(value: number): string {
-  if (value >= 10) return grouped(Math.round(value))
-  if (value >= 0.95) return value.toFixed(1)
-  return significant(value, 2).replace(/(\.\d)0$/, '$1')
+  return timesText(value)
 }
 
-/** A share 0..1 as whole per cent; a share that is above 0 never reads 0. */
+/** A share 0..1 as whole per cent. */
 export function percent(share: number): string {
-  if (share > 0 && share < 0.005) return 'under 1 %'
-  return `${Math.round(share * 100)} %`
+  return percentText(share)
 }
 
 /** A chlorophyll or other value with the digits it deserves; undefined where it is missing. */
@@ -33,8 +32,8 @@ export function unitWords(unit: string | null | undefined): string {
 
 export function megabytes(bytes: number): string {
   if (bytes < 1000) return `${bytes} B`
-  if (bytes < 999_500) return `${significant(bytes / 1000, 2)} kB`
-  return `${significant(bytes / 1e6, bytes < 1e7 ? 2 : 3)} MB`
+  if (bytes < 999_500) return `${figureText(bytes / 1000)} kB`
+  return `${figureText(bytes / 1e6)} MB`
 }
 
 /** A checksum short enough to compare by eye: "9f2c 41d0 … 77ab". */
@@ -61,17 +60,6 @@ export function bearing(degreesFromNorth: number): string {
 
 export function countWords(count: number, one: string, many = `${one}s`): string {
   return `${grouped(count)} ${count === 1 ? one : many}`
-}
-
-function significant(value: number, digits: number): string {
-  if (value === 0) return '0'
-  const magnitude = Math.floor(Math.log10(Math.abs(Number(value.toPrecision(digits)))))
-  if (magnitude >= digits - 1) {
-    const step = 10 ** (magnitude - digits + 1)
-    const rounded = Math.round(value / step) * step
-    return (rounded < 0 ? '−' : '') + grouped(Math.abs(rounded))
-  }
-  return value.toFixed(digits - 1 - magnitude).replace('-', '−')
 }
 
 function superscript(power: string): string {

@@ -16,16 +16,18 @@ export function Frame({ me }: { me: Me }) {
   useSessionRenewal()
   useQuery(todayQuery)
   const open = useQuery(alertsQuery({ state: 'open' })).data?.items
+  const held = useQuery(alertsQuery({ state: 'acknowledged' })).data?.items
+  const count = open && held && open.length + held.length
   return (
     <>
       <a href="#content" className="heard focus:not-sr-only focus:fixed focus:top-2 focus:left-2 focus:z-[1300] focus:bg-sheet focus:p-3">
         To the content
       </a>
-      <Masthead me={me} openAlerts={open?.length} />
+      <Masthead me={me} openAlerts={count} />
       <NewAlerts open={open} />
       <FocusOnTurn />
       <Outlet />
-      <RoomBar me={me} openAlerts={open?.length} />
+      <RoomBar me={me} openAlerts={count} />
       <ScrollRestoration />
     </>
   )

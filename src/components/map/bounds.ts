@@ -2,7 +2,7 @@ import type { RegionGeometry } from '../../../shared/schemas/regions'
 import type { MapBounds } from './sea-map'
 
 /** The box round some outlines with a margin, a share of its size. */
-export function boundsAround(geometries: readonly RegionGeometry[], margin = 0.12): MapBounds | undefined {
+export function boundsAround(geometries: readonly RegionGeometry[], margin = 0.07): MapBounds | undefined {
   let [west, south, east, north] = [Infinity, Infinity, -Infinity, -Infinity]
   for (const geometry of geometries) {
     const polygons = geometry.type === 'Polygon' ? [geometry.coordinates] : geometry.coordinates

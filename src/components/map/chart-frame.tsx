@@ -1,27 +1,26 @@
+import { createPortal } from 'react-dom'
 import { degrees } from '../../lib/format'
 import { stepMinutes, stepsWithin } from './graticule-steps'
 import { useMapView, type MapView } from './use-map-view'
 
 const edge = 7
 
-/** Graticule over the map and the graduated frame round it. One segment is a whole number of minutes of arc. */
-export function ChartFrame() {
+/**
+ * Graticule over the map and the graduated frame round it, drawn into an element as large as the map (which clips what is
+ * in it). One segment is a whole number of minutes of arc.
+ */
+export function ChartFrame({ into }: { into: HTMLElement }) {
   const view = useMapView()
   if (view.width === 0) return null
   const pxPerDegree = view.width / (view.east - view.west)
   const segment = stepMinutes(pxPerDegree, 14)
   const labels = labelStep(segment, pxPerDegree)
-  return (
-    <svg
-      aria-hidden
-      className="pointer-events-none absolute z-[600] overflow-visible"
-      style={{ left: 0, top: 0 }}
-      width={view.width}
-      height={view.height}
-    >
+  return createPortal(
+    <svg aria-hidden className="absolute top-0 left-0 overflow-visible" width={view.width} height={view.height}>
       <Graticule view={view} minutes={labels} />
       <Edges view={view} minutes={segment} />
-    </svg>
+    </svg>,
+    into,
   )
 }
 

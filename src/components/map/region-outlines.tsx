@@ -20,12 +20,13 @@ export function RegionOutlines({ regions, onSelect }: { regions: readonly Outlin
     const state = region.state.replace(' ', '-')
     return (
       <Fragment key={`${region.id} ${region.state}`}>
-        <Polygon positions={positions} pane={outlinePane} interactive={false} pathOptions={{ className: `region-casing region-casing-${state}`, fill: false }} />
+        <Polygon positions={positions} pane={outlinePane} interactive={false} className={`region-casing region-casing-${state}`} fill={false} />
         <Polygon
           positions={positions}
           pane={outlinePane}
           interactive={onSelect !== undefined}
-          pathOptions={{ className: `region-line region-line-${state}`, fillOpacity: 0 }}
+          className={`region-line region-line-${state}`}
+          fillOpacity={0}
           eventHandlers={onSelect ? { click: () => onSelect(region.id) } : {}}
         />
       </Fragment>

@@ -9,7 +9,7 @@ export function ScaleBar() {
   const view = useMapView()
   const middle = ((view.south + view.north) / 2) * (Math.PI / 180)
   const kmPerPx = ((view.east - view.west) * kmPerDegree * Math.cos(middle)) / Math.max(1, view.width)
-  const km = nice.findLast((length) => length / kmPerPx <= Math.min(110, view.width / 4)) ?? 1
+  const km = nice.findLast((length) => length / kmPerPx <= Math.min(110, view.width / 5)) ?? 1
   const px = km / kmPerPx
   return (
     <div className="pointer-events-none absolute right-3 bottom-3 z-[650] bg-paper px-2.5 pt-0.5 pb-2" data-scale-bar>

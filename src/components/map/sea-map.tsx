@@ -1,6 +1,6 @@
 import type L from 'leaflet'
 import 'leaflet/dist/leaflet.css'
-import { type ReactNode } from 'react'
+import { useState, type ReactNode } from 'react'
 import { MapContainer, Pane } from 'react-leaflet'
 import { useWide } from '../../hooks/use-wide'
 import { ChartFrame } from './chart-frame'
@@ -30,6 +30,7 @@ interface Props {
 /** A piece of sea in its graduated frame: coast, graticule, scale bar, and whatever is laid on it as children. */
 export function SeaMap({ label, bounds, hatched = false, aspect = 1.15, draggable, scaleBar = true, onReady, children }: Props) {
   const wide = useWide()
+  const [frame, setFrame] = useState<HTMLElement | null>(null)
   return (
     <div role="region" aria-label={label} className="relative pb-6 pl-11 tab:pl-13">
       <div className="relative" style={{ aspectRatio: aspect }}>
@@ -38,7 +39,7 @@ export function SeaMap({ label, bounds, hatched = false, aspect = 1.15, draggabl
             bounds={bounds}
             boundsOptions={{ padding: [0, 0] }}
             className={`sea-map size-full ${hatched ? 'sea-map-hatched' : ''}`}
-            zoomSnap={0.25}
+            zoomSnap={0}
             zoomDelta={0.5}
             minZoom={1}
             maxZoom={14}
@@ -63,8 +64,9 @@ export function SeaMap({ label, bounds, hatched = false, aspect = 1.15, draggabl
             <Coast />
             {children}
             {scaleBar && <ScaleBar />}
-            <ChartFrame />
+            {frame && <ChartFrame into={frame} />}
           </MapContainer>
+          <div ref={setFrame} className="pointer-events-none absolute inset-0 z-[600]" />
         </div>
       </div>
     </div>

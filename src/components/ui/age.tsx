@@ -8,7 +8,7 @@ export function Age({ at, old = false }: { at: string; old?: boolean }) {
   const now = useNow()
   const zone = useMe()?.timeZone ?? 'UTC'
   return (
-    <time dateTime={at} title={`${dayAndTime(at, zone)} ${zoneWord(at, zone)}`} className="fig whitespace-nowrap">
+    <time dateTime={at} title={`${dayAndTime(at, zone)} ${zoneWord(at, zone)}`} className="whitespace-nowrap tabular-nums">
       {ageWords(hoursSince(at, now))}
       {old && ' old'}
     </time>

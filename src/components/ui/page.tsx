@@ -32,7 +32,7 @@ interface StatementProps {
 /** The one sentence that answers the page's question. */
 export function Statement({ worry, children, above, detail, actions }: StatementProps) {
   return (
-    <header className="flex flex-wrap items-end justify-between gap-x-9 gap-y-4">
+    <header className="flex flex-wrap items-end self-start justify-between gap-x-9 gap-y-4">
       <div className="min-w-0 max-w-[52rem] flex-1 basis-80">
         {above && <div className="mb-1 text-small text-ink2">{above}</div>}
         <h1 className="text-title tab:text-statement">

@@ -31,7 +31,7 @@ export function DayRule({ days, day, floor, onChange }: Props) {
     if (to) onChange(to.day)
   }
   return (
-    <section aria-label="Days" className="grid items-end gap-x-6 gap-y-2 tab:grid-cols-[8.5rem_minmax(0,1fr)]">
+    <section aria-label="Days" className="grid items-end gap-x-6 gap-y-2 tab:grid-cols-[10.5rem_minmax(0,1fr)]">
       <div className="tab:pb-4">
         <h2 className="text-lead">{longDay(day.day)}</h2>
         <p className="text-small text-ink2">{seenWords(day)}</p>
@@ -85,7 +85,7 @@ function DayColumn({ day, inked, floor, first, chosen, onChoose }: ColumnProps) 
       </div>
       <div className={`h-1.5 border-y border-r border-(--segment) ${first ? 'border-l' : ''} ${inked ? 'bg-(--segment)' : 'bg-paper'}`} />
       <div
-        className={`fig mt-px grid h-5 place-items-center text-small whitespace-nowrap ${chosen ? 'bg-accent font-heading text-onAccent' : weekday(day.day) === 1 ? 'font-heading' : 'text-ink2'}`}
+        className={`fig mt-px flex h-5 items-center text-small whitespace-nowrap ${first && !chosen ? 'justify-end' : 'justify-center'} ${chosen ? 'bg-accent font-heading text-onAccent' : weekday(day.day) === 1 ? 'font-heading' : 'text-ink2'}`}
       >
         {!chosen && (first || day.day.endsWith('-01')) ? <b className="font-heading text-ink">{shortDay(day.day)}</b> : Number(day.day.slice(8))}
       </div>

@@ -77,7 +77,7 @@ function AlertRow({ alert, filled }: { alert: AlertItem; filled: boolean }) {
       <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
         <Holder alert={alert} />
         <div className="flex flex-1 items-center justify-end gap-4 max-tab:basis-full">
-          <Link to={to} className="link inline-flex min-h-11 items-center font-strong tab:min-h-0">
+          <Link to={`${to}#why`} className="link inline-flex min-h-11 items-center font-strong tab:min-h-0">
             Why?
           </Link>
           {filled && mayAct ? <Acknowledge alert={alert} /> : !filled && <ButtonLink kind="text" to={to}>Open</ButtonLink>}

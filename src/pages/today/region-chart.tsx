@@ -12,7 +12,8 @@ import { ageWords } from '../../lib/age'
 import { AxisHead, AxisRow } from './times-axis'
 import { SeenBars } from './seen-bars'
 
-const columns = 'grid grid-cols-[minmax(7.2rem,1fr)_minmax(0,1.35fr)_2.75rem] tab:grid-cols-[minmax(9rem,1fr)_minmax(0,1.35fr)_6rem_3rem] items-center gap-x-3'
+const columns = 
+  'grid grid-cols-[9.25rem_minmax(0,1fr)_2.6rem] tab:grid-cols-[minmax(9.5rem,1fr)_minmax(0,1.35fr)_5.5rem_3rem] items-center gap-x-2 tab:gap-x-4'
 
 interface Props {
   regions: readonly Region[] | undefined
@@ -72,7 +73,7 @@ function Row({ region, day }: { region: Region; day: string | undefined }) {
   const unusual = standing.state === 'unusual'
   return (
     <li className={`${columns} relative min-h-13 border-b border-rule hover:bg-sunk tab:min-h-12`} title={standing.because}>
-      <Link to={paths.region.to({ id: region.id })} className="flex items-center gap-3 py-1 after:absolute after:inset-0">
+      <Link to={paths.region.to({ id: region.id })} className="flex items-center gap-2.5 py-1 after:absolute after:inset-0">
         <Mark name={stateMark(standing.state)} size={20} className={unusual ? 'text-ember' : ''} />
         <span className="min-w-0 leading-tight">
           <span className="block font-strong">{region.name}</span>

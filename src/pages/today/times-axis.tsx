@@ -13,7 +13,7 @@ function place(times: number): number {
 export function AxisHead() {
   return (
     <span aria-hidden className="fig relative block h-9 text-small text-ink2">
-      <span className="absolute top-0 left-[30%] font-text text-fine text-ink3" style={{ fontFamily: 'inherit' }}>
+      <span className="absolute top-0 -translate-x-1/2 font-words text-fine whitespace-nowrap text-ink3" style={{ left: `${place(1)}%` }}>
         times usual
       </span>
       {marks.slice(1).map((at) => (
@@ -81,10 +81,10 @@ function Reading({ done, total }: { done: number; total: number }) {
   const share = total > 0 ? done / total : 0
   return (
     <span className="absolute inset-y-0 right-0 left-[20%] flex items-center gap-2 bg-paper">
-      <span className="h-2 w-24 border border-ink bg-paper">
+      <span className="h-2 w-24 min-w-0 border border-ink bg-paper">
         <span className="block h-full bg-ink" style={{ width: `${share * 100}%` }} />
       </span>
-      <span className="fig text-small text-ink2">{percent(share)}</span>
+      <span className="fig text-small whitespace-nowrap text-ink2">{percent(share)}</span>
     </span>
   )
 }
