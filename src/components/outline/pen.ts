@@ -1,0 +1,85 @@
+import L from 'leaflet'
+import '@geoman-io/leaflet-geoman-free'
+import '@geoman-io/leaflet-geoman-free/dist/leaflet-geoman.css'
+import type { RegionGeometry } from '../../../shared/schemas/regions'
+import { latLngRings } from '../map/region-outlines'
+import { outlinePane } from '../map/panes'
+import './pen.css'
+
+/** What the drawing library can do for its own tool bar and gives no other name to. */
+interface PolygonTool {
+  _finishShape: () => void
+  _removeLastVertex: () => void
+}
+
+function polygonTool(map: L.Map): PolygonTool {
+  return (map.pm.Draw as unknown as { Polygon: PolygonTool }).Polygon
+}
+
+export interface Pen {
+  onDrawn: (geometry: RegionGeometry) => void
+  /** Corners so far, longitude first. */
+  onCorners: (corners: [number, number][]) => void
+}
+
+/** Each tap or click puts a corner; the first corner, Enter or `finish` closes the outline. Returns how to stop. */
+export function startDrawing(map: L.Map, pen: Pen): () => void {
+  const begun = ({ workingLayer }: { workingLayer: L.Layer }) => {
+    const tell = () => pen.onCorners(cornersOf(workingLayer))
+    workingLayer.on('pm:vertexadded', tell)
+    workingLayer.on('pm:vertexremoved', tell)
+  }
+  const created = ({ layer }: { layer: L.Layer }) => {
+    layer.remove()
+    if (layer instanceof L.Polygon) pen.onDrawn(geometryOf(layer))
+  }
+  map.on('pm:drawstart', begun)
+  map.on('pm:create', created)
+  map.pm.enableDraw('Polygon', {
+    snappable: false,
+    tooltips: false,
+    finishOnEnter: true,
+    continueDrawing: false,
+    templineStyle: { className: 'pen-line', interactive: false },
+    hintlineStyle: { className: 'pen-hint', interactive: false },
+    pathOptions: { className: 'pen-line', fill: false },
+  })
+  return () => {
+    map.off('pm:drawstart', begun)
+    map.off('pm:create', created)
+    map.pm.disableDraw('Polygon')
+  }
+}
+
+export function finishDrawing(map: L.Map): void {
+  polygonTool(map)._finishShape()
+}
+
+export function takeBackLastCorner(map: L.Map): void {
+  polygonTool(map)._removeLastVertex()
+}
+
+/** The outline with corners to drag; the small marks between them make new ones. Returns how to take it away. */
+export function showEditable(map: L.Map, geometry: RegionGeometry, onChange: (geometry: RegionGeometry) => void): () => void {
+  const casing = L.polygon(latLngRings(geometry), { pane: outlinePane, className: 'region-casing', interactive: false, fill: false, pmIgnore: true })
+  const line = L.polygon(latLngRings(geometry), { pane: outlinePane, className: 'pen-line', fill: false })
+  casing.addTo(map)
+  line.addTo(map)
+  line.pm.enable({ snappable: false, allowSelfIntersection: true, draggable: false, removeLayerBelowMinVertexCount: false })
+  line.on('pm:edit', () => onChange(geometryOf(line)))
+  return () => {
+    line.pm.disable()
+    line.remove()
+    casing.remove()
+  }
+}
+
+function geometryOf(layer: L.Polygon): RegionGeometry {
+  return layer.toGeoJSON(6).geometry
+}
+
+function cornersOf(layer: L.Layer): [number, number][] {
+  if (!(layer instanceof L.Polyline)) return []
+  const points = (layer.getLatLngs() as unknown[]).flat(2) as L.LatLng[]
+  return points.map(({ lng, lat }) => [lng, lat])
+}

@@ -1,0 +1,91 @@
+import { useQuery } from '@tanstack/react-query'
+import { Link, useNavigate, useParams } from 'react-router-dom'
+import { paths } from '../../../shared/paths'
+import type { Region } from '../../../shared/schemas/regions'
+import { isConflict } from '../../api/api-error'
+import { regionQuery, useChangeRegion } from '../../api/regions'
+import { contactsOf, fieldsOf, siteOf } from '../../components/region-form/region-fields'
+import { RegionForm } from '../../components/region-form/region-form'
+import { useDrawingGround } from '../../components/region-form/use-drawing-ground'
+import { Button } from '../../components/ui/button'
+import { Failure } from '../../components/ui/failure'
+import { Message } from '../../components/ui/message'
+import { Page, Statement } from '../../components/ui/page'
+import { Waiting } from '../../components/ui/waiting'
+import { useKept } from './use-kept'
+
+const formId = 'edit-region'
+
+export function Component() {
+  const id = Number(useParams()['id'])
+  const region = useQuery(regionQuery(id))
+  return (
+    <Page title={region.data ? `Edit ${region.data.name}` : 'Edit region'}>
+      {region.isPending && <Waiting lines={5} />}
+      {region.error && <Failure error={region.error} onRetry={() => void region.refetch()} />}
+      {region.data && <EditRegion key={id} newest={region.data} />}
+    </Page>
+  )
+}
+
+/** The form keeps the region as it was when it was opened; the server refuses to write over somebody else's change. */
+function EditRegion({ newest }: { newest: Region }) {
+  const region = useKept(newest)
+  const ground = useDrawingGround(region.standing.feedId ?? undefined, region.id)
+  const change = useChangeRegion(region.id)
+  const navigate = useNavigate()
+  const next = region.geometryVersion + 1
+  return (
+    <>
+      <Statement
+        above={
+          <Link className="link font-strong" to={paths.region.to({ id: region.id })}>
+            {region.name}
+          </Link>
+        }
+        detail={`Outline version ${region.geometryVersion}.`}
+        actions={
+          <Button kind="filled" type="submit" form={formId} disabled={change.isPending}>
+            Save the changes
+          </Button>
+        }
+      >
+        Edit {region.name}.
+      </Statement>
+      {isConflict(change.error) && (
+        <Message
+          fault
+          title="Somebody else changed this region meanwhile."
+          action={
+            <Button size="small" onClick={() => window.location.reload()}>
+              Load it again
+            </Button>
+          }
+        >
+          Nothing of yours was written. Load the page again and make your change on the newest state.
+        </Message>
+      )}
+      <RegionForm
+        id={formId}
+        fields={fieldsOf(region)}
+        outline={region.geometry}
+        ground={ground}
+        error={isConflict(change.error) ? null : change.error}
+        redrawn={`The redrawn outline becomes version ${next}: its history is read anew. The figures and alerts of version ${region.geometryVersion} stay as they are.`}
+        onSave={(typed, geometry) =>
+          change.mutate(
+            {
+              version: region.version,
+              name: typed.name,
+              timeZone: typed.timeZone,
+              site: siteOf(typed),
+              contacts: contactsOf(typed),
+              ...(geometry === region.geometry ? {} : { geometry }),
+            },
+            { onSuccess: (saved) => void navigate(paths.region.to({ id: saved.id }), { state: { repairs: geometry === region.geometry ? [] : saved.repairs } }) },
+          )
+        }
+      />
+    </>
+  )
+}
