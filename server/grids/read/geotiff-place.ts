@@ -11,7 +11,7 @@ type Transform = TransformGrid['transform']
 export function geotiffGrid(image: GeoTIFFImage, directory: TiffDirectory, fileName: string): Grid {
   const [rows, columns] = [image.getHeight(), image.getWidth()]
   const affine = transformOf(directory)
-  const keys = directory.has(tags.geoKeys) ? image.getGeoKeys() : null
+  const keys = directory.has(tags.geoKeys) ? geoKeysOf(image, fileName) : null
   if (!affine || !keys) {
     throw unknownPlace(
       affine
@@ -44,6 +44,14 @@ export function geotiffGrid(image: GeoTIFFImage, directory: TiffDirectory, fileN
   const grid: TransformGrid = { kind: 'transform', rows, columns, transform, crs: crs.proj4.trim() }
   checkProjection(grid, fileName)
   return grid
+}
+
+function geoKeysOf(image: GeoTIFFImage, fileName: string): ReturnType<GeoTIFFImage['getGeoKeys']> {
+  try {
+    return image.getGeoKeys()
+  } catch (error) {
+    throw unknownPlace('The coordinate system of this TIFF file is damaged.', fileName, { reason: String(error) })
+  }
 }
 
 function transformOf(directory: TiffDirectory): Transform | null {

@@ -5,7 +5,7 @@ import { LayerRefused } from '../layer-refused'
 import { coverageOf, periodTime } from './coverage-time'
 import { type BandNotes, bandNotes, datasetItems } from './geotiff-bands'
 import { geotiffGrid } from './geotiff-place'
-import { checkDeclaredGrid, maxChunkBytes } from './limits'
+import { checkDeclaredGrid, maxBands, maxChunkBytes } from './limits'
 import { type Meaning, meaningOf } from './quantity'
 import { numberIn, numbersIn, readTiffDirectories, type TiffDirectory, tags } from './tiff-directory'
 import { convertInPlace, describeConversion } from './values'
@@ -68,6 +68,12 @@ function checkIsMeasurement(directory: TiffDirectory, fileName: string): void {
       { fileName, photometric },
     )
   }
+  const samples = numberIn(directory, tags.samples, 1)
+  if (samples > maxBands) {
+    throw new LayerRefused('too-large', `This TIFF file declares ${samples} bands; Offing reads up to ${maxBands}.`, {
+      fileName, samples, maxBands,
+    })
+  }
   const compression = numberIn(directory, tags.compression, 1)
   if (!compressions.has(compression)) {
     throw new LayerRefused(
@@ -79,7 +85,7 @@ function checkIsMeasurement(directory: TiffDirectory, fileName: string): void {
   const tiled = directory.has(tags.tileWidth)
   const width = numberIn(directory, tiled ? tags.tileWidth : tags.width, 0)
   const height = tiled ? numberIn(directory, tags.tileHeight, 0) : blockRows(directory)
-  const bytes = (width * height * numberIn(directory, tags.bits, 8) * numberIn(directory, tags.samples, 1)) / 8
+  const bytes = (width * height * numberIn(directory, tags.bits, 8) * samples) / 8
   if (bytes > maxChunkBytes) {
     throw new LayerRefused('too-large', `This TIFF file is stored in blocks of ${bytes} bytes, too large to unpack.`, {
       fileName, blockBytes: bytes, maxChunkBytes,

@@ -6,6 +6,7 @@ export const maxWindowCells = 160_000_000
 export const maxSteps = 100_000
 export const maxAxisLength = 1_000_000
 export const maxVariables = 2_000
+export const maxBands = 512
 export const maxChunkBytes = 256 * 1024 * 1024
 
 export function checkDeclaredGrid(name: string, rows: number, columns: number, steps: number): void {

@@ -1,6 +1,7 @@
 import { NetCDFReader } from 'netcdfjs'
 import { LayerRefused } from '../layer-refused'
 import { readExactly } from './bytes'
+import { classicHeaderLength, HeaderGoesOn } from './classic-header-length'
 import { maxVariables } from './limits'
 import { type NumberType, type RawAttribute, type RawAttributes, type RawVariable, typeBytes } from './raw-netcdf'
 
@@ -91,21 +92,11 @@ export function readClassicHeader(descriptor: number, fileSize: number): Classic
 function parse(descriptor: number, fileSize: number): NetCDFReader {
   for (let length = firstRead; ; length *= 4) {
     const size = Math.min(length, fileSize, longestHeader)
+    const bytes = readExactly(descriptor, 0, size)
     try {
-      return new NetCDFReader(readExactly(descriptor, 0, size))
+      return new NetCDFReader(bytes.subarray(0, classicHeaderLength(bytes)))
     } catch (error) {
-      if (!(error instanceof RangeError)) {
-        const reason = error instanceof Error ? error.message : String(error)
-        if (/4GB/.test(reason)) {
-          throw new LayerRefused(
-            'unsupported-encoding',
-            'Parts of this classic NetCDF file lie beyond 4 GB, which Offing cannot read yet; save it as NetCDF-4.',
-            {},
-            { cause: error },
-          )
-        }
-        throw new LayerRefused('damaged', `The header of this NetCDF file is damaged (${reason}).`, {}, { cause: error })
-      }
+      if (!(error instanceof HeaderGoesOn)) throw refused(error)
       if (size === fileSize) {
         throw new LayerRefused(
           'truncated',
@@ -114,13 +105,24 @@ function parse(descriptor: number, fileSize: number): NetCDFReader {
           { cause: error },
         )
       }
-      if (size === longestHeader) throw damaged('its header does not end')
+      if (size === longestHeader) throw damaged('it does not end')
     }
   }
 }
 
-function damaged(reason: string): LayerRefused {
-  return new LayerRefused('damaged', `The header of this NetCDF file is damaged: ${reason}.`, { reason })
+function refused(error: unknown): LayerRefused {
+  const reason = error instanceof Error ? error.message : String(error)
+  if (!/4GB/.test(reason)) return damaged(reason, error)
+  return new LayerRefused(
+    'unsupported-encoding',
+    'Parts of this classic NetCDF file lie beyond 4 GB, which Offing cannot read yet; save it as NetCDF-4.',
+    {},
+    { cause: error },
+  )
+}
+
+function damaged(reason: string, cause?: unknown): LayerRefused {
+  return new LayerRefused('damaged', `The header of this NetCDF file is damaged: ${reason}.`, { reason }, { cause })
 }
 
 function attributesOf(list: readonly { name: string; type: string; value: unknown }[]): RawAttributes {

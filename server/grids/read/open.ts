@@ -1,7 +1,6 @@
 import type { GridSource } from '../grid-source'
 import { cfSource } from './cf-source'
-import { openClassic } from './netcdf-classic'
-import { openNetcdf4 } from './netcdf4'
+import type { RawNetcdf } from './raw-netcdf'
 import { recognise } from './signature'
 
 /**
@@ -10,15 +9,18 @@ import { recognise } from './signature'
  */
 export async function openGridSource(path: string, fileName: string): Promise<GridSource> {
   const { format, fileSize, start } = recognise(path, fileName)
-  if (format === 'geotiff') {
-    const { openGeotiff } = await import('./geotiff')
-    return openGeotiff(path, fileName, fileSize)
-  }
-  const file = format === 'netcdf4' ? await openNetcdf4(path, start, fileSize) : openClassic(path, fileSize)
+  if (format === 'geotiff') return (await import('./geotiff')).openGeotiff(path, fileName, fileSize)
+  const file = await openNetcdf(path, fileSize, format === 'netcdf4' ? start : null)
   try {
     return cfSource(file, fileName)
   } catch (error) {
     file.close()
     throw error
   }
+}
+
+/** Each format's library is loaded when first needed: HDF5's alone takes most of a second. */
+async function openNetcdf(path: string, fileSize: number, hdf5Start: number | null): Promise<RawNetcdf> {
+  if (hdf5Start === null) return (await import('./netcdf-classic')).openClassic(path, fileSize)
+  return (await import('./netcdf4')).openNetcdf4(path, hdf5Start, fileSize)
 }
