@@ -2,6 +2,7 @@ import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { Severity } from '../../shared/schemas/common'
 import type { alertStates, Evidence, notBloomCauses, outcomes } from '../../shared/schemas/alerts'
 import type { Phase } from './event'
+import { jsonColumn } from './json-column'
 
 export type AlertState = (typeof alertStates)[number]
 export type Outcome = (typeof outcomes)[number]
@@ -47,7 +48,7 @@ export function defineAlert(sequelize: Sequelize) {
       severity: { type: DataTypes.TEXT, allowNull: false },
       triggerDay: { type: DataTypes.INTEGER, allowNull: false },
       raisedAt: { type: DataTypes.INTEGER, allowNull: false },
-      evidence: { type: DataTypes.JSON, allowNull: false },
+      evidence: jsonColumn('evidence', false),
       acknowledgedBy: { type: DataTypes.INTEGER, allowNull: true },
       acknowledgedAt: { type: DataTypes.INTEGER, allowNull: true },
       assigneeId: { type: DataTypes.INTEGER, allowNull: true },

@@ -1,4 +1,5 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
+import { jsonColumn } from './json-column'
 
 export interface AuditEntryRow {
   id: number
@@ -20,7 +21,7 @@ export function defineAuditEntry(sequelize: Sequelize) {
       userId: { type: DataTypes.INTEGER, allowNull: true },
       action: { type: DataTypes.TEXT, allowNull: false },
       subject: { type: DataTypes.TEXT, allowNull: false },
-      details: { type: DataTypes.JSON, allowNull: false },
+      details: jsonColumn('details', false),
     },
     { tableName: 'audit', underscored: true, timestamps: false },
   )

@@ -1,6 +1,7 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { FeedProposal } from '../../shared/schemas/feeds'
 import type { FileItem, FileReport, FileStatus } from '../../shared/schemas/files'
+import { jsonColumn } from './json-column'
 
 export type Refusal = { code: string; message: string; details: Record<string, unknown> }
 
@@ -39,10 +40,10 @@ export function defineFile(sequelize: Sequelize) {
       processedAt: { type: DataTypes.INTEGER, allowNull: true },
       feedId: { type: DataTypes.INTEGER, allowNull: true },
       observedAt: { type: DataTypes.INTEGER, allowNull: true },
-      report: { type: DataTypes.JSON, allowNull: true },
-      proposal: { type: DataTypes.JSON, allowNull: true },
+      report: jsonColumn('report', true),
+      proposal: jsonColumn('proposal', true),
       waitingFor: { type: DataTypes.TEXT, allowNull: true },
-      refusal: { type: DataTypes.JSON, allowNull: true },
+      refusal: jsonColumn('refusal', true),
     },
     { tableName: 'files', underscored: true, timestamps: false },
   )

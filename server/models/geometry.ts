@@ -1,5 +1,6 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { RegionGeometry } from '../../shared/schemas/regions'
+import { jsonColumn } from './json-column'
 
 export interface GeometryRow {
   id: number
@@ -26,8 +27,8 @@ export function defineGeometry(sequelize: Sequelize) {
       id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
       regionId: { type: DataTypes.INTEGER, allowNull: false },
       version: { type: DataTypes.INTEGER, allowNull: false },
-      geometry: { type: DataTypes.JSON, allowNull: false },
-      repairs: { type: DataTypes.JSON, allowNull: false },
+      geometry: jsonColumn('geometry', false),
+      repairs: jsonColumn('repairs', false),
       areaKm2: { type: DataTypes.REAL, allowNull: false },
       west: { type: DataTypes.REAL, allowNull: false },
       south: { type: DataTypes.REAL, allowNull: false },

@@ -1,5 +1,6 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { Role } from '../../shared/permissions'
+import { jsonColumn } from './json-column'
 
 export interface InvitationRow {
   id: number
@@ -22,7 +23,7 @@ export function defineInvitation(sequelize: Sequelize) {
       id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
       email: { type: DataTypes.TEXT, allowNull: false },
       name: { type: DataTypes.TEXT, allowNull: false },
-      roles: { type: DataTypes.JSON, allowNull: false },
+      roles: jsonColumn('roles', false),
       tokenHash: { type: DataTypes.TEXT, allowNull: false },
       createdBy: { type: DataTypes.INTEGER, allowNull: true },
       createdAt: { type: DataTypes.INTEGER, allowNull: false },

@@ -1,5 +1,6 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { Job } from '../../shared/schemas/running'
+import { jsonColumn } from './json-column'
 
 export type JobState = Job['state']
 export type JobPayload = Record<string, number | string | null>
@@ -33,7 +34,7 @@ export function defineJob(sequelize: Sequelize) {
       kind: { type: DataTypes.TEXT, allowNull: false },
       jobKey: { type: DataTypes.TEXT, allowNull: false },
       subject: { type: DataTypes.TEXT, allowNull: false },
-      payload: { type: DataTypes.JSON, allowNull: false },
+      payload: jsonColumn('payload', false),
       state: { type: DataTypes.TEXT, allowNull: false },
       priority: { type: DataTypes.INTEGER, allowNull: false },
       done: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },

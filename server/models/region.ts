@@ -1,6 +1,7 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { z } from 'zod'
 import type { contact, site } from '../../shared/schemas/regions'
+import { jsonColumn } from './json-column'
 
 export type Site = z.infer<typeof site>
 export type Contact = z.infer<typeof contact>
@@ -30,8 +31,8 @@ export function defineRegion(sequelize: Sequelize) {
       id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
       name: { type: DataTypes.TEXT, allowNull: false },
       timeZone: { type: DataTypes.TEXT, allowNull: false },
-      site: { type: DataTypes.JSON, allowNull: true },
-      contacts: { type: DataTypes.JSON, allowNull: false },
+      site: jsonColumn('site', true),
+      contacts: jsonColumn('contacts', false),
       shoreBufferKm: { type: DataTypes.REAL, allowNull: false },
       opticallyComplex: { type: DataTypes.BOOLEAN, allowNull: false },
       geometryId: { type: DataTypes.INTEGER, allowNull: true },

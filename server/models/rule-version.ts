@@ -1,5 +1,6 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { RuleDefinition } from '../../shared/science/rule'
+import { jsonColumn } from './json-column'
 
 export interface RuleVersionRow {
   id: number
@@ -21,7 +22,7 @@ export function defineRuleVersion(sequelize: Sequelize) {
       id: { type: DataTypes.INTEGER, primaryKey: true, autoIncrement: true },
       ruleId: { type: DataTypes.INTEGER, allowNull: false },
       version: { type: DataTypes.INTEGER, allowNull: false },
-      definition: { type: DataTypes.JSON, allowNull: false },
+      definition: jsonColumn('definition', false),
       note: { type: DataTypes.TEXT, allowNull: false },
       createdBy: { type: DataTypes.INTEGER, allowNull: true },
       createdAt: { type: DataTypes.INTEGER, allowNull: false },
