@@ -18,4 +18,8 @@ export interface Context {
   workers: Workers
   /** Set in the demo and in development only. */
   mailCatcher: MailCatcher | null
+  /** When the queue was last looked at; null before the first time. */
+  lastTickAt: number | null
+  /** Looks at the queue at once, after something was put into it. */
+  wake(): void
 }

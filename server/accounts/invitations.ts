@@ -32,6 +32,7 @@ export async function invite(context: Context, person: Person, wanted: NewInvita
         createdBy: person.id,
         createdAt: context.clock.now(),
         expiresAt: context.clock.system() + validDays * 24 * 3600_000,
+        acceptedAt: null,
       },
       { transaction: tx },
     )

@@ -171,7 +171,8 @@ CREATE TABLE masks (
   grid_id INTEGER NOT NULL REFERENCES grids(id),
   version INTEGER NOT NULL,
   kind TEXT NOT NULL,
-  water BLOB NOT NULL,
+  -- One byte a cell; null for the bundled land outline, which is a function of place and kept with the cell weights.
+  water BLOB,
   checksum TEXT NOT NULL,
   created_at INTEGER NOT NULL,
   UNIQUE (feed_id, grid_id, version)
@@ -183,6 +184,7 @@ CREATE TABLE cell_weights (
   cell_index BLOB NOT NULL,
   share BLOB NOT NULL,
   area_km2 BLOB NOT NULL,
+  outline_water BLOB NOT NULL,
   PRIMARY KEY (geometry_id, grid_id)
 ) WITHOUT ROWID;
 CREATE TABLE provenances (
@@ -269,6 +271,25 @@ CREATE TABLE rule_versions (
   created_at INTEGER NOT NULL,
   activated_at INTEGER,
   UNIQUE (rule_id, version)
+);
+CREATE TABLE standings (
+  rule_id INTEGER PRIMARY KEY REFERENCES rules(id) ON DELETE CASCADE,
+  geometry_id INTEGER NOT NULL,
+  baseline_id INTEGER REFERENCES baselines(id) ON DELETE SET NULL,
+  judged_at INTEGER NOT NULL,
+  state TEXT NOT NULL CHECK (state IN ('flagged', 'unflagged', 'not-ready', 'not-comparable', 'never-seen')),
+  in_event INTEGER NOT NULL,
+  severity TEXT,
+  day INTEGER,
+  layer_id INTEGER,
+  observed_at INTEGER,
+  coverage REAL,
+  value REAL,
+  usual REAL,
+  p10 REAL,
+  p90 REAL,
+  threshold REAL,
+  times_usual REAL
 );
 CREATE TABLE events (
   id INTEGER PRIMARY KEY,

@@ -17,16 +17,17 @@ export interface NewLetterRow {
 
 /** Answers whether the letter is new; one with the same key is there already and stays as it is. */
 export async function insertLetterOnce(db: Database, row: NewLetterRow, tx: Transaction): Promise<boolean> {
-  const inserted = await db.all<{ id: number }>(
+  await db.run(
     `INSERT INTO letters (kind, dedupe_key, user_id, to_address, alert_id, message_id, in_reply_to, subject, text_part,
        html_part, state, next_attempt_at, created_at)
      VALUES ($kind, $dedupeKey, $userId, $toAddress, $alertId, $messageId, $inReplyTo, $subject, $textPart,
        $htmlPart, 'waiting', $nextAttemptAt, $createdAt)
-     ON CONFLICT (dedupe_key) DO NOTHING RETURNING id`,
+     ON CONFLICT (dedupe_key) DO NOTHING`,
     { ...row },
     tx,
   )
-  return inserted.length > 0
+  // Rows of RETURNING never come through: Sequelize runs an INSERT without reading.
+  return (await db.first<{ changes: number }>('SELECT changes() AS changes', {}, tx))?.changes === 1
 }
 
 export interface DueLetter {

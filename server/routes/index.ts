@@ -9,6 +9,17 @@ import { openApiRoutes } from './openapi'
 import { subscriptionRoutes } from './subscriptions'
 import { tokenRoutes } from './tokens'
 import { userRoutes } from './users'
+import { alertRoutes } from './alerts'
+import { exportRoutes } from './exports'
+import { feedRoutes } from './feeds'
+import { fileRoutes } from './files'
+import { jobRoutes } from './jobs'
+import { layerRoutes } from './layers'
+import { regionRoutes } from './regions'
+import { ruleRoutes } from './rules'
+import { runningRoutes } from './running'
+import { streamRoutes } from './stream'
+import { todayRoutes } from './today'
 
 const routes: ((router: Router, context: Context) => void)[] = [
   authRoutes,
@@ -19,6 +30,17 @@ const routes: ((router: Router, context: Context) => void)[] = [
   letterRoutes,
   auditRoutes,
   mailRoutes,
+  alertRoutes,
+  exportRoutes,
+  feedRoutes,
+  fileRoutes,
+  jobRoutes,
+  layerRoutes,
+  regionRoutes,
+  ruleRoutes,
+  runningRoutes,
+  streamRoutes,
+  todayRoutes,
   openApiRoutes,
 ]
 

@@ -1,5 +1,77 @@
+import type { Polygon, MultiPolygon } from 'geojson'
+import type { Figures } from '../../shared/science/figures'
+import type { Judgement, JudgeInput } from '../../shared/science/judge'
+import type { DemoFile } from '../seeders/demo/files'
+import type { Seen } from './inspect-file'
+
+/** Where a layer's values are. */
+export interface LayerPlace {
+  path: string
+  fileName: string
+  variable: string
+  step: number
+  processingVersion: string
+}
+
+/** The cells of one region on one grid, as kept by the database. `water` is 1 where the mask says water. */
+export interface RegionCellWeights {
+  columns: number
+  index: Uint32Array
+  share: Float64Array
+  areaKm2: Float64Array
+  water: Uint8Array
+}
+
+export interface ViewTask {
+  /** Positions in `layers`; all on the grid of `weights`. */
+  layers: number[]
+  /** Position in `weights`. */
+  weights: number
+}
+
+export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
+  /** Cell of the greatest value, its index in the grid. */
+  maxCell: number | null
+  histogram: Uint8Array
+}
+
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */
 export interface Tasks {
-  hashPassword: { input: { password: string }; output: string }
+  hashPassword: { input: { password: string; cost?: number }; output: string }
   comparePassword: { input: { password: string; hash: string }; output: boolean }
+  inspectFile: { input: { path: string; fileName: string }; output: Seen }
+  weighCells: {
+    input: { geometry: Polygon | MultiPolygon; grid: string }
+    output: Omit<RegionCellWeights, 'columns'>
+  }
+  summariseViews: {
+    input: {
+      layers: LayerPlace[]
+      weights: RegionCellWeights[]
+      views: ViewTask[]
+      scale: 'log10' | 'linear'
+      validMin: number | null
+      validMax: number | null
+    }
+    output: ViewFigures[]
+  }
+  judgeRegion: { input: JudgeRegionInput; output: RegionJudgement }
+  drawTile: {
+    input: { layer: LayerPlace; grid: string; z: number; x: number; y: number; theme: 'light' | 'night' }
+    output: Uint8Array | null
+  }
+  writeDemoFile: { input: { file: DemoFile; directory: string }; output: string }
+  readCell: { input: { layer: LayerPlace; row: number; column: number }; output: number | null }
+}
+
+export type JudgeRegionInput = Omit<JudgeInput, 'views'> & {
+  views: (JudgeInput['views'][number] & { processingVersion: string })[]
+}
+
+export interface RegionJudgement extends Omit<Judgement, 'judged'> {
+  judged: (Omit<Judgement['judged'][number], 'state'> & {
+    state: Judgement['judged'][number]['state'] | 'not-comparable'
+  })[]
+  /** The processing version the newest usable view has, and the baseline with it. */
+  processingVersion: string | null
 }

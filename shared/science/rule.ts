@@ -82,7 +82,7 @@ export function defaultRule({ absoluteFloor = 1 }: { absoluteFloor?: number } = 
     joinGapDays: 2,
     lostAfterDays: 14,
     freshnessLimitDays: 3,
-    minimumYears: 3,
+    minimumYears: 2,
     severitySteps: { moderate: 3, severe: 5, extreme: 8 },
   }
 }

@@ -7,6 +7,7 @@ import { type BandNotes, bandNotes, datasetItems } from './geotiff-bands'
 import { geotiffGrid } from './geotiff-place'
 import { checkDeclaredGrid, maxBands, maxChunkBytes } from './limits'
 import { type Meaning, meaningOf } from './quantity'
+import { useOwnZstdDecoder } from './tiff-zstd'
 import { numberIn, numbersIn, readTiffDirectories, type TiffDirectory, tags } from './tiff-directory'
 import { convertInPlace, describeConversion } from './values'
 import { checkWindow } from './window'
@@ -33,6 +34,7 @@ export async function openGeotiff(path: string, fileName: string, fileSize: numb
   checkIsMeasurement(directory, fileName)
   checkDeclaredGrid(fileName, numberIn(directory, tags.height, 0), numberIn(directory, tags.width, 0), 1)
 
+  useOwnZstdDecoder()
   const tiff = await decoding(() => fromFile(path))
   try {
     const image = await decoding(() => tiff.getImage(place))

@@ -1,0 +1,26 @@
+import type { Job } from '../../shared/schemas/running'
+import type { JobRecord } from '../models/job'
+
+const kindNames: Record<string, string> = {
+  'process-file': 'read a file',
+  'judge-region': 'judge a region',
+  'backfill-region': 'read the history of a region',
+  'reread-views': 'make views anew',
+}
+
+export function presentJob(job: JobRecord): Job {
+  const iso = (instant: number) => new Date(instant).toISOString()
+  return {
+    id: job.id,
+    kind: kindNames[job.kind] ?? job.kind,
+    subject: job.subject,
+    state: job.state,
+    done: job.done,
+    total: job.total,
+    attempts: job.attempts,
+    lastError: job.lastError,
+    createdAt: iso(job.createdAt),
+    updatedAt: iso(job.updatedAt),
+    runAfter: job.runAfter === null ? null : iso(job.runAfter),
+  }
+}

@@ -1,0 +1,66 @@
+import type { Context } from '../context'
+import type { Transaction } from '../db'
+import type { JobPayload, JobRecord } from '../models/job'
+
+export interface NewJob {
+  kind: JobKind
+  /** Two waiting jobs of one kind and key are one. */
+  key: string
+  subject: string
+  payload: JobPayload
+  /** Lower goes first. */
+  priority: number
+  runAfter?: number
+}
+
+export const jobKinds = ['process-file', 'judge-region', 'backfill-region', 'reread-views'] as const
+export type JobKind = (typeof jobKinds)[number]
+
+const leaseMs = 60_000
+
+/** Adds a job in the caller's transaction, unless the same one waits already. */
+export async function enqueueJob(context: Context, tx: Transaction, job: NewJob): Promise<void> {
+  const at = context.clock.now()
+  await context.db.run(
+    `INSERT INTO jobs (kind, job_key, subject, payload, state, priority, run_after, created_at, updated_at)
+     VALUES ($kind, $key, $subject, $payload, 'waiting', $priority, $runAfter, $at, $at)
+     ON CONFLICT (kind, job_key) WHERE state = 'waiting' DO UPDATE SET priority = min(priority, excluded.priority)`,
+    { ...job, payload: JSON.stringify(job.payload), runAfter: job.runAfter ?? null, at },
+    tx,
+  )
+}
+
+/** Takes the next due job with a lease, or answers null. */
+export async function takeJob(context: Context, owner: string): Promise<JobRecord | null> {
+  const now = context.clock.system()
+  const due = { now }
+  const sql = `SELECT id FROM jobs WHERE state = 'waiting' AND (run_after IS NULL OR run_after <= $now) ORDER BY priority, id LIMIT 1`
+  if (!(await context.db.first<{ id: number }>(sql, due))) return null
+  return context.db.write(async (tx) => {
+    const next = await context.db.first<{ id: number }>(sql, due, tx)
+    if (!next) return null
+    const job = await context.models.jobs.findByPk(next.id, { transaction: tx, rejectOnEmpty: true })
+    return job.update(
+      { state: 'running', attempts: job.attempts + 1, leaseOwner: owner, leaseUntil: now + leaseMs, updatedAt: context.clock.now(), lastError: null },
+      { transaction: tx },
+    )
+  })
+}
+
+/** Notes how far a job has come, in the transaction that did the work, and renews its lease. */
+export async function markProgress(context: Context, tx: Transaction, job: JobRecord, done: number, total: number): Promise<void> {
+  await job.update({ done, total, leaseUntil: context.clock.system() + leaseMs, updatedAt: context.clock.now() }, { transaction: tx })
+}
+
+/** A restart voids what an earlier process had taken: its work is done again from the last committed mark. */
+export async function voidLeases(context: Context): Promise<number> {
+  return context.db.write(async (tx) => {
+    const held = await context.models.jobs.findAll({ where: { state: 'running' }, transaction: tx })
+    for (const job of held) {
+      const twin = await context.models.jobs.findOne({ where: { kind: job.kind, jobKey: job.jobKey, state: 'waiting' }, transaction: tx })
+      if (twin) await job.update({ state: 'cancelled', leaseOwner: null, leaseUntil: null, lastError: 'Taken over by a newer job.' }, { transaction: tx })
+      else await job.update({ state: 'waiting', leaseOwner: null, leaseUntil: null }, { transaction: tx })
+    }
+    return held.length
+  })
+}

@@ -1,0 +1,67 @@
+import { randomUUID } from 'node:crypto'
+import type { Context } from '../context'
+import type { JobRecord } from '../models/job'
+import { backfillRegion } from '../pipeline/backfill-region'
+import { judgeRegionJob } from '../pipeline/judge-region'
+import { processFile } from '../pipeline/process-file'
+import { rereadViews } from '../pipeline/reread-views'
+import { takeJob, type JobKind } from './queue'
+
+const handlers: Record<JobKind, (context: Context, job: JobRecord) => Promise<'done' | 'paused'>> = {
+  'process-file': processFile,
+  'backfill-region': backfillRegion,
+  'reread-views': rereadViews,
+  'judge-region': judgeRegionJob,
+}
+
+const mostAttempts = 5
+const retryAfterMs = [1_000, 5_000, 30_000, 120_000]
+
+export const processOwner = randomUUID()
+
+/** Runs one due job to its end; answers false when none was due. */
+export async function runNextJob(context: Context): Promise<boolean> {
+  const job = await takeJob(context, processOwner)
+  if (!job) return false
+  context.news.tell({ topic: 'jobs', id: job.id })
+  try {
+    const outcome = await handlers[job.kind as JobKind](context, job)
+    if (outcome === 'done') await finish(context, job, { state: 'done', leaseOwner: null, leaseUntil: null })
+  } catch (error) {
+    await fail(context, job, error)
+  }
+  context.news.tell({ topic: 'jobs', id: job.id })
+  return true
+}
+
+async function finish(context: Context, job: JobRecord, change: Parameters<JobRecord['update']>[0]): Promise<void> {
+  await context.db.write(async (tx) => {
+    await job.reload({ transaction: tx })
+    if (job.state !== 'running') return
+    await job.update({ ...change, updatedAt: context.clock.now() }, { transaction: tx })
+  })
+}
+
+/** A fault that is not the file's own: tried again a few times, then shown as failed until somebody retries it. */
+async function fail(context: Context, job: JobRecord, error: unknown): Promise<void> {
+  context.log.error({ err: error, job: job.id, kind: job.kind }, 'a job failed')
+  const lastError = error instanceof Error ? error.message : String(error)
+  const again = job.attempts < mostAttempts
+  const wait = retryAfterMs[Math.min(job.attempts - 1, retryAfterMs.length - 1)]!
+  await context.db.write(async (tx) => {
+    await job.reload({ transaction: tx })
+    if (job.state !== 'running') return
+    const twin = again ? await context.models.jobs.count({ where: { kind: job.kind, jobKey: job.jobKey, state: 'waiting' }, transaction: tx }) : 0
+    await job.update(
+      {
+        state: again && twin === 0 ? 'waiting' : 'failed',
+        runAfter: again ? context.clock.system() + wait : null,
+        leaseOwner: null,
+        leaseUntil: null,
+        lastError,
+        updatedAt: context.clock.now(),
+      },
+      { transaction: tx },
+    )
+  })
+}

@@ -1,0 +1,53 @@
+import type { Context } from '../context'
+import type { RegionCellWeights } from '../workers/tasks'
+
+interface Kept {
+  cellIndex: Buffer
+  share: Buffer
+  areaKm2: Buffer
+  outlineWater: Buffer
+}
+
+/** The weights of a region's cells on a grid: made once, then kept. `columns` is the grid's. */
+export async function cellWeights(context: Context, geometryId: number, gridId: number, columns: number): Promise<RegionCellWeights> {
+  const kept = await context.db.first<Kept>(
+    `SELECT cell_index AS cellIndex, share, area_km2 AS areaKm2, outline_water AS outlineWater FROM cell_weights
+     WHERE geometry_id = $geometryId AND grid_id = $gridId`,
+    { geometryId, gridId },
+  )
+  if (kept) {
+    return {
+      columns,
+      index: new Uint32Array(copyOf(kept.cellIndex)),
+      share: new Float64Array(copyOf(kept.share)),
+      areaKm2: new Float64Array(copyOf(kept.areaKm2)),
+      water: new Uint8Array(copyOf(kept.outlineWater)),
+    }
+  }
+  return makeWeights(context, geometryId, gridId, columns)
+}
+
+async function makeWeights(context: Context, geometryId: number, gridId: number, columns: number): Promise<RegionCellWeights> {
+  const geometry = await context.models.geometries.findByPk(geometryId, { rejectOnEmpty: true })
+  const grid = await context.db.first<{ definition: string }>('SELECT definition FROM grids WHERE id = $gridId', { gridId })
+  const weights = await context.workers.heavy('weighCells', { geometry: geometry.geometry, grid: grid!.definition })
+  const { index, share, areaKm2, water } = weights
+  await context.db.write((tx) =>
+    context.db.run(
+      `INSERT INTO cell_weights (geometry_id, grid_id, cells, cell_index, share, area_km2, outline_water)
+       VALUES ($geometryId, $gridId, $cells, $index, $share, $areaKm2, $water) ON CONFLICT DO NOTHING`,
+      { geometryId, gridId, cells: index.length, index: bytesOf(index), share: bytesOf(share), areaKm2: bytesOf(areaKm2), water: bytesOf(water) },
+      tx,
+    ),
+  )
+  return { columns, ...weights }
+}
+
+function bytesOf(array: Uint32Array | Float64Array | Uint8Array): Buffer {
+  return Buffer.from(array.buffer, array.byteOffset, array.byteLength)
+}
+
+/** Buffers from the database may start anywhere in memory; typed arrays need their own. */
+function copyOf(buffer: Buffer): ArrayBuffer {
+  return new Uint8Array(buffer).buffer
+}

@@ -1,0 +1,85 @@
+import type { z } from 'zod'
+import type { Feed, feedChange, NewFeed } from '../../shared/schemas/feeds'
+import { audit } from '../accounts/audit'
+import type { Person } from '../accounts/person'
+import { ApiError } from '../api-error'
+import type { Context } from '../context'
+import type { Transaction } from '../db'
+import type { FeedRecord } from '../models/feed'
+import { queueFile } from './receive-file'
+
+const hourMs = 3_600_000
+
+interface LayerSpan {
+  feedId: number
+  layers: number
+  oldest: number
+  newest: number
+  newestEnd: number
+}
+
+export async function presentFeeds(context: Context, feeds: readonly FeedRecord[]): Promise<Feed[]> {
+  const now = context.clock.now()
+  const spans = await context.db.all<LayerSpan>(
+    `SELECT feed_id AS feedId, count(*) AS layers, min(observed_at) AS oldest, max(observed_at) AS newest,
+       max(ifnull(ends_at, observed_at)) AS newestEnd FROM layers GROUP BY feed_id`,
+  )
+  const byFeed = new Map(spans.map((span) => [span.feedId, span]))
+  return feeds.map((feed) => {
+    const span = byFeed.get(feed.id)
+    const age = span ? (now - span.newestEnd) / hourMs : null
+    const { createdAt, ...fields } = feed.get({ plain: true })
+    return {
+      ...fields,
+      createdAt: new Date(createdAt).toISOString(),
+      layers: span?.layers ?? 0,
+      oldestLayerAt: span ? new Date(span.oldest).toISOString() : null,
+      newestLayerAt: span ? new Date(span.newest).toISOString() : null,
+      newestAgeHours: age,
+      silent: age !== null && age > feed.silentAfterHours,
+    }
+  })
+}
+
+/** A confirmed feed: the file it was proposed from, and every other waiting one, goes back into the queue at once. */
+export async function createFeed(context: Context, person: Person, { fileId, ...fields }: NewFeed): Promise<FeedRecord> {
+  const feed = await context.db.write(async (tx) => {
+    await freeName(context, tx, fields.name)
+    const record = await context.models.feeds.create({ ...fields, retired: false, createdAt: context.clock.now() }, { transaction: tx })
+    if (fileId !== undefined) await requeueNamed(context, tx, fileId)
+    for (const file of await context.models.files.findAll({ where: { status: 'waiting' }, transaction: tx })) await queueFile(context, file, tx)
+    await audit(context, tx, { userId: person.id, action: 'feed:create', subject: `feed ${record.id}`, details: { name: fields.name, fileId: fileId ?? null } })
+    return record
+  })
+  context.news.tell({ topic: 'feeds', id: feed.id }, { topic: 'files' })
+  context.wake()
+  return feed
+}
+
+export async function changeFeed(context: Context, person: Person, id: number, { version, ...change }: z.infer<typeof feedChange>): Promise<FeedRecord> {
+  const feed = await context.db.write(async (tx) => {
+    const record = await context.models.feeds.findByPk(id, { transaction: tx })
+    if (!record) throw new ApiError('not-found', 'There is no such feed.')
+    if (record.version !== version) throw new ApiError('stale-version', 'Somebody else changed this feed meanwhile. Look at it again.', { version: record.version })
+    if (change.name !== undefined && change.name !== record.name) await freeName(context, tx, change.name)
+    await record.update({ ...change, version: version + 1 }, { transaction: tx })
+    await audit(context, tx, { userId: person.id, action: 'feed:change', subject: `feed ${id}`, details: { ...change } })
+    return record
+  })
+  context.news.tell({ topic: 'feeds', id })
+  return feed
+}
+
+async function requeueNamed(context: Context, tx: Transaction, fileId: number): Promise<void> {
+  const file = await context.models.files.findByPk(fileId, { transaction: tx })
+  if (!file) throw new ApiError('not-valid', 'There is no such file.', { fields: { fileId: 'There is no such file.' } })
+  if (file.status !== 'waiting' && file.status !== 'refused') {
+    throw new ApiError('conflict', `The file ${file.name} is not waiting: it is ${file.status}.`)
+  }
+  await queueFile(context, file, tx)
+}
+
+async function freeName(context: Context, tx: Transaction, name: string): Promise<void> {
+  if ((await context.models.feeds.count({ where: { name }, transaction: tx })) === 0) return
+  throw new ApiError('conflict', `A feed named ${name} exists already.`, { fields: { name: 'This name is taken.' } })
+}

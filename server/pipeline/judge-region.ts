@@ -1,0 +1,36 @@
+import { localSolarDay } from '../../shared/science/local-day'
+import type { Context } from '../context'
+import { keepAlerts } from '../desk/keep-alerts'
+import type { JobRecord } from '../models/job'
+import { judgeableViews } from '../queries/judgeable-views'
+import { keepBaseline } from './keep-baseline'
+import { keepEvents } from './keep-events'
+import { keepStanding } from './keep-standing'
+import { activeRule } from './active-rule'
+
+/** A job that judges one rule. */
+export async function judgeRegionJob(context: Context, job: JobRecord): Promise<'done'> {
+  await judgeRegion(context, Number(job.payload['ruleId']))
+  return 'done'
+}
+
+/**
+ * Judges a region by one rule, in one transaction: baseline brought up to date, events, alerts and their letters, and
+ * where the region stands. Events are a pure fold of the summaries, so judging again changes nothing.
+ */
+export async function judgeRegion(context: Context, ruleId: number): Promise<void> {
+  const subject = await activeRule(context, ruleId)
+  if (!subject) return
+  const views = await judgeableViews(context, subject.geometry.id, subject.feed.id)
+  const nowDay = localSolarDay(context.clock.now(), subject.geometry.centreLongitude)
+  const newest = views.reduce((day, view) => Math.max(day, view.day), -Infinity)
+  const today = Math.max(nowDay, Math.min(newest, nowDay + 1))
+  const judgement = await context.workers.heavy('judgeRegion', { views, rule: subject.definition, today })
+  const changes = await context.db.write(async (tx) => {
+    const baselineId = await keepBaseline(context, tx, subject, views, judgement)
+    const events = await keepEvents(context, tx, subject, judgement.events, baselineId)
+    await keepStanding(context, tx, subject, { views, judgement, events, baselineId })
+    return keepAlerts(context, tx, subject, { views, judgement, events, baselineId })
+  })
+  context.news.tell({ topic: 'regions', id: subject.region.id }, ...changes)
+}

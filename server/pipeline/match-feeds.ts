@@ -1,0 +1,79 @@
+import type { FeedRow } from '../models/feed'
+import type { FileRow } from '../models/file'
+import type { LayerTime } from '../grids/grid-source'
+import { LayerRefused } from '../grids/layer-refused'
+import type { Seen, SeenVariable } from '../workers/inspect-file'
+import { dateInName, fitsPattern } from './file-name-pattern'
+
+/** One feed's share of a file: a variable and its steps, each with a time that is known. */
+export interface FeedMatch {
+  feed: FeedRow
+  variable: SeenVariable
+  steps: { step: number; time: LayerTime & { observedAt: number } }[]
+}
+
+export type Matching = { matches: FeedMatch[] } | { waitingFor: string }
+
+type Asked = Pick<FileRow, 'name' | 'feedId' | 'observedAt'>
+
+/** Which feeds a file serves. A file said to belong to a feed serves that one, or is refused with the reason. */
+export function matchFeeds(seen: Seen, feeds: readonly FeedRow[], file: Asked): Matching {
+  const active = feeds.filter((feed) => !feed.retired && feed.derivedFrom === null)
+  if (file.feedId !== null) return matchNamed(seen, active, file)
+  const byPattern = active.filter((feed) => feed.fileNamePattern !== null && fitsPattern(feed.fileNamePattern, file.name))
+  const candidates = byPattern.length > 0 ? byPattern : active.filter((feed) => feed.fileNamePattern === null)
+  const pairs = candidates.flatMap((feed) => {
+    const variable = variableFor(feed, seen, byPattern.length > 0)
+    return variable ? [{ feed, variable }] : []
+  })
+  if (pairs.length === 0) return { waitingFor: 'It fits no feed yet. Confirm the proposal, or say which feed it belongs to.' }
+  const twice = pairs.find((pair) => pairs.some((other) => other !== pair && other.variable === pair.variable))
+  if (twice) {
+    const names = pairs.filter((pair) => pair.variable === twice.variable).map((pair) => pair.feed.name)
+    return { waitingFor: `${twice.variable.name} fits more than one feed: ${names.join(', ')}. Say which one it belongs to.` }
+  }
+  return timed(pairs, file)
+}
+
+function matchNamed(seen: Seen, feeds: readonly FeedRow[], file: Asked): Matching {
+  const feed = feeds.find((one) => one.id === file.feedId)
+  if (!feed) throw new LayerRefused('not-this-feed', 'The feed it was sent to is retired, derived or gone.', { feedId: file.feedId })
+  const variable = variableFor(feed, seen, true)
+  if (!variable) {
+    const found = seen.variables.map((one) => `${one.name}${one.unit ? ` (${one.unit})` : ''}`)
+    throw new LayerRefused(
+      'not-this-feed',
+      `It holds nothing that the feed ${feed.name} reads: ${feed.variable}${feed.unit ? ` in ${feed.unit}` : ''}. It holds ${found.join(', ')}.`,
+      { feedId: feed.id, variables: found },
+    )
+  }
+  return timed([{ feed, variable }], file)
+}
+
+/** The variable of a feed; where the name says nothing (a band of a picture) a lone variable of a fitting unit serves. */
+function variableFor(feed: FeedRow, seen: Seen, lone: boolean): SeenVariable | null {
+  const sameUnit = (variable: SeenVariable) => variable.unit === feed.unit || variable.unit === null
+  const named = seen.variables.find((variable) => variable.name === feed.variable && sameUnit(variable))
+  if (named) return named
+  const fitting = seen.variables.filter((variable) => (variable.quantity === feed.quantity || seen.variables.length === 1) && sameUnit(variable))
+  return lone && fitting.length === 1 ? fitting[0]! : null
+}
+
+function timed(pairs: { feed: FeedRow; variable: SeenVariable }[], file: Asked): Matching {
+  const matches: FeedMatch[] = []
+  for (const { feed, variable } of pairs) {
+    const steps = variable.times.map((time, step) => ({ step, time: withTime(time, feed, file, variable.times.length) }))
+    const known = steps.flatMap(({ step, time }) => (time === null ? [] : [{ step, time }]))
+    if (known.length < steps.length) return { waitingFor: 'It says nowhere when it was observed. Send it again with the time (observedAt), or give its feed a file-name pattern.' }
+    matches.push({ feed, variable, steps: known })
+  }
+  return { matches }
+}
+
+function withTime(time: LayerTime, feed: FeedRow, file: Asked, count: number): (LayerTime & { observedAt: number }) | null {
+  if (time.observedAt !== null) return { ...time, observedAt: time.observedAt }
+  if (count > 1) return null
+  if (file.observedAt !== null) return { ...time, observedAt: file.observedAt, hasClock: file.observedAt % 86_400_000 !== 0, from: 'the form' }
+  const named = feed.fileNamePattern === null ? null : dateInName(feed.fileNamePattern, file.name)
+  return named && { ...time, observedAt: named.instant, hasClock: named.hasClock, from: 'the file name' }
+}

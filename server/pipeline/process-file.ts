@@ -1,0 +1,85 @@
+import type { Context } from '../context'
+import { LayerRefused } from '../grids/layer-refused'
+import type { FileRecord } from '../models/file'
+import type { JobRecord } from '../models/job'
+import type { Seen } from '../workers/inspect-file'
+import { markProgress } from '../jobs/queue'
+import { addLayers, keepGrids } from './add-layers'
+import { ensureFirstRule, regionsWithoutRule } from './first-rule'
+import { matchFeeds, type FeedMatch } from './match-feeds'
+import { proposeFeed } from './propose-feed'
+import { queueJudging } from './queue-judging'
+import { storedPath } from './stored-files'
+import { summariseLayers } from './summarise-layers'
+
+const stepsAtOnce = 62
+
+/**
+ * The road of a file: looked at, matched with feeds, its layers and every region's figures committed in batches, then
+ * judging queued. Running it again changes nothing.
+ */
+export async function processFile(context: Context, job: JobRecord): Promise<'done'> {
+  const file = await context.models.files.findByPk(Number(job.payload['fileId']))
+  if (!file) return 'done'
+  await setStatus(context, file, { status: 'processing' })
+  try {
+    const seen = await context.workers.heavy('inspectFile', { path: storedPath(context.env, file.checksum), fileName: file.name })
+    const feeds = await context.models.feeds.findAll({ order: [['id', 'ASC']] })
+    const matching = matchFeeds(seen, feeds, file)
+    if ('waitingFor' in matching) await letWait(context, file, seen, matching.waitingFor, feeds.map((feed) => feed.name))
+    else await takeIn(context, job, file, seen, matching.matches)
+  } catch (error) {
+    if (!(error instanceof LayerRefused)) throw error
+    await refuse(context, file, error)
+  }
+  return 'done'
+}
+
+async function takeIn(context: Context, job: JobRecord, file: FileRecord, seen: Seen, matches: FeedMatch[]): Promise<void> {
+  const gridIds = await keepGrids(context, seen.grids)
+  const total = matches.reduce((sum, match) => sum + match.steps.length, 0)
+  let done = 0
+  for (const match of matches) {
+    for (let from = 0; from < match.steps.length; from += stepsAtOnce) {
+      const steps = match.steps.slice(from, from + stepsAtOnce)
+      const gridId = gridIds[match.variable.grid]!
+      const layerIds = await addLayers(context, { file, match, steps, gridId, processingVersion: seen.processingVersion })
+      done += steps.length
+      await summariseLayers(context, match.feed.id, layerIds, (tx) => markProgress(context, tx, job, done, total))
+      context.news.tell({ topic: 'files', id: file.id })
+    }
+  }
+  await finish(context, file, seen, matches)
+}
+
+async function finish(context: Context, file: FileRecord, seen: Seen, matches: FeedMatch[]): Promise<void> {
+  const feeds = matches.map(({ feed, variable, steps }) => ({ feedId: feed.id, variable: variable.name, layers: steps.length }))
+  await context.db.write(async (tx) => {
+    await file.update(
+      { status: 'processed', processedAt: context.clock.now(), report: { ...seen.report, feeds }, proposal: null, waitingFor: null, refusal: null },
+      { transaction: tx },
+    )
+    for (const region of await regionsWithoutRule(context, tx)) await ensureFirstRule(context, tx, region)
+    for (const { feed } of matches) await queueJudging(context, tx, { feedId: feed.id })
+  })
+  context.news.tell({ topic: 'files', id: file.id }, { topic: 'feeds' }, { topic: 'regions' })
+}
+
+async function letWait(context: Context, file: FileRecord, seen: Seen, waitingFor: string, names: string[]): Promise<void> {
+  await setStatus(context, file, {
+    status: 'waiting',
+    waitingFor,
+    report: { ...seen.report, feeds: [] },
+    proposal: file.feedId === null ? proposeFeed(seen, file.name, names) : null,
+  })
+}
+
+async function refuse(context: Context, file: FileRecord, refused: LayerRefused): Promise<void> {
+  const refusal = { code: refused.code, message: refused.message, details: refused.facts }
+  await setStatus(context, file, { status: 'refused', refusal, processedAt: context.clock.now() })
+}
+
+async function setStatus(context: Context, file: FileRecord, change: Parameters<FileRecord['update']>[0]): Promise<void> {
+  await context.db.write((tx) => file.update(change, { transaction: tx }))
+  context.news.tell({ topic: 'files', id: file.id })
+}

@@ -1,0 +1,35 @@
+import type { Context } from '../context'
+import type { Transaction } from '../db'
+import { layersById, type PlacedLayer } from '../queries/layers'
+import { activeGeometries } from '../queries/geometries'
+import { summariseViews, type ViewKey } from './summarise-views'
+import { viewDay } from './view-day'
+
+/** Figures for every region whose box meets the layers' grid: each view they belong to is made anew. */
+export async function summariseLayers(
+  context: Context,
+  feedId: number,
+  layerIds: readonly number[],
+  alongside: (tx: Transaction) => Promise<void>,
+): Promise<void> {
+  const layers = await layersById(context, layerIds)
+  const geometries = await activeGeometries(context)
+  const keys: ViewKey[] = geometries.flatMap((geometry) => {
+    const days = new Set(layers.filter((layer) => boxesMeet(geometry, layer)).map((layer) => viewDay(layer, geometry.centreLongitude)))
+    return [...days].map((day) => ({ geometryId: geometry.id, feedId, day }))
+  })
+  await summariseViews(context, keys, alongside)
+}
+
+interface Box {
+  west: number
+  south: number
+  east: number
+  north: number
+}
+
+/** Boxes on the globe, in whatever turn their longitudes are written. */
+export function boxesMeet(region: Box, grid: Box | PlacedLayer): boolean {
+  if (region.north < grid.south || region.south > grid.north) return false
+  return [-720, -360, 0, 360, 720].some((turn) => region.west + turn <= grid.east && region.east + turn >= grid.west)
+}

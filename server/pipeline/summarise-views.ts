@@ -1,0 +1,148 @@
+import type { Context } from '../context'
+import type { Transaction } from '../db'
+import type { FeedRecord } from '../models/feed'
+import type { RegionCellWeights, ViewFigures, ViewTask } from '../workers/tasks'
+import { compareVersions } from '../../shared/science/merge-views'
+import { trustedLayers, type PlacedLayer } from '../queries/layers'
+import { writeSummaries, type SummaryRow } from '../queries/summaries'
+import { cellCentre } from '../grids/cell-centre'
+import { cellWeights } from './cell-weights'
+import { gridOf } from './known-grids'
+import { maskFor, provenanceFor } from './provenance'
+import { storedPath } from './stored-files'
+import { viewDay } from './view-day'
+
+export interface ViewKey {
+  geometryId: number
+  feedId: number
+  day: number
+}
+
+interface View extends ViewKey {
+  layers: PlacedLayer[]
+  gridId: number
+}
+
+const dayMs = 86_400_000
+
+/**
+ * Makes the named views anew from the trusted layers they hold now, and writes their figures in one transaction,
+ * together with whatever `alongside` writes. A view that has lost all its layers is removed.
+ */
+export async function summariseViews(
+  context: Context,
+  keys: readonly ViewKey[],
+  alongside: (tx: Transaction) => Promise<void> = async () => undefined,
+): Promise<void> {
+  const rows: SummaryRow[] = []
+  const empty: ViewKey[] = []
+  for (const [feedId, ofFeed] of groupBy(keys, (key) => key.feedId)) {
+    const feed = await context.models.feeds.findByPk(feedId, { rejectOnEmpty: true })
+    const views = await viewsOf(context, feedId, ofFeed)
+    empty.push(...views.filter((view) => view.layers.length === 0))
+    rows.push(...(await figuresOf(context, feed, views.filter((view) => view.layers.length > 0))))
+  }
+  await context.db.write(async (tx) => {
+    await writeSummaries(context, tx, rows, empty)
+    await alongside(tx)
+  })
+}
+
+/** The figures of one view read anew from its stored layers, nothing written; null when no trusted layer is left. */
+export async function freshFigures(context: Context, key: ViewKey): Promise<(ViewFigures & { checksum: string }) | null> {
+  const feed = await context.models.feeds.findByPk(key.feedId, { rejectOnEmpty: true })
+  const [view] = await viewsOf(context, key.feedId, [key])
+  if (!view || view.layers.length === 0) return null
+  const [row] = await figuresOf(context, feed, [view])
+  return row ? { ...row.figures, checksum: view.layers[0]!.checksum } : null
+}
+
+/** The layers of each view, all on one grid: that of the latest processing version. */
+async function viewsOf(context: Context, feedId: number, keys: readonly ViewKey[]): Promise<View[]> {
+  const days = keys.map((key) => key.day)
+  const from = (Math.min(...days) - 1) * dayMs
+  const to = (Math.max(...days) + 2) * dayMs
+  const layers = await trustedLayers(context, feedId, from, to)
+  const geometries = new Map(
+    (await context.models.geometries.findAll({ where: { id: [...new Set(keys.map((key) => key.geometryId))] }, attributes: ['id', 'centreLongitude'] })).map(
+      (geometry) => [geometry.id, geometry.centreLongitude],
+    ),
+  )
+  const byPlace = new Map<number, Map<number, PlacedLayer[]>>()
+  for (const [geometryId, longitude] of geometries) {
+    byPlace.set(geometryId, groupBy(layers, (layer) => viewDay(layer, longitude)))
+  }
+  return keys.map((key) => {
+    const all = byPlace.get(key.geometryId)?.get(key.day) ?? []
+    const latest = all.reduce<PlacedLayer | null>((a, b) => (a && compareVersions(a.processingVersion, b.processingVersion) >= 0 ? a : b), null)
+    return { ...key, gridId: latest?.gridId ?? 0, layers: all.filter((layer) => layer.gridId === latest?.gridId) }
+  })
+}
+
+async function figuresOf(context: Context, feed: FeedRecord, views: readonly View[]): Promise<SummaryRow[]> {
+  if (views.length === 0) return []
+  const layers = [...new Map(views.flatMap((view) => view.layers).map((layer) => [layer.id, layer])).values()]
+  const places = new Map(layers.map((layer, at) => [layer.id, at]))
+  const weights: RegionCellWeights[] = []
+  const weightsAt = new Map<string, number>()
+  const tasks: ViewTask[] = []
+  for (const view of views) {
+    const name = `${view.geometryId}:${view.gridId}`
+    if (!weightsAt.has(name)) {
+      weightsAt.set(name, weights.length)
+      weights.push(await cellWeights(context, view.geometryId, view.gridId, view.layers[0]!.columns))
+    }
+    tasks.push({ layers: view.layers.map((layer) => places.get(layer.id)!), weights: weightsAt.get(name)! })
+  }
+  const touched = views.map((view) => weights[weightsAt.get(`${view.geometryId}:${view.gridId}`)!]!.index.length > 0)
+  const kept = views.filter((_, i) => touched[i])
+  const figures = await context.workers.heavy('summariseViews', {
+    layers: layers.map((layer) => ({
+      path: storedPath(context.env, layer.checksum),
+      fileName: layer.fileName,
+      variable: layer.variable,
+      step: layer.step,
+      processingVersion: layer.processingVersion,
+    })),
+    weights,
+    views: tasks.filter((_, i) => touched[i]),
+    scale: feed.scale,
+    validMin: feed.validMin,
+    validMax: feed.validMax,
+  })
+  return rowsOf(context, kept, figures)
+}
+
+async function rowsOf(context: Context, views: readonly View[], figures: readonly ViewFigures[]): Promise<SummaryRow[]> {
+  const rows: SummaryRow[] = []
+  for (const [i, view] of views.entries()) {
+    const first = view.layers[0]!
+    const maskId = await maskFor(context, view.feedId, view.gridId)
+    const processingVersion = view.layers.map((layer) => layer.processingVersion).reduce((a, b) => (compareVersions(a, b) >= 0 ? a : b))
+    const { maxCell } = figures[i]!
+    const [maxLon, maxLat] = maxCell === null ? [null, null] : cellCentre(await gridOf(context, view.gridId), maxCell)
+    rows.push({
+      geometryId: view.geometryId,
+      feedId: view.feedId,
+      day: view.day,
+      figures: figures[i]!,
+      maxLat,
+      maxLon,
+      layerIds: view.layers.map((layer) => layer.id),
+      observedAt: first.observedAt,
+      endsAt: view.layers.reduce<number | null>((end, layer) => (layer.endsAt === null ? end : Math.max(end ?? 0, layer.endsAt)), null),
+      provenanceId: await provenanceFor(context, { gridId: view.gridId, maskId, processingVersion }),
+    })
+  }
+  return rows
+}
+
+function groupBy<T, K>(items: readonly T[], keyOf: (item: T) => K): Map<K, T[]> {
+  const groups = new Map<K, T[]>()
+  for (const item of items) {
+    const group = groups.get(keyOf(item))
+    if (group) group.push(item)
+    else groups.set(keyOf(item), [item])
+  }
+  return groups
+}

@@ -1,0 +1,82 @@
+import type { RuleDefinition } from '../../shared/science/rule'
+import type { Severity } from '../../shared/schemas/common'
+import type { Context } from '../context'
+
+/** What a region's standing is made of, one row a region. */
+export interface RegionFacts {
+  regionId: number
+  geometryId: number
+  feedId: number | null
+  feedName: string | null
+  unit: string | null
+  cadence: string | null
+  silentAfterHours: number | null
+  ruleId: number | null
+  definition: RuleDefinition | null
+  newestLayerAt: number | null
+  alertId: number | null
+  alertSeverity: Severity | null
+  jobDone: number | null
+  jobTotal: number | null
+  judged: JudgedFacts | null
+}
+
+export interface JudgedFacts {
+  state: 'flagged' | 'unflagged' | 'not-ready' | 'not-comparable' | 'never-seen'
+  inEvent: number
+  severity: Severity | null
+  day: number | null
+  layerId: number | null
+  observedAt: number | null
+  coverage: number | null
+  value: number | null
+  usual: number | null
+  p10: number | null
+  p90: number | null
+  timesUsual: number | null
+}
+
+type Row = Omit<RegionFacts, 'definition' | 'judged'> & { definition: string | null; judged: string | null }
+
+/** Facts of all regions that are not retired, or of one. A region stands by its first rule that is switched on. */
+export async function regionFacts(context: Context, regionId?: number): Promise<RegionFacts[]> {
+  const rows = await context.db.all<Row>(
+    `SELECT r.id AS regionId, r.geometry_id AS geometryId, f.id AS feedId, f.name AS feedName, f.unit, f.cadence,
+       f.silent_after_hours AS silentAfterHours, ru.id AS ruleId, rv.definition,
+       (SELECT max(ifnull(l.ends_at, l.observed_at)) FROM layers l WHERE l.feed_id = f.id) AS newestLayerAt,
+       a.id AS alertId, a.severity AS alertSeverity, j.done AS jobDone, j.total AS jobTotal,
+       CASE WHEN s.rule_id IS NULL THEN NULL ELSE json_object('state', s.state, 'inEvent', s.in_event, 'severity', s.severity, 'day', s.day,
+         'layerId', s.layer_id, 'observedAt', s.observed_at, 'coverage', s.coverage, 'value', s.value, 'usual', s.usual, 'p10', s.p10,
+         'p90', s.p90, 'timesUsual', s.times_usual) END AS judged
+     FROM regions r
+     LEFT JOIN rules ru ON ru.id = (SELECT min(id) FROM rules WHERE region_id = r.id AND active_version IS NOT NULL)
+     LEFT JOIN rule_versions rv ON rv.rule_id = ru.id AND rv.version = ru.active_version
+     LEFT JOIN feeds f ON f.id = ifnull(ru.feed_id, r.wanted_feed_id)
+     LEFT JOIN standings s ON s.rule_id = ru.id AND s.geometry_id = r.geometry_id
+     LEFT JOIN alerts a ON a.region_id = r.id AND a.state <> 'closed'
+     LEFT JOIN jobs j ON j.kind = 'backfill-region' AND j.job_key = CAST(r.geometry_id AS TEXT) AND j.state IN ('waiting', 'running', 'paused')
+     WHERE r.retired_at IS NULL AND ($regionId IS NULL OR r.id = $regionId) GROUP BY r.id ORDER BY r.id`,
+    { regionId: regionId ?? null },
+  )
+  return rows.map((row) => ({
+    ...row,
+    definition: row.definition === null ? null : (JSON.parse(row.definition) as RuleDefinition),
+    judged: row.judged === null ? null : (JSON.parse(row.judged) as JudgedFacts),
+  }))
+}
+
+export interface SeenDay {
+  regionId: number
+  day: number
+  coverage: number | null
+}
+
+/** Coverage by day since `fromDay` of the feed each region stands by. */
+export async function seenDays(context: Context, fromDay: number, facts: readonly RegionFacts[]): Promise<SeenDay[]> {
+  const wanted = facts.flatMap((fact) => (fact.feedId === null ? [] : [[fact.regionId, fact.geometryId, fact.feedId]]))
+  return context.db.all<SeenDay>(
+    `SELECT w.value ->> 0 AS regionId, s.day, s.coverage FROM json_each($wanted) w
+     JOIN summaries s ON s.geometry_id = w.value ->> 1 AND s.feed_id = w.value ->> 2 AND s.day >= $fromDay ORDER BY s.day`,
+    { wanted: JSON.stringify(wanted), fromDay },
+  )
+}

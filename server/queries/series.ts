@@ -1,0 +1,56 @@
+import { areaAboveKm2, unpackHistogram } from '../../shared/science/histogram'
+import { dateOf } from '../../shared/science/local-day'
+import { seriesColumnNames, type Series } from '../../shared/schemas/series'
+import type { Context } from '../context'
+
+export interface SeriesWanted {
+  geometryId: number
+  feedId: number
+  fromDay: number | null
+  toDay: number | null
+  columns: readonly (typeof seriesColumnNames)[number][]
+  /** Level of areaAboveKm2. */
+  above: number
+}
+
+const stored: Record<Exclude<(typeof seriesColumnNames)[number], 'observedAt' | 'day' | 'areaAboveKm2'>, string> = {
+  layerId: 'layer_id',
+  coverage: 'coverage',
+  cells: 'cells',
+  valid: 'valid',
+  validAreaKm2: 'valid_area_km2',
+  mean: 'mean',
+  geometricMean: 'geometric_mean',
+  median: 'median',
+  p10: 'p10',
+  p25: 'p25',
+  p75: 'p75',
+  p90: 'p90',
+  p95: 'p95',
+  max: 'max',
+  maxLat: 'max_lat',
+  maxLon: 'max_lon',
+  sdLog10: 'sd_log10',
+  departure: 'departure',
+}
+
+/** Figures of every view by column, oldest first. */
+export async function seriesColumns(context: Context, wanted: SeriesWanted): Promise<Series['columns']> {
+  const where = `geometry_id = $geometryId AND feed_id = $feedId AND ($fromDay IS NULL OR day >= $fromDay) AND ($toDay IS NULL OR day <= $toDay)`
+  const bind = { geometryId: wanted.geometryId, feedId: wanted.feedId, fromDay: wanted.fromDay, toDay: wanted.toDay }
+  const names = wanted.columns
+  const plain = names.flatMap((name) => (name in stored ? [`'${name}', json_group_array(${stored[name as keyof typeof stored]})`] : []))
+  const row = await context.db.first<{ columns: string; days: string; instants: string }>(
+    `SELECT json_object(${plain.join(', ')}) AS columns, json_group_array(day) AS days, json_group_array(observed_at) AS instants
+     FROM (SELECT * FROM summaries WHERE ${where} ORDER BY day)`,
+    bind,
+  )
+  const columns = JSON.parse(row!.columns) as Series['columns']
+  if (names.includes('day')) columns.day = (JSON.parse(row!.days) as number[]).map(dateOf)
+  if (names.includes('observedAt')) columns.observedAt = (JSON.parse(row!.instants) as number[]).map((at) => new Date(at).toISOString())
+  if (names.includes('areaAboveKm2')) {
+    const histograms = await context.db.all<{ histogram: Buffer | null }>(`SELECT histogram FROM summaries WHERE ${where} ORDER BY day`, bind)
+    columns.areaAboveKm2 = histograms.map(({ histogram }) => (histogram ? areaAboveKm2(unpackHistogram(histogram), wanted.above) : null))
+  }
+  return columns
+}

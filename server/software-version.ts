@@ -1,0 +1,3 @@
+import packageJson from '../package.json'
+
+export const softwareVersion: string = packageJson.version

@@ -1,0 +1,102 @@
+import { summarise } from '../../shared/science/figures'
+import type { GridWindow } from '../../shared/science/grid'
+import { packHistogram } from '../../shared/science/histogram'
+import { mergeLayers } from '../../shared/science/merge-views'
+import { windowOf } from '../../shared/science/cell-shares'
+import { readLayer } from './read-layer'
+import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
+
+type Input = Tasks['summariseViews']['input']
+
+interface Reading {
+  window: GridWindow
+  values: Float64Array
+}
+
+/**
+ * Figures of many views. Each layer is read once, over the window of all regions that need it; views are merged cell by
+ * cell over the region's cells, then summarised.
+ */
+export async function summariseViews(input: Input): Promise<ViewFigures[]> {
+  const wanted = windowsOf(input)
+  const figures: ViewFigures[] = new Array(input.views.length)
+  const users = viewsOfLayers(input)
+  const cellsOfView = new Map<number, { values: Float64Array; processingVersion: string }[]>()
+  for (const [at, layer] of input.layers.entries()) {
+    const window = wanted[at]
+    if (!window) continue
+    const reading = { window, values: withinRange(await readLayer(layer, window), input) }
+    for (const view of users[at]!) {
+      const task = input.views[view]!
+      const collected = cellsOfView.get(view) ?? []
+      collected.push({ values: pick(reading, input.weights[task.weights]!), processingVersion: layer.processingVersion })
+      cellsOfView.set(view, collected)
+      if (collected.length < task.layers.length) continue
+      figures[view] = figuresOf(collected, input.weights[task.weights]!, input.scale)
+      cellsOfView.delete(view)
+    }
+  }
+  return figures
+}
+
+function figuresOf(
+  layers: { values: Float64Array; processingVersion: string }[],
+  weights: RegionCellWeights,
+  scale: Input['scale'],
+): ViewFigures {
+  const values = layers.length === 1 ? layers[0]!.values : mergeLayers(layers, scale)
+  // An outline without any water here is no mask for this region: every cell counts.
+  const water = weights.water.some((cell) => cell === 1) ? weights.water : undefined
+  const { histogram, maxIndex, ...rest } = summarise({ values, share: weights.share, areaKm2: weights.areaKm2, ...(water ? { water } : {}) })
+  return {
+    ...rest,
+    maxCell: maxIndex === null ? null : weights.index[maxIndex]!,
+    histogram: packHistogram(histogram),
+  }
+}
+
+function viewsOfLayers(input: Input): number[][] {
+  const users: number[][] = input.layers.map(() => [])
+  for (const [view, task] of input.views.entries()) for (const layer of task.layers) users[layer]!.push(view)
+  return users
+}
+
+function windowsOf(input: Input): (GridWindow | null)[] {
+  const boxes = input.weights.map((weights) => windowOf(weights.index, weights.columns))
+  const windows: (GridWindow | null)[] = input.layers.map(() => null)
+  for (const task of input.views) {
+    const box = boxes[task.weights]
+    if (!box) continue
+    for (const layer of task.layers) windows[layer] = union(windows[layer] ?? null, box)
+  }
+  return windows
+}
+
+function union(a: GridWindow | null, b: GridWindow): GridWindow {
+  if (!a) return b
+  const row = Math.min(a.row, b.row)
+  const column = Math.min(a.column, b.column)
+  return {
+    row,
+    column,
+    rows: Math.max(a.row + a.rows, b.row + b.rows) - row,
+    columns: Math.max(a.column + a.columns, b.column + b.columns) - column,
+  }
+}
+
+function pick({ window, values }: Reading, weights: RegionCellWeights): Float64Array {
+  return Float64Array.from(weights.index, (cell) => {
+    const row = Math.floor(cell / weights.columns) - window.row
+    const column = (cell % weights.columns) - window.column
+    return values[row * window.columns + column]!
+  })
+}
+
+/** The feed's own valid range, in the unit of the feed. */
+function withinRange(values: Float64Array, { validMin, validMax }: Input): Float64Array {
+  if (validMin === null && validMax === null) return values
+  const low = validMin ?? -Infinity
+  const high = validMax ?? Infinity
+  return values.map((value) => (value >= low && value <= high ? value : NaN))
+}
+
