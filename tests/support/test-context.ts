@@ -12,7 +12,7 @@ import { startMailCatcher, type MailCatcher } from '../../server/mail/catcher'
 import { stopDelivery } from '../../server/mail/delivery'
 import { modelsOf } from '../../server/models'
 import { createNews } from '../../server/news'
-import { inProcessWorkers } from './in-process-workers'
+import { inProcessWorkers } from '../../server/workers/in-process-workers'
 import { createTestClock, type TestClock } from './test-clock'
 
 export interface TestContext extends Context {
