@@ -27,7 +27,6 @@ const margin = 4
  * what it covers of other plates, of the kept-free boxes and of other outlines, and its distance.
  */
 export function placePlates(anchors: readonly Anchor[], map: { width: number; height: number }, keepFree: readonly Box[]): PlacedPlate[] {
-  const outlines = anchors.map((anchor) => ({ id: anchor.id, box: boxOf(anchor.outline) }))
   const placed: PlacedPlate[] = []
   for (const anchor of anchors) {
     const own = boxOf(anchor.outline)
@@ -38,7 +37,7 @@ export function placePlates(anchors: readonly Anchor[], map: { width: number; he
         10 * outside(box, map) +
         6 * sum(placed, (other) => overlap(box, grown(other))) +
         6 * sum(keepFree, (other) => overlap(box, other)) +
-        sum(outlines, (other) => overlap(box, other.box) * (other.id === anchor.id ? 2 : 1)) +
+        4 * sum(anchors, (other) => covered(box, other.outline)) +
         3 * distance(box, own)
       if (!best || cost < best.cost) best = { box, cost }
     }
@@ -82,6 +81,27 @@ function overlap(a: Box, b: Box): number {
   const width = Math.min(a.x + a.width, b.x + b.width) - Math.max(a.x, b.x)
   const height = Math.min(a.y + a.height, b.y + b.height) - Math.max(a.y, b.y)
   return width > 0 && height > 0 ? width * height : 0
+}
+
+/** About how much of an outline a box hides: of its water by a few points inside the box, of its line by its corners. */
+function covered(box: Box, outline: Anchor['outline']): number {
+  const around = boxOf(outline)
+  if (overlap(grown(box), around) === 0) return 0
+  let hits = 0
+  for (const share of [0.1, 0.37, 0.63, 0.9]) {
+    for (const down of [0, 0.5, 1]) if (isInside(box.x + share * box.width, box.y + down * box.height, outline)) hits++
+  }
+  const corners = outline.filter(([x, y]) => overlap(grown(box), { x, y, width: 1, height: 1 }) > 0).length
+  return (hits / 12) * box.width * box.height + corners * 150
+}
+
+function isInside(x: number, y: number, outline: Anchor['outline']): boolean {
+  let inside = false
+  outline.forEach(([x1, y1], index) => {
+    const [x2, y2] = outline.at(index - 1) ?? [x1, y1]
+    if (y1 > y !== y2 > y && x < x1 + ((y - y1) / (y2 - y1)) * (x2 - x1)) inside = !inside
+  })
+  return inside
 }
 
 function grown(box: Box): Box {

@@ -13,7 +13,7 @@ export function ScaleBar() {
   const px = km / kmPerPx
   return (
     <div className="pointer-events-none absolute right-3 bottom-3 z-[650] bg-paper px-2.5 pt-0.5 pb-2" data-scale-bar>
-      <div className="fig flex justify-between text-small text-ink" style={{ width: px }}>
+      <div className="fig flex min-w-max justify-between gap-2 text-small text-ink" style={{ width: px }}>
         <span>0</span>
         <span className="whitespace-nowrap">{grouped(km)} km</span>
       </div>

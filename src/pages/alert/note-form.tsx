@@ -11,7 +11,6 @@ export function NoteForm({ alert, acts }: { alert: Alert; acts: Acting }) {
   const goesAlong = alert.state === 'open' && mayAct
   return (
     <form
-      aria-label="Note"
       className="grid gap-3"
       data-no-print
       onSubmit={(event) => {

@@ -16,7 +16,7 @@ export function Where({ alert }: { alert: Alert }) {
   const [layerId, setLayerId] = useState(String(evidence.layerId))
   return (
     <section aria-label="Where" className="grid content-start gap-3">
-      <div className="flex min-h-9 flex-wrap items-end justify-between gap-3">
+      <div className="flex flex-wrap items-end justify-between gap-3 tab:pl-13">
         <h2 className="text-lead">Where</h2>
         {newer && (
           <Choice

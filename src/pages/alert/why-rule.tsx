@@ -11,7 +11,7 @@ export function WhyRule({ evidence }: { evidence: Evidence }) {
   const positive = (at: number | null): at is number => at !== null && at > 0
   const segments = decadeSegments(range.from, range.to)
   return (
-    <div role="img" aria-label={spoken(evidence)} className="relative h-28 overflow-x-clip">
+    <div role="img" aria-label={spoken(evidence)} className="relative h-25 overflow-x-clip">
       {positive(p10) && positive(p90) && (
         <div className="absolute top-[46px] h-[22px] bg-band" style={{ left: `${place(p10)}%`, width: `${place(p90) - place(p10)}%` }} />
       )}

@@ -22,7 +22,7 @@ export function Why({ alert }: { alert: Alert }) {
         <Recomputed alertId={alert.id} />
       </div>
       <div className="grid gap-x-12 gap-y-6 desk:grid-cols-[minmax(0,1.9fr)_minmax(0,1fr)]">
-        <div className="grid content-start gap-6">
+        <div className="grid content-start gap-4">
           <div className="grid grid-cols-2 gap-x-6 gap-y-4 tab:flex tab:justify-between">
             {evidence.timesUsual !== null && <Figure ember label="Times usual" value={timesUsual(evidence.timesUsual)} note={`${statisticName(evidence.statistic)} over its usual`} />}
             <Figure label="Value" value={figure(evidence.value)} note={`${unit}${unit ? ', ' : ''}${statisticName(evidence.statistic)}`} />

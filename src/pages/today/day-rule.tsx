@@ -85,7 +85,7 @@ function DayColumn({ day, inked, floor, first, chosen, onChoose }: ColumnProps) 
       </div>
       <div className={`h-1.5 border-y border-r border-(--segment) ${first ? 'border-l' : ''} ${inked ? 'bg-(--segment)' : 'bg-paper'}`} />
       <div
-        className={`fig mt-px flex h-5 items-center text-small whitespace-nowrap ${first && !chosen ? 'justify-end' : 'justify-center'} ${chosen ? 'bg-accent font-heading text-onAccent' : weekday(day.day) === 1 ? 'font-heading' : 'text-ink2'}`}
+        className={`${chosen || first || weekday(day.day) === 1 ? '' : 'tab:max-desk:invisible'} fig mt-px flex h-5 items-center text-small whitespace-nowrap ${first && !chosen ? 'justify-end' : 'justify-center'} ${chosen ? 'bg-accent font-heading text-onAccent' : weekday(day.day) === 1 ? 'font-heading' : 'text-ink2'}`}
       >
         {!chosen && (first || day.day.endsWith('-01')) ? <b className="font-heading text-ink">{shortDay(day.day)}</b> : Number(day.day.slice(8))}
       </div>

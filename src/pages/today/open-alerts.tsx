@@ -62,7 +62,7 @@ function AlertRow({ alert, filled }: { alert: AlertItem; filled: boolean }) {
         </h3>
         <span className="fig ml-auto text-small whitespace-nowrap text-ink2">{ageWords(hoursSince(alert.raisedAt, now))} open</span>
       </div>
-      <div className="grid grid-cols-[7rem_minmax(0,1fr)] items-start gap-x-5 gap-y-2 desk:grid-cols-[7rem_minmax(0,1fr)_minmax(0,1.2fr)]">
+      <div className="grid grid-cols-[7rem_minmax(0,1fr)] items-start gap-x-5 gap-y-2 tab:grid-cols-[7rem_minmax(0,1fr)_minmax(0,1.2fr)]">
         <div className="text-ember">
           {times !== null && (
             <>
@@ -72,7 +72,7 @@ function AlertRow({ alert, filled }: { alert: AlertItem; filled: boolean }) {
           )}
         </div>
         <RecentDays days={alert.recent} />
-        <p className="col-span-2 text-small text-ink2 desk:col-span-1">{alert.statement.rest}</p>
+        <p className="col-span-2 text-small text-ink2 tab:col-span-1">{alert.statement.rest}</p>
       </div>
       <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
         <Holder alert={alert} />

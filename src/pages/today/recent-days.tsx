@@ -18,7 +18,7 @@ export function RecentDays({ days }: { days: Recent }) {
   const points = days.flatMap((day, index) => (day.value !== null && day.value > 0 ? [{ index, value: day.value, flagged: day.flagged }] : []))
   const seen = points.length
   return (
-    <svg role="img" aria-label={`The last ${days.length} days: seen on ${seen}, flagged on ${points.filter((p) => p.flagged).length}`} viewBox={`0 0 ${width} ${height}`} className="w-full overflow-visible">
+    <svg role="img" aria-label={`The last ${days.length} days: seen on ${seen}, flagged on ${points.filter((p) => p.flagged).length}`} viewBox={`0 0 ${width} ${height}`} className="w-full max-w-72 overflow-visible">
       {band.length > 1 && (
         <path
           fill="var(--band)"
