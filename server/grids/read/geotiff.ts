@@ -20,8 +20,8 @@ interface Band {
   variable: GridVariable
 }
 
-/** none, LZW, deflate (two numbers), packbits, LERC, ZSTD. JPEG and WebP lose values and are pictures. */
-const compressions = new Set([1, 5, 8, 32946, 32773, 34887, 50000])
+/** None, LZW, deflate (two numbers), packbits, ZSTD. JPEG and WebP lose values; damaged LERC can hang its decoder. */
+const compressions = new Set([1, 5, 8, 32946, 32773, 50000])
 const reducedResolution = 1
 const transparencyMask = 4
 

@@ -1,4 +1,4 @@
-import { addDecoder, BaseDecoder } from 'geotiff'
+import { addDecoder, BaseDecoder, type GeoTIFFImage } from 'geotiff'
 import { ZSTDDecoder } from 'zstddec'
 
 const library = new ZSTDDecoder()
@@ -24,8 +24,22 @@ let registered = false
 export function useOwnZstdDecoder(): void {
   if (registered) return
   registered = true
-  addDecoder(50000, async () => {
+  const load = async () => {
     await library.init()
     return TiffZstdDecoder
-  })
+  }
+  addDecoder(50000, load, parametersOf)
+}
+
+/** The size of a block as it is stored: the parameters geotiff gives by itself leave the number of samples out. */
+async function parametersOf(directory: GeoTIFFImage['fileDirectory']) {
+  const height = await directory.loadValue('ImageLength')
+  return {
+    tileWidth: (await directory.loadValue('TileWidth')) ?? (await directory.loadValue('ImageWidth')) ?? 0,
+    tileHeight: (await directory.loadValue('TileLength')) ?? Math.min(height ?? 0, (await directory.loadValue('RowsPerStrip')) ?? Infinity),
+    predictor: (await directory.loadValue('Predictor')) ?? 1,
+    bitsPerSample: (await directory.loadValue('BitsPerSample')) ?? 8,
+    planarConfiguration: (await directory.loadValue('PlanarConfiguration')) ?? 1,
+    samplesPerPixel: (await directory.loadValue('SamplesPerPixel')) ?? 1,
+  }
 }
