@@ -5,8 +5,8 @@ export function OutlineSize({ areaKm2, drawing, corners }: { areaKm2: number | n
   return (
     <p aria-live="polite" className="flex min-h-8 flex-wrap items-baseline gap-x-4">
       {areaKm2 !== null && (
-        <span className="fig text-title">
-          {areaKm2 < 1000 ? threeDigits(areaKm2) : grouped(Math.round(areaKm2))} <span className="text-body font-text">km²</span>
+        <span>
+          <span className="fig text-title">{areaKm2 < 1000 ? threeDigits(areaKm2) : grouped(Math.round(areaKm2))}</span> km²
         </span>
       )}
       <span className="text-ink2">{drawing ? nextStep(corners) : areaKm2 !== null && 'Drag a corner to move it; the small marks between make new ones.'}</span>

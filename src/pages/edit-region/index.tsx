@@ -6,6 +6,7 @@ import { isConflict } from '../../api/api-error'
 import { regionQuery, useChangeRegion } from '../../api/regions'
 import { contactsOf, fieldsOf, siteOf } from '../../components/region-form/region-fields'
 import { RegionForm } from '../../components/region-form/region-form'
+import { SaveButton } from '../../components/region-form/save-button'
 import { useDrawingGround } from '../../components/region-form/use-drawing-ground'
 import { Button } from '../../components/ui/button'
 import { Failure } from '../../components/ui/failure'
@@ -45,9 +46,9 @@ function EditRegion({ newest }: { newest: Region }) {
         }
         detail={`Outline version ${region.geometryVersion}.`}
         actions={
-          <Button kind="filled" type="submit" form={formId} disabled={change.isPending}>
+          <SaveButton form={formId} disabled={change.isPending}>
             Save the changes
-          </Button>
+          </SaveButton>
         }
       >
         Edit {region.name}.

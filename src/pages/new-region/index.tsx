@@ -4,8 +4,8 @@ import { paths } from '../../../shared/paths'
 import { useCreateRegion } from '../../api/regions'
 import { blankFields, contactsOf, siteOf } from '../../components/region-form/region-fields'
 import { RegionForm } from '../../components/region-form/region-form'
+import { SaveButton } from '../../components/region-form/save-button'
 import { useDrawingGround } from '../../components/region-form/use-drawing-ground'
-import { Button } from '../../components/ui/button'
 import { Page, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
 
@@ -29,9 +29,9 @@ export function Component() {
         }
         detail="When it is saved its history is read at once, from every layer kept."
         actions={
-          <Button kind="filled" type="submit" form={formId} disabled={create.isPending || !begun}>
+          <SaveButton form={formId} disabled={create.isPending || !begun}>
             Save the region
-          </Button>
+          </SaveButton>
         }
       >
         Draw the water you answer for.

@@ -1,0 +1,52 @@
+import type { ReactNode } from 'react'
+import type { Feed } from '../../../shared/schemas/feeds'
+import { SectionHead } from '../../components/ui/page'
+import { dayWithYear } from '../../lib/dates'
+import { grouped, unitWords } from '../../lib/format'
+
+/** How the files of this feed are read and what it holds. */
+export function FeedFacts({ feed }: { feed: Feed }) {
+  const facts: [string, ReactNode][] = [
+    ['Quantity', feed.quantity],
+    ['Variable', <span className="fig">{feed.variable}</span>],
+    ['Unit', unitWords(feed.unit) || 'none'],
+    ['Scale', feed.scale === 'log10' ? 'log10: merged and averaged in log space' : 'linear'],
+    ['Cadence', feed.cadence],
+    ['Stage', feed.stage],
+    ['Processing version', <span className="fig">{feed.processingVersion}</span>],
+    ['Valid range', rangeWords(feed)],
+    ['File names', <span className="fig break-all">{feed.fileNamePattern ?? 'any'}</span>],
+    ['Told at once', `views up to ${feed.freshnessLimitHours} h old`],
+    ['Silent after', `${feed.silentAfterHours} h without a layer`],
+    ['Layers', <span className="fig">{grouped(feed.layers)}</span>],
+  ]
+  if (feed.oldestLayerAt) facts.push(['Since', <span className="fig">{dayWithYear(feed.oldestLayerAt)}</span>])
+  if (feed.formula) facts.push(['Worked out by', `${feed.formula}, version ${feed.formulaVersion ?? '1'}`])
+  return (
+    <section>
+      <SectionHead>How it is read</SectionHead>
+      <dl className="grid grid-cols-[auto_minmax(0,1fr)] text-small">
+        {facts.map(([name, value]) => (
+          <Fact key={name} name={name}>
+            {value}
+          </Fact>
+        ))}
+      </dl>
+    </section>
+  )
+}
+
+function Fact({ name, children }: { name: string; children: ReactNode }) {
+  return (
+    <>
+      <dt className="border-b border-rule py-2 pr-6 text-ink2">{name}</dt>
+      <dd className="border-b border-rule py-2">{children}</dd>
+    </>
+  )
+}
+
+function rangeWords({ validMin, validMax }: Feed): string {
+  if (validMin === null && validMax === null) return 'nothing dropped'
+  if (validMin === null) return `up to ${validMax}`
+  return validMax === null ? `from ${validMin}` : `${validMin} to ${validMax}`
+}

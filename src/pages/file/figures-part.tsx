@@ -1,0 +1,54 @@
+import { Link } from 'react-router-dom'
+import { paths } from '../../../shared/paths'
+import type { OffingFile } from '../../../shared/schemas/files'
+import { SectionHead } from '../../components/ui/page'
+import { Table, Td, Th, Tr } from '../../components/ui/table'
+import { dayWithYear } from '../../lib/dates'
+import { figure, percent } from '../../lib/format'
+
+/** The figures this file gave, region by region; a region it did not see has hatch. */
+export function FiguresPart({ file }: { file: OffingFile }) {
+  if (file.summaries.length === 0) return null
+  return (
+    <section className="grid grid-cols-[minmax(0,1fr)] gap-2">
+      <SectionHead count={file.summaries.length} ruled={false} aside={file.summaries.length >= 200 ? 'the newest 200' : 'newest first'}>
+        Figures
+      </SectionHead>
+      <Table label="Figures by region">
+        <thead>
+          <tr>
+            <Th>Region</Th>
+            <Th>Day</Th>
+            <Th figures>Median</Th>
+            <Th figures>Geometric mean</Th>
+            <Th figures>Coverage</Th>
+          </tr>
+        </thead>
+        <tbody>
+          {file.summaries.map((row) => (
+            <Tr key={`${row.regionId} ${row.feedId} ${row.day}`}>
+              <Td>
+                <Link className="link" to={paths.region.to({ id: row.regionId })}>
+                  {row.regionName}
+                </Link>
+              </Td>
+              <Td className="fig whitespace-nowrap">{dayWithYear(row.day)}</Td>
+              {row.median === null && row.geometricMean === null ? (
+                <Td colSpan={2}>
+                  <span className="heard">not seen</span>
+                  <span aria-hidden className="hatch-fine ml-auto block h-3 max-w-60" />
+                </Td>
+              ) : (
+                <>
+                  <Td figures>{figure(row.median)}</Td>
+                  <Td figures>{figure(row.geometricMean)}</Td>
+                </>
+              )}
+              <Td figures>{row.coverage !== null && percent(row.coverage)}</Td>
+            </Tr>
+          ))}
+        </tbody>
+      </Table>
+    </section>
+  )
+}

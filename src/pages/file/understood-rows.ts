@@ -1,0 +1,66 @@
+import type { ReportVariable } from '../../../shared/schemas/files'
+import { dayWithYear } from '../../lib/dates'
+import { countWords, grouped, percent, threeDigits, unitWords } from '../../lib/format'
+
+export interface UnderstoodRow {
+  item: string
+  understood: string
+  how: 'read' | 'worked out'
+  note: string
+  /** Figures and names of the file stand in the mono cut. */
+  mono?: boolean
+}
+
+/** What was read from one variable, item by item, with how it is known. */
+export function understoodRows(format: string, variable: ReportVariable): UnderstoodRow[] {
+  const { grid, times } = variable
+  const rows: UnderstoodRow[] = [
+    { item: 'Format', understood: format, how: 'read', note: 'from its first bytes, not its name' },
+    { item: 'Quantity', understood: variable.quantity, how: 'read', note: variable.longName ? `long name “${variable.longName}”` : 'from the name of the variable' },
+    { item: 'Variable', understood: variable.name, how: 'read', note: variable.dimensions.map((one) => `${one.name} ${one.size}`).join(' × '), mono: true },
+    unitRow(variable),
+    { item: 'Grid', understood: `${grouped(grid.columns)} × ${grouped(grid.rows)} cells`, how: 'read', note: gridNote(variable), mono: true },
+    { item: 'Time', understood: timeWords(variable), how: times.first ? 'read' : 'worked out', note: `${times.from}${times.hasClock ? '' : '; no clock time'}` },
+    { item: 'Kept', understood: `${percent(variable.cells > 0 ? variable.valid / variable.cells : 0)} of the cells`, how: 'worked out', note: `${grouped(variable.valid)} of ${grouped(variable.cells)}; the rest is missing`, mono: true },
+  ]
+  const values = valueRow(variable)
+  return values ? [...rows, values] : rows
+}
+
+function unitRow({ unit, fileUnit, conversion }: ReportVariable): UnderstoodRow {
+  return {
+    item: 'Unit',
+    understood: unit ? unitWords(unit) : 'none',
+    how: conversion ? 'worked out' : 'read',
+    note: conversion ?? (fileUnit ? `units “${fileUnit}”` : 'the file names no unit'),
+    mono: true,
+  }
+}
+
+function gridNote({ grid }: ReportVariable): string {
+  const span = `${side(grid.south, 'S', 'N')} to ${side(grid.north, 'S', 'N')}, ${side(grid.west, 'W', 'E')} to ${side(grid.east, 'W', 'E')}`
+  return [grid.kind, span, grid.crs].filter(Boolean).join('; ')
+}
+
+function side(value: number, below: string, above: string): string {
+  return `${threeDigits(Math.abs(value))}° ${value < 0 ? below : above}`
+}
+
+function timeWords({ times }: ReportVariable): string {
+  const steps = countWords(times.count, 'step')
+  if (!times.first) return steps
+  const first = dayWithYear(times.first)
+  const last = times.last ? dayWithYear(times.last) : first
+  return first === last ? `${steps}, ${first}` : `${steps}, ${first} to ${last}`
+}
+
+function valueRow({ min, median, max, unit }: ReportVariable): UnderstoodRow | undefined {
+  if (min === null || max === null) return undefined
+  return {
+    item: 'Values',
+    understood: `${threeDigits(min)} to ${threeDigits(max)}`,
+    how: 'worked out',
+    note: `${median === null ? '' : `median ${threeDigits(median)} `}${unitWords(unit)}`,
+    mono: true,
+  }
+}
