@@ -1,4 +1,3 @@
-import { existsSync } from 'node:fs'
 import { mkdtemp, rm } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
@@ -22,7 +21,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
   await migrate(db)
   await db.sequelize.query('PRAGMA wal_checkpoint(TRUNCATE)')
   await db.close()
-  if (existsSync('server/index.ts')) await buildServer()
+  await buildServer()
   project.provide('databaseTemplate', file)
   return () => rm(dir, { recursive: true, force: true })
 }
