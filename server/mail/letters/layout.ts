@@ -61,7 +61,7 @@ function head({ demo, headNote }: LetterFrame): string {
     ? `<span style="display:inline-block;margin-left:14px;padding:2px 7px;border:1px dashed ${ink3};font:400 12px/1.3 'Atkinson Hyperlegible Mono',Consolas,monospace;color:${ink2};vertical-align:middle">demo</span>`
     : ''
   return `<table role="presentation" width="100%" cellpadding="0" cellspacing="0"><tr>
-<td style="font:700 18px/1.2 ${sans};color:${ink}">${productMark}<span style="vertical-align:middle">Offing</span>${demoWord}</td>
+<td style="font:700 18px/1.2 ${sans};color:${ink};white-space:nowrap">${productMark}<span style="vertical-align:middle">Offing</span>${demoWord}</td>
 <td align="right" style="font:400 12px/1.4 ${sans};color:${ink3}">${escapeHtml(headNote ?? '')}</td></tr></table>`
 }
 

@@ -8,6 +8,6 @@ export function severityMarks(colour: string): Record<string, string> {
     Minor: shape(`border:2px solid ${colour}`) + gap,
     Moderate: shape(`border:2px solid ${colour};background:linear-gradient(transparent 50%,${colour} 50%)`) + gap,
     Severe: disc + gap,
-    Extreme: disc + shape(`margin-left:-4px;background:${colour};border:1px solid #fdfbf6`) + gap,
+    Extreme: disc + shape(`width:15px;height:15px;margin-left:-6px;vertical-align:-2px;background:${colour};border:1px solid #fdfbf6`) + gap,
   }
 }
