@@ -4,6 +4,7 @@ import { type ClassicVariable, readClassicHeader } from './netcdf-classic-header
 import { type NumberType, type RawNetcdf, typeBytes } from './raw-netcdf'
 
 const readAhead = 128 * 1024
+const farApart = 8 * 1024
 const longestRead = 1024 * 1024
 
 /** A classic NetCDF file (CDF-1, CDF-2): header by netcdfjs, blocks read from the file by ourselves. */
@@ -56,6 +57,9 @@ function readBlock(
     if (count[inner] !== sizes[inner]) break
   }
   const outer = count.slice(0, inner)
+  // Rows of a narrow window lie far apart: reading on to the next one would read mostly what nobody asked for.
+  const nextRun = strides.findLast((_, d) => d < inner && count[d]! > 1) ?? Infinity
+  const ahead = nextRun <= farApart ? readAhead : 0
   const base = variable.offset + start.reduce((sum, index, d) => sum + index * strides[d]!, 0)
   const position = outer.map(() => 0)
   let held: Buffer = Buffer.alloc(0)
@@ -67,7 +71,7 @@ function readBlock(
       const at = runAt + done * width
       if (at < heldAt || at + piece * width > heldAt + held.length) {
         heldAt = at
-        held = readExactly(descriptor, at, Math.min(Math.max(piece * width, readAhead), fileSize - at))
+        held = readExactly(descriptor, at, Math.min(Math.max(piece * width, ahead), fileSize - at))
       }
       decode(held, at - heldAt, type, values, filled, piece)
       filled += piece

@@ -101,7 +101,12 @@ function readBlocks(variable: RawVariable, dataset: Dataset, start: number[], co
     const block = reading(variable.name, () => dataset.slice(ranges))
     if (!ArrayBuffer.isView(block)) throw damagedData(variable.name, 'no numbers came back')
     const numbers = block as Float64Array | BigInt64Array
-    for (let i = 0; i < numbers.length; i++) values[filled + i] = Number(numbers[i])
+    if (numbers.length > total - filled) throw damagedData(variable.name, 'more numbers came back than were asked for')
+    if (numbers instanceof BigInt64Array || numbers instanceof BigUint64Array) {
+      for (let i = 0; i < numbers.length; i++) values[filled + i] = Number(numbers[i])
+    } else {
+      values.set(numbers, filled)
+    }
     filled += numbers.length
     from = to
   }
