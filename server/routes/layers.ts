@@ -10,7 +10,7 @@ import { cursorId, pageOf } from './paging'
 import { serve } from './serve'
 
 /** A picture of nothing: one see-through pixel. */
-const emptyTile = Buffer.from('iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAYAAAAfFcSJAAAADUlEQVR42mNkYPhfDwAChwGA60e6kgAAAABJRU5ErkJggg==', 'base64')
+const emptyTile = Buffer.from('iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAYAAAAfFcSJAAAACXBIWXMAAAPoAAAD6AG1e1JrAAAADUlEQVQImWNgYGBgAAAABQABh6FO1AAAAABJRU5ErkJggg==', 'base64')
 
 export function layerRoutes(router: Router, context: Context): void {
   const one = async (id: number) => {

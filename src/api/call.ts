@@ -3,7 +3,7 @@ import { errorStatus, type ErrorCode } from '../../shared/errors'
 import { errorReply } from '../../shared/schemas/common'
 import type { BodyInputOf, Endpoint, QueryInputOf, ReplyOf } from '../../shared/schemas/endpoint'
 import { ApiError } from './api-error'
-import { renewSession } from './session'
+import { renewSession, sessionExpiresAt } from './session'
 
 export { ApiError } from './api-error'
 
@@ -75,9 +75,10 @@ function renewable(endpoint: Endpoint): boolean {
   return endpoint.may !== 'anyone'
 }
 
+/** A browser drops a cookie at its end, so a session that was there and is not any more counts as run out too. */
 async function sessionRanOut(reply: Response): Promise<boolean> {
   const { code } = await refusalOf(reply)
-  return code === 'session-expired' || code === 'not-signed-in'
+  return code === 'session-expired' || (code === 'not-signed-in' && sessionExpiresAt() !== undefined)
 }
 
 async function refusalOf(reply: Response): Promise<ApiError> {

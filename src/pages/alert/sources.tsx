@@ -3,7 +3,7 @@ import { paths } from '../../../shared/paths'
 import type { Evidence } from '../../../shared/schemas/alerts'
 import { useMe } from '../../api/auth'
 import { dayAndTime, zoneWord } from '../../lib/dates'
-import { shortChecksum } from '../../lib/format'
+import { shortChecksum, unitWords } from '../../lib/format'
 import { yearsWords } from '../../lib/years-words'
 
 /** Where each figure came from, as it was when it was judged. */
@@ -15,7 +15,7 @@ export function Sources({ evidence }: { evidence: Evidence }) {
       <div>
         <dt>Rule</dt>
         <dd>
-          {evidence.ruleText} <span className="font-strong">Version {evidence.ruleVersion}</span>
+          {ruleWords(evidence)} <span className="font-strong">Version {evidence.ruleVersion}</span>
         </dd>
       </div>
       <div>
@@ -51,4 +51,9 @@ export function Sources({ evidence }: { evidence: Evidence }) {
       </div>
     </dl>
   )
+}
+
+/** The rule's sentence with its unit written as people write it. */
+function ruleWords({ ruleText, unit }: Evidence): string {
+  return unit ? ruleText.replaceAll(unit, unitWords(unit)) : ruleText
 }

@@ -33,7 +33,7 @@ export function AlertTable({ alerts }: { alerts: readonly AlertItem[] }) {
           <Th figures>Times usual</Th>
           <Th figures>Value{unit}</Th>
           <Th figures>Coverage</Th>
-          <Th>Raised</Th>
+          <Th className="pl-6">Raised</Th>
           <Th>State</Th>
           <Th>Who</Th>
         </tr>
@@ -57,7 +57,7 @@ export function AlertTable({ alerts }: { alerts: readonly AlertItem[] }) {
               {unit === '' && ` ${unitWords(alert.evidence.unit)}`}
             </Td>
             <Td figures>{percent(alert.evidence.coverage)}</Td>
-            <Td className="fig whitespace-nowrap">{dayAndTime(alert.raisedAt, zone)}</Td>
+            <Td className="fig pl-6 whitespace-nowrap">{dayAndTime(alert.raisedAt, zone)}</Td>
             <Td>
               <StateOf alert={alert} />
             </Td>

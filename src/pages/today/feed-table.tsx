@@ -6,10 +6,12 @@ import { Waiting } from '../../components/ui/waiting'
 import { ageWords } from '../../lib/age'
 import { dayWords } from '../../lib/dates'
 
-/** What the picture of today is made from, and how old it is. */
-export function FeedTable({ feeds }: { feeds: readonly Feed[] | undefined }) {
+/** What the picture of today is made from, and how old it is: the feeds that judge a region, and whichever fell silent. */
+export function FeedTable({ feeds, watched }: { feeds: readonly Feed[] | undefined; watched: ReadonlySet<number> }) {
   if (!feeds) return <Waiting />
-  const shown = feeds.filter((feed) => !feed.retired && feed.derivedFrom === null)
+  const inUse = feeds.filter((feed) => !feed.retired)
+  const shown = inUse.filter((feed) => watched.has(feed.id) || feed.silent)
+  const others = inUse.length - shown.length
   return (
     <table aria-label="Feeds" className="w-full self-start text-small">
       <thead>
@@ -41,6 +43,17 @@ export function FeedTable({ feeds }: { feeds: readonly Feed[] | undefined }) {
           </tr>
         ))}
       </tbody>
+      {others > 0 && (
+        <tfoot>
+          <tr>
+            <td colSpan={3} className="py-2 text-ink2">
+              <Link to={paths.feeds.to()} className="link">
+                {others} more {others === 1 ? 'feed' : 'feeds'}
+              </Link>
+            </td>
+          </tr>
+        </tfoot>
+      )}
     </table>
   )
 }

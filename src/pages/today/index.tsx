@@ -7,7 +7,7 @@ import { todayQuery } from '../../api/today'
 import { Failure } from '../../components/ui/failure'
 import { Page, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
-import { useDesk } from '../../hooks/use-wide'
+import { useDesk, useWide } from '../../hooks/use-wide'
 import { DayRule } from './day-rule'
 import { FeedTable } from './feed-table'
 import { OpenAlerts } from './open-alerts'
@@ -17,6 +17,7 @@ import { TodayMap } from './today-map'
 /** Is anything wrong over my water, and how fresh is what I know? */
 export function Component() {
   const desk = useDesk()
+  const wide = useWide()
   const today = useQuery(todayQuery)
   const regions = useQuery(regionsQuery())
   const feeds = useQuery(feedsQuery())
@@ -44,6 +45,8 @@ export function Component() {
   const list = regions.data?.items
   const alerts = open.data && held.data ? [...open.data.items, ...held.data.items] : undefined
 
+  const watched = new Set(list?.flatMap((region) => region.standing.feedId ?? []))
+  const feedTable = <FeedTable feeds={feeds.data?.items} watched={watched} />
   const rule = day && <DayRule days={days} day={day} floor={coverageFloor} onChange={setChosen} />
   const map = day && <TodayMap day={day} regions={list} feed={feed} />
   const lists = (
@@ -58,7 +61,7 @@ export function Component() {
         <Statement worry={statement.worry} detail={statement.detail}>
           {statement.rest}
         </Statement>
-        {desk && <FeedTable feeds={feeds.data?.items} />}
+        {desk && feedTable}
       </div>
       {desk ? (
         <>
@@ -70,10 +73,11 @@ export function Component() {
         </>
       ) : (
         <>
-          {lists}
+          {!wide && lists}
           {rule}
           {map}
-          <FeedTable feeds={feeds.data?.items} />
+          {wide && lists}
+          {feedTable}
         </>
       )}
     </Page>

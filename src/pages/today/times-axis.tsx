@@ -3,11 +3,13 @@ import { percent, timesUsual } from '../../lib/format'
 
 const least = 0.25
 const most = 8
+/** Right of the axis there is room for the figure of a disc at its end. */
+const axisEnd = 86
 const marks = [0.25, 0.5, 1, 2, 4, 8]
 
 function place(times: number): number {
   const share = Math.log(times / least) / Math.log(most / least)
-  return Math.min(1, Math.max(0, share)) * 100
+  return Math.min(1, Math.max(0, share)) * axisEnd
 }
 
 export function AxisHead() {
@@ -67,8 +69,8 @@ function Disc({ times, excessFrom, ring }: { times: number; excessFrom: number |
       />
       {!ring && (
         <span
-          className={`fig absolute top-1/2 -translate-y-1/2 px-1 ${unusual ? 'text-body font-heading text-ember' : 'text-small text-ink2'} ${at > 78 ? '-translate-x-full' : ''}`}
-          style={{ left: `calc(${at}% ${at > 78 ? '- 8px' : '+ 8px'})` }}
+          className={`fig absolute top-1/2 -translate-y-1/2 px-1 ${unusual ? 'text-body font-heading text-ember' : 'text-small text-ink2'}`}
+          style={{ left: `calc(${at}% + 8px)` }}
         >
           {timesUsual(times)}
         </span>

@@ -32,10 +32,19 @@ test('two calls that meet the end of a session renew it together', async () => {
   expect(asked.filter((a) => a.path === '/auth/refresh')).toHaveLength(1)
 })
 
-test('when the session cannot be renewed the refusal is passed on', async () => {
-  fakeServer({
+test('a cookie the browser dropped at its end counts as a session that ran out', async () => {
+  localStorage.setItem('offing.session-expires', '2026-06-11T03:00:00Z')
+  const asked = fakeServer({
     'GET /auth/me': () => refusal(401, 'not-signed-in', 'Sign in first.'),
     'POST /auth/refresh': () => refusal(401, 'session-expired', 'Over.'),
+  })
+  await expect(call(endpoints.me)).rejects.toMatchObject({ code: 'not-signed-in', status: 401, message: 'Sign in first.' })
+  expect(asked.map((a) => a.path)).toEqual(['/auth/me', '/auth/refresh'])
+})
+
+test('a stranger is not asked to renew what never was', async () => {
+  fakeServer({
+    'GET /auth/me': () => refusal(401, 'not-signed-in', 'Sign in first.'),
   })
   await expect(call(endpoints.me)).rejects.toMatchObject({ code: 'not-signed-in', status: 401, message: 'Sign in first.' })
 })
