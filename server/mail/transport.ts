@@ -49,6 +49,8 @@ function connect(url: string, from: string): MailTransport {
         ...(letter.htmlPart ? { html: letter.htmlPart } : {}),
         messageId: letter.messageId,
         ...(letter.inReplyTo ? { inReplyTo: letter.inReplyTo, references: letter.inReplyTo } : {}),
+        // When it was written: a letter that waited for a mail server is not newer than what it tells.
+        date: new Date(letter.createdAt),
         headers: { 'Auto-Submitted': 'auto-generated' },
       })
     },

@@ -40,12 +40,13 @@ export interface DueLetter {
   textPart: string
   htmlPart: string | null
   attempts: number
+  createdAt: number
 }
 
 export function dueLetters(db: Database, now: number, limit: number) {
   return db.all<DueLetter>(
     `SELECT id, kind, to_address AS toAddress, message_id AS messageId, in_reply_to AS inReplyTo, subject,
-       text_part AS textPart, html_part AS htmlPart, attempts
+       text_part AS textPart, html_part AS htmlPart, attempts, created_at AS createdAt
      FROM letters WHERE state = 'waiting' AND (next_attempt_at IS NULL OR next_attempt_at <= $now)
      ORDER BY next_attempt_at, id LIMIT $limit`,
     { now, limit },
