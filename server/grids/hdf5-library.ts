@@ -1,13 +1,19 @@
-import h5wasm, { Module } from 'h5wasm/node'
-import { install_local_plugins } from 'h5wasm-plugins'
+type Library = typeof import('h5wasm/node')
 
-let ready: Promise<void> | null = null
+let loading: Promise<Library> | null = null
+let loaded: Library | null = null
 
-/** The HDF5 library with its compression plugins, loaded once. */
-export async function hdf5Library(): Promise<typeof h5wasm> {
-  ready ??= h5wasm.ready.then((module) => install_local_plugins(module))
-  await ready
-  return h5wasm
+/** The HDF5 library with its compression plugins, loaded once and only when a NetCDF-4 file turns up. */
+export function hdf5Library(): Promise<Library> {
+  loading ??= load()
+  return loading
+}
+
+async function load(): Promise<Library> {
+  const [library, plugins] = await Promise.all([import('h5wasm/node'), import('h5wasm-plugins')])
+  plugins.install_local_plugins(await library.ready)
+  loaded = library
+  return library
 }
 
 /**
@@ -15,10 +21,11 @@ export async function hdf5Library(): Promise<typeof h5wasm> {
  * Opening files stays outside: the throwing handler loses a file descriptor at each failure.
  */
 export function guarded<T>(work: () => T): T {
-  Module.activate_throwing_error_handler()
+  if (!loaded) throw new Error('the HDF5 library is not loaded yet')
+  loaded.Module.activate_throwing_error_handler()
   try {
     return work()
   } finally {
-    Module.deactivate_throwing_error_handler()
+    loaded.Module.deactivate_throwing_error_handler()
   }
 }
