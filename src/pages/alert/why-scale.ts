@@ -1,11 +1,11 @@
 const steps = [1, 3]
 
-/** A log range with a 1 or a 3 at each end that holds every figure with room beside it; undefined without figures. */
+/** A log range with a 1 or a 3 at each end that holds every figure with room for its words beside it; undefined without figures. */
 export function whyRange(figures: readonly (number | null)[]): { from: number; to: number; labels: number[] } | undefined {
   const positive = figures.filter((figure): figure is number => figure !== null && figure > 0)
   if (positive.length === 0) return undefined
   const low = Math.min(...positive) / 1.6
-  const high = Math.max(...positive) * 1.6
+  const high = Math.max(...positive) * 2.2
   const marks = marksBetween(Math.floor(Math.log10(low)) - 1, Math.ceil(Math.log10(high)) + 1)
   const from = marks.findLast((mark) => mark <= low) ?? low
   const to = marks.find((mark) => mark >= high) ?? high
