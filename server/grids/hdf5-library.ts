@@ -1,4 +1,6 @@
-type Library = typeof import('h5wasm/node')
+import type * as hdf5 from 'h5wasm/node'
+
+type Library = typeof hdf5
 
 let loading: Promise<Library> | null = null
 let loaded: Library | null = null
