@@ -4,7 +4,7 @@ import type { Subscription } from '../../../shared/schemas/duty'
 import { useMe } from '../../api/auth'
 import { regionsQuery } from '../../api/regions'
 import { Button } from '../../components/ui/button'
-import { SeverityWord } from '../../components/ui/mark'
+import { Mark, severityMark } from '../../components/ui/mark'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { useNow } from '../../hooks/use-now'
 import { dayWithYear, localDay } from '../../lib/dates'
@@ -69,7 +69,9 @@ function SubscriptionRow({ subscription, withPerson, onChange, onEnd }: RowProps
       )}
       <Td>{subscription.allRegions ? 'all regions' : names.join(', ')}</Td>
       <Td>
-        <SeverityWord severity={subscription.minimumSeverity} />
+        <span className="inline-flex items-center gap-2 align-middle whitespace-nowrap">
+          <Mark name={severityMark(subscription.minimumSeverity)} size={16} /> {subscription.minimumSeverity}
+        </span>
       </Td>
       <Td>
         {subscription.delivery}

@@ -1,0 +1,61 @@
+import { screen } from '@testing-library/react'
+import userEvent from '@testing-library/user-event'
+import { expect, test } from 'vitest'
+import type { Me } from '../../../shared/schemas/auth'
+import { endpoints } from '../../../shared/schemas/endpoints'
+import type { Feed } from '../../../shared/schemas/feeds'
+import { Component as FilePage } from '../../../src/pages/file'
+import { fakeServer, reply } from '../support/fake-server'
+import { aWaitingFile } from '../support/file-fixtures'
+import { officer } from '../support/fixtures'
+import { show } from '../support/show'
+
+const analyst: Me = { ...officer, id: 2, name: 'Ana Quill', roles: ['analyst'] }
+const waiting = aWaitingFile()
+
+function open(me: Me) {
+  const asked = fakeServer({
+    'GET /files/9': () => reply(endpoints.file, waiting),
+    'GET /feeds': () => reply(endpoints.listFeeds, { items: [], nextCursor: null }),
+    'POST /feeds': ({ body }) => {
+      const feed: Feed = {
+        ...endpoints.createFeed.body.parse(body), id: 4, derivedFrom: null, formula: null, formulaVersion: null, retired: false,
+        createdAt: '2026-06-11T03:00:00Z', version: 1, layers: 0, oldestLayerAt: null, newestLayerAt: null, newestAgeHours: null, silent: false,
+      }
+      return reply(endpoints.createFeed, feed)
+    },
+  })
+  show(<FilePage />, { me, at: '/layers/files/9', pattern: '/layers/files/:id' })
+  return asked
+}
+
+test('a waiting file says what was understood and asks only for what it cannot know', async () => {
+  open(analyst)
+  expect(await screen.findByRole('heading', { name: 'This file fits no feed yet.' })).toBeVisible()
+  expect(screen.getByRole('row', { name: /Variable chl read/ })).toBeVisible()
+  expect(screen.getAllByText('please say')).toHaveLength(5)
+})
+
+test('confirming sends the proposal as it stands, with the answers and the file', async () => {
+  const asked = open(analyst)
+  const name = await screen.findByLabelText('Name of the feed')
+  await userEvent.clear(name)
+  await userEvent.type(name, 'West, daily')
+  await userEvent.selectOptions(screen.getByLabelText('Stage'), 'reprocessed')
+  await userEvent.click(screen.getByRole('button', { name: /Confirm the feed, read 12 layers/ }))
+  await expect.poll(() => asked.find((one) => one.method === 'POST')?.body).toEqual({ ...waiting.proposal, name: 'West, daily', stage: 'reprocessed', fileId: 9 })
+})
+
+test('an empty name is asked for in words and nothing is sent', async () => {
+  const asked = open(analyst)
+  await userEvent.clear(await screen.findByLabelText('Name of the feed'))
+  await userEvent.click(screen.getByRole('button', { name: /Confirm the feed/ }))
+  expect(await screen.findByText('The feed needs a name.')).toBeVisible()
+  expect(asked.some((one) => one.method === 'POST')).toBe(false)
+})
+
+test('who may not confirm a feed is told who can', async () => {
+  open(officer)
+  expect(await screen.findByText('An analyst has to confirm the feed.')).toBeVisible()
+  expect(screen.queryByRole('button', { name: /Confirm/ })).toBeNull()
+})
