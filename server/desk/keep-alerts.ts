@@ -61,7 +61,7 @@ async function raise(context: Context, tx: Transaction, subject: Subject, judged
 /** Brings an open alert to what its event is now; answers whether anything changed. */
 async function follow(context: Context, tx: Transaction, subject: Subject, judged: Judged, alert: AlertRecord, event: KeptEvent | undefined): Promise<boolean> {
   if (!event) {
-    if (alert.eventId === null) return false
+    if (alert.eventId === null && alert.phase === 'ended') return false
     await alert.update({ eventId: null, phase: 'ended', version: alert.version + 1 }, { transaction: tx })
     await addEntry(context, tx, alert, 'rejudged', 'After late or corrected layers the rule no longer finds an event here.')
     return true

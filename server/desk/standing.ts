@@ -68,7 +68,8 @@ function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; bec
   if (layerAge > facts.silentAfterHours!) return { state: 'stale', because: `${facts.feedName} has been silent for ${ageText(layerAge)}.` }
   if (judged.observedAt === null) return { state: 'not seen', because: 'No view has reached the coverage floor yet.' }
   const viewAge = (now - judged.observedAt) / hourMs
-  if (viewAge > (notSeenAfterHours[facts.cadence ?? 'daily'] ?? 36)) return { state: 'not seen', because: `Last seen well enough ${ageText(viewAge)} ago.` }
+  const newerLayers = facts.newestLayerAt !== null && facts.newestLayerAt > judged.observedAt
+  if (newerLayers && viewAge > (notSeenAfterHours[facts.cadence ?? 'daily'] ?? 36)) return { state: 'not seen', because: `Last seen well enough ${ageText(viewAge)} ago.` }
   if (judged.state === 'not-comparable') return { state: 'not comparable', because: 'The processing version changed, and has no earlier years of its own.' }
   if (judged.state === 'not-ready') return { state: 'not ready', because: 'There are too few earlier years to say what is usual.' }
   if (judged.state === 'flagged') {

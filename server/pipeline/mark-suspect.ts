@@ -2,7 +2,10 @@ import { audit } from '../accounts/audit'
 import type { Person } from '../accounts/person'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
-import { enqueueJob } from '../jobs/queue'
+import { activeGeometries } from '../queries/geometries'
+import { layersById } from '../queries/layers'
+import { queueRereading } from './reread-views'
+import { viewKeysOf } from './summarise-layers'
 
 /** Marks a layer suspect, or takes that back: its views are made anew without it, or with it, and judged again. */
 export async function markSuspect(context: Context, person: Person, id: number, { suspect, note }: { suspect: boolean; note: string }): Promise<void> {
@@ -12,7 +15,8 @@ export async function markSuspect(context: Context, person: Person, id: number, 
     const mark = suspect ? { suspectAt: context.clock.now(), suspectBy: person.id, suspectNote: note } : { suspectAt: null, suspectBy: null, suspectNote: null }
     await layer.update(mark, { transaction: tx })
     const subject = `layer of ${new Date(layer.observedAt).toISOString().slice(0, 10)}`
-    await enqueueJob(context, tx, { kind: 'reread-views', key: String(id), subject, payload: { layerId: id }, priority: 25 })
+    const views = viewKeysOf(await layersById(context, [id]), await activeGeometries(context), layer.feedId)
+    await queueRereading(context, tx, { key: `layer ${id}`, subject, views })
     await audit(context, tx, { userId: person.id, action: suspect ? 'layer:suspect' : 'layer:trust', subject: `layer ${id}`, details: { note } })
   })
   context.news.tell({ topic: 'feeds' })

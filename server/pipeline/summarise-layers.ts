@@ -1,7 +1,7 @@
 import type { Context } from '../context'
 import type { Transaction } from '../db'
 import { layersById, type PlacedLayer } from '../queries/layers'
-import { activeGeometries } from '../queries/geometries'
+import { activeGeometries, type ActiveGeometry } from '../queries/geometries'
 import { summariseViews, type ViewKey } from './summarise-views'
 import { viewDay } from './view-day'
 
@@ -12,13 +12,16 @@ export async function summariseLayers(
   layerIds: readonly number[],
   alongside: (tx: Transaction) => Promise<void>,
 ): Promise<void> {
-  const layers = await layersById(context, layerIds)
-  const geometries = await activeGeometries(context)
-  const keys: ViewKey[] = geometries.flatMap((geometry) => {
+  const keys = viewKeysOf(await layersById(context, layerIds), await activeGeometries(context), feedId)
+  await summariseViews(context, keys, alongside)
+}
+
+/** The views that layers belong to: one for each region their grid's box meets, and day. */
+export function viewKeysOf(layers: readonly PlacedLayer[], geometries: readonly ActiveGeometry[], feedId: number): ViewKey[] {
+  return geometries.flatMap((geometry) => {
     const days = new Set(layers.filter((layer) => boxesMeet(geometry, layer)).map((layer) => viewDay(layer, geometry.centreLongitude)))
     return [...days].map((day) => ({ geometryId: geometry.id, feedId, day }))
   })
-  await summariseViews(context, keys, alongside)
 }
 
 interface Box {
