@@ -62,6 +62,13 @@ export function countWords(count: number, one: string, many = `${one}s`): string
   return `${grouped(count)} ${count === 1 ? one : many}`
 }
 
+const words = ['No', 'One', 'Two', 'Three', 'Four', 'Five', 'Six', 'Seven', 'Eight', 'Nine', 'Ten', 'Eleven', 'Twelve']
+
+/** A count that begins a sentence: in words up to twelve. */
+export function countAtHead(count: number): string {
+  return words[count] ?? grouped(count)
+}
+
 function superscript(power: string): string {
   return [...power].map((c) => (c === '-' || c === '−' ? '⁻' : '⁰¹²³⁴⁵⁶⁷⁸⁹'[Number(c)] ?? c)).join('')
 }

@@ -9,7 +9,7 @@ export function ReopenDialog({ alert, acts }: { alert: Alert; acts: Acting }) {
   const [error, setError] = useState<string>()
   const send = () => (note.trim() ? acts.reopen({ note }) : setError('Say why it is reopened.'))
   return (
-    <ActForm acts={acts} title={`Reopen ${alert.regionName}`} about="It stands open again until somebody acknowledges it." act="Reopen" onSubmit={send}>
+    <ActForm acts={acts} title={`Reopen ${alert.regionName}`} about="It is yours then: acknowledged and not closed." act="Reopen" onSubmit={send}>
       <TextArea label="Why" value={note} error={error} onChange={(event) => setNote(event.target.value)} />
     </ActForm>
   )

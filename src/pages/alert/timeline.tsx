@@ -5,6 +5,7 @@ import { SectionHead } from '../../components/ui/page'
 import { useNow } from '../../hooks/use-now'
 import { ageWords, hoursSince } from '../../lib/age'
 import { clockTime, localDay, shortDay } from '../../lib/dates'
+import { entryWords } from './entry-words'
 
 /** Newest first; what is overdue stands on top, in ember. */
 export function Timeline({ alert }: { alert: Alert }) {
@@ -34,7 +35,7 @@ export function Timeline({ alert }: { alert: Alert }) {
               {index < entries.length - 1 && <span aria-hidden className="w-px bg-rule2" />}
             </span>
             <span className="min-w-0 pb-3 [overflow-wrap:anywhere]">
-              {entry.text}
+              {entryWords(entry, zone)}
               {entry.by && <span className="block text-small text-ink2">{entry.by}</span>}
             </span>
           </li>

@@ -11,6 +11,7 @@ import { Page, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
 import { AlertTable } from './alert-table'
 import { Filters } from './filters'
+import { countAtHead } from '../../lib/format'
 import { useFilters } from './use-filters'
 
 /** What people were told of: what stands open, who has it, and how the past ones ended. */
@@ -41,13 +42,13 @@ export function Component() {
 }
 
 function worryWords(open: number): string {
-  return open === 1 ? 'One alert waits for somebody.' : `${open} alerts wait for somebody.`
+  return open === 1 ? 'One alert waits for somebody.' : `${countAtHead(open)} alerts wait for somebody.`
 }
 
 function restWords(open: number | undefined, held: number | undefined): ReactNode {
   if (open === undefined || held === undefined) return 'Alerts'
   if (held === 0) return open === 0 ? 'No alert is open.' : 'Nobody has acknowledged it yet.'
-  return held === 1 ? 'One is acknowledged and not closed.' : `${held} are acknowledged and not closed.`
+  return held === 1 ? `One ${open === 0 ? 'alert ' : ''}is acknowledged and not closed.` : `${countAtHead(held)} ${open === 0 ? 'alerts ' : ''}are acknowledged and not closed.`
 }
 
 function NoAlerts({ filtered, onAll }: { filtered: boolean; onAll: () => void }) {

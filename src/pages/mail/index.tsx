@@ -10,6 +10,7 @@ import { GraduatedRule } from '../../components/ui/graduated-rule'
 import { Message } from '../../components/ui/message'
 import { Page, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
+import { countAtHead } from '../../lib/format'
 import { LetterList } from './letter-list'
 import { OpenLetter } from './open-letter'
 
@@ -53,8 +54,7 @@ export function Component() {
 }
 
 function countSentence(count: number): string {
-  if (count === 0) return 'No letter was caught.'
-  return count === 1 ? 'One letter was caught.' : `${count} letters were caught.`
+  return count < 2 ? `${countAtHead(count)} letter was caught.` : `${countAtHead(count)} letters were caught.`
 }
 
 function MailFault({ error, onRetry }: { error: Error; onRetry: () => void }) {
