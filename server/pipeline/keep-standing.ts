@@ -15,8 +15,10 @@ export interface Judged {
 
 /** Keeps where a region stands by one rule: its newest usable view and whether an event is running. */
 export async function keepStanding(context: Context, tx: Transaction, { rule, geometry, definition }: Subject, judged: Judged): Promise<void> {
-  const view = judged.views.findLast((one) => isUsable(one, definition))
-  const verdict = view && judged.judgement.judged.find((one) => one.day === view.day)
+  const verdicts = new Map(judged.judgement.judged.map((one) => [one.day, one]))
+  // A view dated after today is not judged yet, so a region can't stand on it.
+  const view = judged.views.findLast((one) => verdicts.has(one.day) && isUsable(one, definition))
+  const verdict = view && verdicts.get(view.day)
   const running = judged.events.find((event) => event.phase === 'running')
   await context.db.run(
     `INSERT INTO standings (rule_id, geometry_id, baseline_id, judged_at, state, in_event, severity, day, layer_id, observed_at, coverage,

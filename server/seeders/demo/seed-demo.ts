@@ -7,6 +7,7 @@ import { actOnAlert } from '../../desk/act-on-alert'
 import { drawRegion } from '../../desk/draw-region'
 import type { Ticker } from '../../jobs/ticker'
 import { createFeed } from '../../pipeline/feeds'
+import { refreshStandings } from '../../pipeline/refresh-standings'
 import { setRoles } from '../../queries/people'
 import { keepSetting } from '../../queries/settings'
 import { newFeed } from '../../../shared/schemas/feeds'
@@ -54,6 +55,9 @@ export async function seedDemo(context: Context, ticker: Ticker): Promise<void> 
   }
   await rm(staging, { recursive: true, force: true })
   clock.moveTo(scenarioInstant)
+  // Whatever was judged on an earlier day stands as of today, as the ticker would see to within minutes.
+  await refreshStandings(context)
+  await ticker.drain()
   await db.write(async (tx) => {
     await keepSetting(db, tx, 'clock-offset', String(clock.offset()))
     await keepSetting(db, tx, 'demo-last-day', String(scenarioDays.today - 1))
