@@ -2,6 +2,7 @@ import { resolve } from 'node:path'
 import express, { Router } from 'express'
 import type { Context } from './context'
 import { clientFiles } from './middleware/client-files'
+import { compressed } from './middleware/compressed'
 import { errorReply, unknownPath } from './middleware/error-reply'
 import { generalLimit } from './middleware/rate-limits'
 import { requestLog } from './middleware/request-log'
@@ -15,6 +16,7 @@ export function createApp(context: Context, { clientDir = resolve('dist/client')
   app.set('trust proxy', context.env.trustProxy)
   app.use(requestLog(context))
   app.use(securityHeaders(context))
+  app.use(compressed())
   app.use('/api', apiRouter(context))
   app.use(clientFiles(clientDir))
   app.use(errorReply(context))

@@ -21,11 +21,11 @@ const geotiffWithoutThreads: Plugin = {
   },
 }
 
-/** Bundles the server, its commands and the worker into dist/server; packages stay in node_modules. */
+/** Bundles the server, its commands and the worker into dist/server; other packages stay in node_modules. */
 export async function buildServer(): Promise<void> {
   await build({
     absWorkingDir: root,
-    entryPoints: { main: 'server/index.ts', worker: 'server/workers/worker.ts' },
+    entryPoints: { main: 'server/index.ts', worker: 'server/workers/worker.ts', offing: 'server/commands/offing.ts' },
     outdir: 'dist/server',
     bundle: true,
     packages: 'external',

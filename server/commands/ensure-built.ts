@@ -11,7 +11,7 @@ const sources = ['src', 'server', 'shared', 'index.html', 'package-lock.json', '
 export async function ensureBuilt(): Promise<void> {
   const stamp = await stampOf()
   if (existsSync(stampFile) && (await readFile(stampFile, 'utf8')) === stamp) return
-  console.log('Building client, server and workers ...')
+  console.error('Building client, server and workers ...')
   const { build } = await import('vite')
   const { buildServer } = await import('./build')
   await Promise.all([build({ root, logLevel: 'warn' }), buildServer()])
