@@ -1,6 +1,7 @@
 import { areaAboveKm2, unpackHistogram } from '../../shared/science/histogram'
 import { dateOf } from '../../shared/science/local-day'
-import { seriesColumnNames, type Series } from '../../shared/schemas/series'
+import type { seriesColumnNames} from '../../shared/schemas/series';
+import { type Series } from '../../shared/schemas/series'
 import type { Context } from '../context'
 
 export interface SeriesWanted {
