@@ -1,7 +1,6 @@
 import { areaAboveKm2, unpackHistogram } from '../../shared/science/histogram'
 import { dateOf } from '../../shared/science/local-day'
-import type { seriesColumnNames} from '../../shared/schemas/series';
-import { type Series } from '../../shared/schemas/series'
+import type { Series, seriesColumnNames } from '../../shared/schemas/series'
 import type { Context } from '../context'
 
 export interface SeriesWanted {
