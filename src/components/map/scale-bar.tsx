@@ -11,6 +11,8 @@ export function ScaleBar() {
   const kmPerPx = ((view.east - view.west) * kmPerDegree * Math.cos(middle)) / Math.max(1, view.width)
   const km = nice.findLast((length) => length / kmPerPx <= Math.min(110, view.width / 5)) ?? 1
   const px = km / kmPerPx
+  // Before the map has a size there is nothing to measure.
+  if (!Number.isFinite(px)) return null
   return (
     <div className="pointer-events-none absolute right-3 bottom-3 z-[650] bg-paper px-2.5 pt-0.5 pb-2" data-scale-bar>
       <div className="fig flex min-w-max justify-between gap-2 text-small text-ink" style={{ width: px }}>

@@ -8,6 +8,7 @@ export function detailWords(details: Record<string, unknown>): string {
 
 function valueWords(value: unknown): string {
   if (Array.isArray(value)) return value.map(valueWords).join(' and ')
+  if (typeof value === 'number') return String(Number(value.toPrecision(6)))
   return typeof value === 'object' ? JSON.stringify(value) : String(value)
 }
 

@@ -11,7 +11,7 @@ import { Page, Statement } from '../../components/ui/page'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { Waiting } from '../../components/ui/waiting'
 import { dayWords } from '../../lib/dates'
-import { countWords, grouped, unitWords } from '../../lib/format'
+import { countAtHead, grouped, unitWords } from '../../lib/format'
 
 export function Component() {
   const feeds = useQuery(feedsQuery())
@@ -56,8 +56,8 @@ export function Component() {
 
 function sentence(live: number, silent: number): string {
   if (live === 0) return 'Feeds'
-  if (silent === 0) return live === 1 ? 'One feed, and it speaks.' : `${countWords(live, 'feed')}, none of them silent.`
-  return `${silent} of ${countWords(live, 'feed')} ${silent === 1 ? 'is' : 'are'} silent.`
+  if (silent === 0) return live === 1 ? 'One feed, and it speaks.' : `${countAtHead(live)} feeds, none of them silent.`
+  return `${countAtHead(silent)} of ${countAtHead(live).toLowerCase()} ${live === 1 ? 'feed' : 'feeds'} ${silent === 1 ? 'is' : 'are'} silent.`
 }
 
 function FeedRow({ feed }: { feed: Feed }) {

@@ -1,14 +1,20 @@
+import { useState } from 'react'
 import { Link } from 'react-router-dom'
 import { paths } from '../../../shared/paths'
 import type { OffingFile } from '../../../shared/schemas/files'
+import { Button } from '../../components/ui/button'
 import { SectionHead } from '../../components/ui/page'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { dayWithYear } from '../../lib/dates'
 import { figure, percent } from '../../lib/format'
 
+const atFirst = 20
+
 /** The figures this file gave, region by region; a region it did not see has hatch. */
 export function FiguresPart({ file }: { file: OffingFile }) {
+  const [all, setAll] = useState(false)
   if (file.summaries.length === 0) return null
+  const shown = all ? file.summaries : file.summaries.slice(0, atFirst)
   return (
     <section className="grid grid-cols-[minmax(0,1fr)] gap-2">
       <SectionHead count={file.summaries.length} ruled={false} aside={file.summaries.length >= 200 ? 'the newest 200' : 'newest first'}>
@@ -25,7 +31,7 @@ export function FiguresPart({ file }: { file: OffingFile }) {
           </tr>
         </thead>
         <tbody>
-          {file.summaries.map((row) => (
+          {shown.map((row) => (
             <Tr key={`${row.regionId} ${row.feedId} ${row.day}`}>
               <Td>
                 <Link className="link" to={paths.region.to({ id: row.regionId })}>
@@ -49,6 +55,13 @@ export function FiguresPart({ file }: { file: OffingFile }) {
           ))}
         </tbody>
       </Table>
+      {shown.length < file.summaries.length && (
+        <div>
+          <Button kind="text" size="small" onClick={() => setAll(true)}>
+            Show all {file.summaries.length}
+          </Button>
+        </div>
+      )}
     </section>
   )
 }

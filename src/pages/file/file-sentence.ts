@@ -1,5 +1,5 @@
 import type { OffingFile } from '../../../shared/schemas/files'
-import { countWords } from '../../lib/format'
+import { countAtHead, countWords } from '../../lib/format'
 
 /** What became of the file, as one sentence. */
 export function fileSentence(file: OffingFile): { statement: string; detail: string | undefined } {
@@ -9,7 +9,7 @@ export function fileSentence(file: OffingFile): { statement: string; detail: str
     case 'processing':
       return { statement: 'This file is being read.', detail: 'You can leave this page.' }
     case 'processed':
-      return { statement: `${countWords(file.layers.length, 'layer')} read from this file.`, detail: figuresDetail(file) }
+      return { statement: `${countAtHead(file.layers.length)} ${file.layers.length === 1 ? 'layer' : 'layers'} read from this file.`, detail: figuresDetail(file) }
     case 'waiting':
       return { statement: file.proposal ? 'This file fits no feed yet.' : 'This file waits.', detail: file.waitingFor ?? undefined }
     case 'refused':

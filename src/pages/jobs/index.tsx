@@ -13,7 +13,7 @@ import { Page, Statement } from '../../components/ui/page'
 import { Progress } from '../../components/ui/progress'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { Waiting } from '../../components/ui/waiting'
-import { countWords } from '../../lib/format'
+import { countAtHead } from '../../lib/format'
 
 type Shown = Job['state'] | 'all'
 const options = (['all', ...jobStates] as const).map((value) => ({ value, label: value }))
@@ -25,7 +25,7 @@ export function Component() {
   const items = jobs.data?.pages.flatMap((page) => page.items) ?? []
   return (
     <Page title="Jobs">
-      <Statement detail="Reading, histories and judging, newest first.">{failed > 0 ? `${countWords(failed, 'job')} failed.` : 'No job has failed.'}</Statement>
+      <Statement detail="Reading, histories and judging, newest first.">{failed > 0 ? `${countAtHead(failed)} ${failed === 1 ? 'job' : 'jobs'} failed.` : 'No job has failed.'}</Statement>
       <Choice label="State" options={options} value={shown} onChange={setShown} />
       {jobs.isPending && <Waiting lines={5} />}
       {jobs.error && <Failure error={jobs.error} onRetry={() => void jobs.refetch()} />}

@@ -1,6 +1,6 @@
 import { useInfiniteQuery } from '@tanstack/react-query'
 import { filesQuery } from '../../api/files'
-import { countWords } from '../../lib/format'
+import { countAtHead, countWords } from '../../lib/format'
 
 /** What the newest files ask for, if anything. */
 export function useFileSentence(): { statement: string; detail: string } {
@@ -14,7 +14,7 @@ export function useFileSentence(): { statement: string; detail: string } {
     refused > 0 && `${refused} of the newest ${files.length} refused`,
   ].filter((part) => part !== false)
   return {
-    statement: waiting > 0 ? `${countWords(waiting, 'file')} ${waiting === 1 ? 'waits' : 'wait'} for your word.` : 'Files and layers',
+    statement: waiting > 0 ? `${countAtHead(waiting)} ${waiting === 1 ? 'file waits' : 'files wait'} for your word.` : 'Files and layers',
     detail: detail.length > 0 ? `${detail.join('; ')}.` : 'Every file received, what was made of it, and why not.',
   }
 }

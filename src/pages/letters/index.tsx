@@ -16,7 +16,7 @@ import { Page, Statement } from '../../components/ui/page'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { Waiting } from '../../components/ui/waiting'
 import { clockTime } from '../../lib/dates'
-import { countWords } from '../../lib/format'
+import { countAtHead } from '../../lib/format'
 
 type Shown = Letter['state'] | 'all'
 const options = (['all', ...letterStates] as const).map((value) => ({ value, label: value }))
@@ -42,7 +42,7 @@ export function Component() {
           )
         }
       >
-        {failed > 0 ? `${countWords(failed, 'letter')} could not be delivered.` : 'No letter is lost.'}
+        {failed > 0 ? `${countAtHead(failed)} ${failed === 1 ? 'letter' : 'letters'} could not be delivered.` : 'No letter has failed.'}
       </Statement>
       <Choice label="State" options={options} value={shown} onChange={setShown} />
       {letters.isPending && <Waiting lines={5} />}

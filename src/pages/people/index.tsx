@@ -10,7 +10,7 @@ import { Page, SectionHead, Statement } from '../../components/ui/page'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { Waiting } from '../../components/ui/waiting'
 import { dayWithYear } from '../../lib/dates'
-import { countWords } from '../../lib/format'
+import { countAtHead } from '../../lib/format'
 import { AddPerson } from './add-person'
 import { ChangePerson } from './change-person'
 import { InvitePerson } from './invite-person'
@@ -35,7 +35,7 @@ export function Component() {
           </>
         }
       >
-        {users.isSuccess ? `${countWords(active.length, 'person', 'people')} can sign in.` : 'People'}
+        {users.isSuccess ? `${countAtHead(active.length)} ${active.length === 1 ? 'person' : 'people'} can sign in.` : 'People'}
       </Statement>
       {users.isPending && <Waiting lines={4} />}
       {users.error && <Failure error={users.error} onRetry={() => void users.refetch()} />}

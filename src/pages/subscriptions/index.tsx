@@ -6,7 +6,7 @@ import { Empty } from '../../components/ui/empty'
 import { Failure } from '../../components/ui/failure'
 import { Page, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
-import { countWords } from '../../lib/format'
+import { countAtHead } from '../../lib/format'
 import { SubscriptionDialog } from './subscription-dialog'
 import { SubscriptionTable } from './subscription-table'
 
@@ -25,7 +25,7 @@ export function Component() {
           </Button>
         }
       >
-        {people > 0 ? `${countWords(people, 'person', 'people')} ${people === 1 ? 'hears' : 'hear'} of alerts.` : 'Nobody hears of alerts.'}
+        {people > 0 ? `${countAtHead(people)} ${people === 1 ? 'person hears' : 'people hear'} of alerts.` : 'Nobody hears of alerts.'}
       </Statement>
       {subscriptions.isPending && <Waiting lines={4} />}
       {subscriptions.error && <Failure error={subscriptions.error} onRetry={() => void subscriptions.refetch()} />}
