@@ -5,7 +5,9 @@ import type { Context } from '../context'
 import { dropFile, storeStream, TooLarge, type Arrived } from '../pipeline/stored-files'
 
 const mostFiles = 200
-const arrivals = new WeakMap<Express.Multer.File, Arrived>()
+
+/** multer copies what storing answers onto a new file object; the arrival travels with it. */
+type StoredFile = Express.Multer.File & { arrived?: Arrived }
 
 /** Takes multipart uploads straight to disk, checksummed on the way; what is cut off leaves nothing behind. */
 export function upload(context: Context): RequestHandler {
@@ -13,14 +15,14 @@ export function upload(context: Context): RequestHandler {
     _handleFile: (_req, file, done) => {
       storeStream(context.env, file.stream).then(
         (arrived) => {
-          arrivals.set(file, arrived)
-          done(null, { size: arrived.bytes, path: arrived.temporary })
+          const stored: Partial<StoredFile> = { size: arrived.bytes, path: arrived.temporary, arrived }
+          done(null, stored)
         },
         (error: unknown) => done(error),
       )
     },
-    _removeFile: (_req, file, done) => {
-      const arrived = arrivals.get(file)
+    _removeFile: (_req, file: StoredFile, done) => {
+      const { arrived } = file
       void (arrived ? dropFile(arrived) : Promise.resolve()).then(() => done(null), done)
     },
   }
@@ -32,11 +34,8 @@ export function upload(context: Context): RequestHandler {
 
 /** The files of a request in the order they were sent. */
 export function arrivedFiles(req: Request): { name: string; arrived: Arrived }[] {
-  const files = Array.isArray(req.files) ? req.files : []
-  return files.flatMap((file) => {
-    const arrived = arrivals.get(file)
-    return arrived ? [{ name: file.originalname.slice(-200), arrived }] : []
-  })
+  const files: StoredFile[] = Array.isArray(req.files) ? req.files : []
+  return files.flatMap(({ originalname, arrived }) => (arrived ? [{ name: originalname.slice(-200), arrived }] : []))
 }
 
 function asApiError(error: unknown): unknown {
