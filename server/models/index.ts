@@ -1,3 +1,4 @@
+import type { ModelAttributes } from 'sequelize'
 import type { Database } from '../db'
 import { defineUser } from './user'
 import { defineSession } from './session'
@@ -19,8 +20,16 @@ import { defineLetter } from './letter'
 import { defineJob } from './job'
 import { defineAuditEntry } from './audit-entry'
 
+/** What is not given at creation is null in the record too, as it is in the table; else a fresh record would miss fields. */
+function unsetIsNull(attributes: ModelAttributes): void {
+  for (const attribute of Object.values(attributes)) {
+    if (typeof attribute === 'object' && 'allowNull' in attribute && attribute.allowNull && attribute.defaultValue === undefined) attribute.defaultValue = null
+  }
+}
+
 function define(db: Database) {
   const { sequelize } = db
+  sequelize.addHook('beforeDefine', unsetIsNull)
   const models = {
     users: defineUser(sequelize),
     sessions: defineSession(sequelize),
