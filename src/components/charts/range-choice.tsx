@@ -4,6 +4,11 @@ import { Button } from '../ui/button'
 import { Choice } from '../ui/choice'
 import { type DayRange, movedRange, namedRange, nameOf, yearRange, yearsOf } from './shown-range'
 
+function wholeSpan({ from, to }: DayRange): string {
+  const years = Math.round(daysBetween(from, to) / 365.25)
+  return years < 2 ? 'all' : `all ${countWords(years, 'year')}`
+}
+
 interface Props {
   range: DayRange
   span: DayRange
@@ -25,7 +30,7 @@ export function RangeChoice({ range, span, onChange }: Props) {
         options={[
           { value: 'days', label: '120 days' },
           { value: 'year', label: '1 year' },
-          { value: 'all', label: `all ${countWords(Math.max(1, Math.round(daysBetween(span.from, span.to) / 365.25)), 'year')}` },
+          { value: 'all', label: wholeSpan(span) },
         ]}
         value={name}
         onChange={(next) => onChange(namedRange(next, span))}

@@ -2,6 +2,7 @@ import type L from 'leaflet'
 import { useState } from 'react'
 import { useMapEvents } from 'react-leaflet'
 import type { RegionGeometry } from '../../../shared/schemas/regions'
+import { useWide } from '../../hooks/use-wide'
 import { LayerTiles } from '../map/layer-tiles'
 import { type OutlinedRegion, RegionOutlines } from '../map/region-outlines'
 import { type MapBounds, SeaMap } from '../map/sea-map'
@@ -31,10 +32,11 @@ interface Props {
 export default function DrawMap(props: Props) {
   const [map, setMap] = useState<L.Map | null>(null)
   const { geometry, drawing, corners } = props
+  const wide = useWide()
   return (
     <div className="grid grid-cols-[minmax(0,1fr)] gap-2">
       <div className={props.siting ? '[&_.leaflet-container]:cursor-crosshair' : ''}>
-        <SeaMap label="Map to draw the outline on" bounds={props.bounds} hatched={props.layerId !== undefined} aspect={1.2} onReady={setMap}>
+        <SeaMap label="Map to draw the outline on" bounds={props.bounds} hatched={props.layerId !== undefined} aspect={wide ? 1.2 : 0.85} onReady={setMap}>
           {props.layerId !== undefined && <LayerTiles layerId={props.layerId} />}
           <RegionOutlines regions={props.others} />
           <OutlinePen

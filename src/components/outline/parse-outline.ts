@@ -1,5 +1,6 @@
 import type { RegionGeometry } from '../../../shared/schemas/regions'
 import { parsePosition, type Position } from './parse-position'
+import { wound } from './wind'
 
 export type ParsedOutline = { geometry: unknown; problem?: undefined } | { geometry?: undefined; problem: string }
 
@@ -48,7 +49,7 @@ export function polygonOf(corners: readonly Position[]): RegionGeometry {
   const ring = corners.map(({ latitude, longitude }) => [longitude, latitude])
   const [first, last] = [ring[0], ring[ring.length - 1]]
   if (first && last && (first[0] !== last[0] || first[1] !== last[1])) ring.push([...first])
-  return { type: 'Polygon', coordinates: [ring] }
+  return wound({ type: 'Polygon', coordinates: [ring] })
 }
 
 function isObject(value: unknown): value is Record<string, unknown> {

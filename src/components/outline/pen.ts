@@ -5,6 +5,7 @@ import type { RegionGeometry } from '../../../shared/schemas/regions'
 import { latLngRings } from '../map/region-outlines'
 import { outlinePane } from '../map/panes'
 import './pen.css'
+import { wound } from './wind'
 
 /** What the drawing library can do for its own tool bar and gives no other name to. */
 interface PolygonTool {
@@ -75,7 +76,7 @@ export function showEditable(map: L.Map, geometry: RegionGeometry, onChange: (ge
 }
 
 function geometryOf(layer: L.Polygon): RegionGeometry {
-  return layer.toGeoJSON(6).geometry
+  return wound(layer.toGeoJSON(6).geometry)
 }
 
 function cornersOf(layer: L.Layer): [number, number][] {

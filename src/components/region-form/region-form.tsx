@@ -1,5 +1,5 @@
 import { zodResolver } from '@hookform/resolvers/zod'
-import { lazy, Suspense, useState } from 'react'
+import { lazy, Suspense, useRef, useState } from 'react'
 import { useForm, useWatch } from 'react-hook-form'
 import type { RegionGeometry } from '../../../shared/schemas/regions'
 import { polygonAreaKm2, ringAreaKm2 } from '../../../shared/science/ring-area'
@@ -42,11 +42,17 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
   const [siting, setSiting] = useState(false)
   const [bounds, setBounds] = useState<MapBounds>(() => (outline && boundsAround([outline], 0.5)) ?? ground.bounds)
   const [noOutline, setNoOutline] = useState(false)
+  const mapPart = useRef<HTMLDivElement>(null)
   const site = parsePosition(useWatch({ control: form.control, name: 'sitePosition' }))
   const errors = form.formState.errors
   const refused = fieldErrors(error)
   const outlineProblem = refused['geometry'] ?? (noOutline && !geometry ? 'Draw the outline, or type it.' : undefined)
   const areaKm2 = drawing ? (corners.length >= 3 ? ringAreaKm2(corners) : null) : geometry ? polygonAreaKm2(geometry) : null
+
+  function beginSiting() {
+    setSiting(!siting)
+    if (!siting) mapPart.current?.scrollIntoView({ block: 'center' })
+  }
 
   const submit = form.handleSubmit(
     (typed) => (geometry ? onSave(typed, geometry) : setNoOutline(true)),
@@ -63,28 +69,30 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
           </p>
         )}
         {redrawn !== undefined && geometry !== outline && !drawing && <Message>{redrawn}</Message>}
-        <Suspense fallback={<div className="hatch aspect-[1.2] opacity-60" />}>
-          <DrawMap
-            bounds={bounds}
-            geometry={geometry}
-            drawing={drawing && !siting}
-            onDrawing={(next) => {
-              setCorners([])
-              setDrawing(next)
-            }}
-            onGeometry={setGeometry}
-            corners={corners.length}
-            onCorners={setCorners}
-            siting={siting}
-            site={site}
-            onSite={(position) => {
-              form.setValue('sitePosition', positionText(position), { shouldValidate: true, shouldDirty: true })
-              setSiting(false)
-            }}
-            others={ground.others}
-            layerId={ground.layerId}
-          />
-        </Suspense>
+        <div ref={mapPart} className="grid grid-cols-[minmax(0,1fr)]">
+          <Suspense fallback={<div className="hatch aspect-[1.2] opacity-60" />}>
+            <DrawMap
+              bounds={bounds}
+              geometry={geometry}
+              drawing={drawing && !siting}
+              onDrawing={(next) => {
+                setCorners([])
+                setDrawing(next)
+              }}
+              onGeometry={setGeometry}
+              corners={corners.length}
+              onCorners={setCorners}
+              siting={siting}
+              site={site}
+              onSite={(position) => {
+                form.setValue('sitePosition', positionText(position), { shouldValidate: true, shouldDirty: true })
+                setSiting(false)
+              }}
+              others={ground.others}
+              layerId={ground.layerId}
+            />
+          </Suspense>
+        </div>
         <details>
           <summary className="link inline-flex min-h-11 items-center font-strong tab:min-h-0">Type or paste the outline</summary>
           <div className="mt-3">
@@ -122,7 +130,7 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
           <TextField label="What it is" placeholder="gear, intake, landing" error={errors.siteName?.message} {...form.register('siteName')} />
           <TextField label="Position" className="fig" placeholder="51.95, -10.70" error={errors.sitePosition?.message} {...form.register('sitePosition')} />
           <div className="tab:col-span-2">
-            <Button kind="text" size="small" aria-pressed={siting} onClick={() => setSiting(!siting)}>
+            <Button kind="text" size="small" aria-pressed={siting} onClick={beginSiting}>
               {siting ? 'Tap the map where it is, or leave it' : 'Set it on the map'}
             </Button>
           </div>

@@ -63,7 +63,7 @@ function RegionParts({ region }: { region: Region }) {
       <div className="grid grid-cols-[minmax(0,1fr)] gap-x-9 gap-y-8 desk:grid-cols-[minmax(0,1.5fr)_minmax(0,1fr)]">
         <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-8">
           <EventPart regionId={region.id} feedId={region.standing.feedId} />
-          <RulePart regionId={region.id} />
+          <RulePart regionId={region.id} reading={progress !== null} />
         </div>
         <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-8">
           <OutlinePart region={region} />

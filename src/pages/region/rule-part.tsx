@@ -14,7 +14,7 @@ import { RuleVersions } from './rule-versions'
 import { numbersOf } from './simple-rule'
 
 /** Each rule in one sentence, its versions, and its numbers to change. */
-export function RulePart({ regionId }: { regionId: number }) {
+export function RulePart({ regionId, reading }: { regionId: number; reading: boolean }) {
   const rules = useQuery(rulesQuery(regionId))
   return (
     <section className="grid grid-cols-[minmax(0,1fr)] gap-4">
@@ -22,7 +22,11 @@ export function RulePart({ regionId }: { regionId: number }) {
       {rules.isPending && <Waiting />}
       {rules.error && <Failure error={rules.error} onRetry={() => void rules.refetch()} />}
       {rules.data?.items.length === 0 && (
-        <Empty title="No rule.">Without one this region is shown but never judged. The first rule comes with the first feed that covers it.</Empty>
+        <Empty title="No rule yet.">
+          {reading
+            ? 'The first one is written when the history has been read.'
+            : 'Without one this region is shown but never judged. The first comes with the first chlorophyll feed that covers it.'}
+        </Empty>
       )}
       {rules.data?.items.map((rule) => (
         <OneRule key={rule.id} rule={rule} />
