@@ -8,7 +8,7 @@ import { newestBaseline } from '../queries/baselines'
 import { cautions, opticallyComplexCaution } from './cautions'
 import { presentEvent } from './present-event'
 import { standings } from './standing'
-import { alertStatement } from './statement'
+import { alertStatement, alertStory } from './statement'
 
 const dayMs = 86_400_000
 const recentDays = 30
@@ -23,6 +23,7 @@ export async function presentAlerts(context: Context, alerts: readonly AlertReco
   const feeds = new Map((await models.feeds.findAll({ where: { id: alerts.map((alert) => alert.feedId) } })).map((feed) => [feed.id, feed]))
   const people = new Map((await models.users.findAll({ attributes: ['id', 'name'] })).map((user) => [user.id, user.name]))
   const standing = await standings(context)
+  const events = new Map((await models.events.findAll({ where: { id: alerts.flatMap((alert) => alert.eventId ?? []) } })).map((event) => [event.id, event]))
   const today = Math.floor(context.clock.now() / dayMs)
   const recent = await recentViews(context, alerts, today - recentDays + 1)
   return Promise.all(
@@ -39,6 +40,7 @@ export async function presentAlerts(context: Context, alerts: readonly AlertReco
         severity: alert.severity,
         raisedAt: iso(alert.raisedAt)!,
         triggerDay: dateOf(alert.triggerDay),
+        story: alertStory(events.get(alert.eventId ?? 0) ?? null, alert),
         statement: alertStatement(alert.severity, region.name, alert.evidence),
         evidence: alert.evidence,
         latest: standing.get(alert.regionId)?.view ?? null,

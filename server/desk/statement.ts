@@ -1,6 +1,8 @@
 import { figureText, timesText } from '../../shared/figure-text'
 import type { Evidence } from '../../shared/schemas/alerts'
 import type { Severity } from '../../shared/schemas/common'
+import type { AlertRow } from '../models/alert'
+import type { EventRow } from '../models/event'
 
 export interface Statement {
   lead: string
@@ -14,6 +16,21 @@ export function alertStatement(severity: Severity, regionName: string, evidence:
       ? `${figureText(evidence.value)}${evidence.unit ? ` ${evidence.unit}` : ''}`
       : `${timesText(evidence.timesUsual)} times usual`
   return { lead: `${severity}.`, rest: `${regionName} is at ${stands}.` }
+}
+
+/** How an alert came about: when its event began, between which views, and where it is now. */
+export function alertStory(event: EventRow | null, alert: AlertRow): string {
+  if (!event) return `Raised for ${dayText(alert.triggerDay)}; late data took the event away.`
+  const { firstFlagged, lastUnflaggedBefore: before, lastFlagged } = event
+  const began = before === null || before === firstFlagged - 1 ? dayText(firstFlagged) : `${dayText(before)} to ${dayText(firstFlagged)}`
+  const views = `${event.usableViews} usable view${event.usableViews === 1 ? '' : 's'}`
+  if (event.phase === 'running') return `Building since ${began}; ${views}, the newest flagged on ${dayText(lastFlagged)}.`
+  if (event.phase === 'lost') return `Lost from view since ${dayText(lastFlagged)}; it began ${began}.`
+  return `Ended after ${dayText(lastFlagged)}; it began ${began}.`
+}
+
+function dayText(day: number): string {
+  return new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'long', timeZone: 'UTC' }).format(day * 86_400_000)
 }
 
 /** The figures behind it in one line. */

@@ -68,6 +68,8 @@ export const alertItem = z.object({
   triggerDay: day,
   /** The one-sentence statement: the first clause names the worry, the rest the facts. */
   statement: z.object({ lead: z.string(), rest: z.string() }),
+  /** How it came about, in one sentence. */
+  story: z.string(),
   evidence,
   /** The newest usable view of the region, which may be newer than the evidence. */
   latest: shownView.nullable(),

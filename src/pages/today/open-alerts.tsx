@@ -72,7 +72,7 @@ function AlertRow({ alert, filled }: { alert: AlertItem; filled: boolean }) {
           )}
         </div>
         <RecentDays days={alert.recent} />
-        <p className="col-span-2 text-small text-ink2 tab:col-span-1">{alert.statement.rest}</p>
+        <p className="col-span-2 text-small text-ink2 tab:col-span-1">{alert.story}</p>
       </div>
       <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
         <Holder alert={alert} />
