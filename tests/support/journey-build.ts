@@ -1,0 +1,3 @@
+import { ensureBuilt } from '../../server/commands/ensure-built'
+
+await ensureBuilt()
