@@ -9,7 +9,8 @@ export const officer: Me = {
 export function anAlert(change: Partial<Alert> = {}): Alert {
   return {
     id: 41, regionId: 3, regionName: 'Tarrow Bay', feedId: 1, feedName: 'Chlorophyll, daily', state: 'open', phase: 'running', severity: 'Severe',
-    raisedAt: '2026-06-11T03:00:00Z', triggerDay: '2026-06-10', statement: { lead: 'Severe.', rest: 'Tarrow Bay is at 3.4 times usual.' },
+    raisedAt: '2026-06-11T03:00:00Z', triggerDay: '2026-06-10',
+    story: 'Building since 6 to 10 June; 2 usable views, the newest flagged on 11 June.', statement: { lead: 'Severe.', rest: 'Tarrow Bay is at 3.4 times usual.' },
     evidence: {
       statistic: 'median', unit: 'mg m-3', value: 4.89, usual: 1.44, p10: 0.81, p90: 2.54, threshold: 2.88, timesUsual: 3.4, coverage: 0.71,
       coverageFloor: 0.25, wholeValid: 312, cells: 440, day: '2026-06-10', layerId: 7, layerObservedAt: '2026-06-10T13:04:00Z', fileId: 9,
