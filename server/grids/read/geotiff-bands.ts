@@ -1,4 +1,5 @@
-import type { GeoTIFFImage } from 'geotiff'
+import { gdalItems } from './gdal-metadata'
+import { type TiffDirectory, tags } from './tiff-directory'
 
 /** What GDAL's metadata say of one band. */
 export interface BandNotes {
@@ -13,14 +14,15 @@ export interface BandNotes {
 
 type Items = Record<string, string>
 
-export async function datasetItems(image: GeoTIFFImage): Promise<Items> {
-  const items = clean(await image.getGDALMetadata(null))
+/** GDAL's metadata of the whole file. */
+export function datasetItems(directory: TiffDirectory): Items {
+  const items = itemsOf(directory, null)
   // Files translated from NetCDF keep the file-wide attributes behind this mark.
   return Object.fromEntries(Object.entries(items).map(([name, text]) => [name.replace(/^NC_GLOBAL#/, ''), text]))
 }
 
-export async function bandNotes(image: GeoTIFFImage, band: number, dataset: Items): Promise<BandNotes> {
-  const items = clean(await image.getGDALMetadata(band))
+export function bandNotes(directory: TiffDirectory, band: number, dataset: Items): BandNotes {
+  const items = itemsOf(directory, band)
   const source = items['NETCDF_VARNAME'] ?? null
   const attribute = (name: string) => items[name] ?? (source === null ? undefined : dataset[`${source}#${name}`])
   const name = items['DESCRIPTION'] ?? source
@@ -35,19 +37,8 @@ export async function bandNotes(image: GeoTIFFImage, band: number, dataset: Item
   }
 }
 
-function clean(metadata: Record<string, unknown> | null): Items {
-  const items: Items = {}
-  for (const [name, value] of Object.entries(metadata ?? {})) {
-    if (typeof value === 'string') items[unescape(name)] = unescape(value)
-  }
-  return items
-}
-
-function unescape(text: string): string {
-  return text
-    .replaceAll('&lt;', '<')
-    .replaceAll('&gt;', '>')
-    .replaceAll('&quot;', '"')
-    .replaceAll('&apos;', "'")
-    .replaceAll('&amp;', '&')
+function itemsOf(directory: TiffDirectory, band: number | null): Items {
+  const xml = directory.get(tags.metadata)
+  if (typeof xml !== 'string') return {}
+  return Object.fromEntries(gdalItems(xml).flatMap(({ name, sample, text }) => (sample === band ? [[name, text]] : [])))
 }

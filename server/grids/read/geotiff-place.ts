@@ -1,17 +1,17 @@
-import type { GeoTIFFImage } from 'geotiff'
 import { toProj4 } from 'geotiff-geokeys-to-proj4'
 import type { Grid, TransformGrid } from '../../../shared/science/grid'
 import { LayerRefused } from '../layer-refused'
+import { type GeoKeys, geoKeysOf } from './geotiff-keys'
 import { projectTo, unprojectFrom } from './project'
-import { numbersIn, type TiffDirectory, tags } from './tiff-directory'
+import { numberIn, numbersIn, type TiffDirectory, tags } from './tiff-directory'
 
 type Transform = TransformGrid['transform']
 
 /** Where the cells of a GeoTIFF are: axes for north-up degrees, else the transform and its projection. */
-export function geotiffGrid(image: GeoTIFFImage, directory: TiffDirectory, fileName: string): Grid {
-  const [rows, columns] = [image.getHeight(), image.getWidth()]
+export function geotiffGrid(directory: TiffDirectory, fileName: string): Grid {
+  const [rows, columns] = [numberIn(directory, tags.height, 0), numberIn(directory, tags.width, 0)]
   const affine = transformOf(directory)
-  const keys = directory.has(tags.geoKeys) ? geoKeysOf(image, fileName) : null
+  const keys = readKeys(directory, fileName)
   if (!affine || !keys) {
     throw unknownPlace(
       affine
@@ -21,9 +21,9 @@ export function geotiffGrid(image: GeoTIFFImage, directory: TiffDirectory, fileN
     )
   }
   // With pixel-is-point the tie point is the centre of its cell, with pixel-is-area (the default) its corner.
-  const area = keys.GTRasterTypeGeoKey === 2 ? shift(affine, -0.5) : affine
+  const area = keys['GTRasterTypeGeoKey'] === 2 ? shift(affine, -0.5) : affine
   // The converter reads the keys it knows and ignores the rest; its type names them all as present.
-  const crs = toProj4(keys as Parameters<typeof toProj4>[0])
+  const crs = toProj4(keys as unknown as Parameters<typeof toProj4>[0])
   const problems = Object.keys(crs.errors ?? {}).filter((problem) => !problem.startsWith('vertical'))
   if (!crs.proj4 || problems.length > 0) {
     throw unknownPlace('The coordinate system of this TIFF file is not one Offing knows.', fileName, { problems })
@@ -46,9 +46,9 @@ export function geotiffGrid(image: GeoTIFFImage, directory: TiffDirectory, fileN
   return grid
 }
 
-function geoKeysOf(image: GeoTIFFImage, fileName: string): ReturnType<GeoTIFFImage['getGeoKeys']> {
+function readKeys(directory: TiffDirectory, fileName: string): GeoKeys | null {
   try {
-    return image.getGeoKeys()
+    return geoKeysOf(directory)
   } catch (error) {
     throw unknownPlace('The coordinate system of this TIFF file is damaged.', fileName, { reason: String(error) })
   }

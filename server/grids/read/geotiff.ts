@@ -1,4 +1,4 @@
-import { fromFile, type GeoTIFF, type GeoTIFFImage } from 'geotiff'
+import { closeSync, openSync } from 'node:fs'
 import type { Grid, GridWindow } from '../../../shared/science/grid'
 import type { GridSource, GridVariable, LayerTime } from '../grid-source'
 import { LayerRefused } from '../layer-refused'
@@ -7,8 +7,10 @@ import { type BandNotes, bandNotes, datasetItems } from './geotiff-bands'
 import { geotiffGrid } from './geotiff-place'
 import { checkDeclaredGrid, maxBands, maxChunkBytes } from './limits'
 import { type Meaning, meaningOf } from './quantity'
-import { useOwnZstdDecoder } from './tiff-zstd'
-import { numberIn, numbersIn, readTiffDirectories, type TiffDirectory, tags } from './tiff-directory'
+import { numberIn, numbersIn, readTiffDirectories, type TiffDirectory, type TiffLayout, tags } from './tiff-directory'
+import { sampleFormatOf, type TiffRaster, tiffRaster } from './tiff-raster'
+import { canReadSamples } from './tiff-samples'
+import { prepareUnpacking, tiffCompressions } from './tiff-unpack'
 import { convertInPlace, describeConversion } from './values'
 import { checkWindow } from './window'
 
@@ -20,40 +22,36 @@ interface Band {
   variable: GridVariable
 }
 
-/** None, LZW, deflate (two numbers), packbits, ZSTD. JPEG and WebP lose values; damaged LERC can hang its decoder. */
-const compressions = new Set([1, 5, 8, 32946, 32773, 50000])
 const reducedResolution = 1
 const transparencyMask = 4
 
 /** A GeoTIFF at its full resolution: each band is a variable with one step. */
 export async function openGeotiff(path: string, fileName: string, fileSize: number): Promise<GridSource> {
-  const directories = readTiffDirectories(path, fileSize)
-  const place = directories.findIndex((item) => kindOf(item) === 0)
-  const directory = directories[place]
-  if (!directory) throw new LayerRefused('no-grid', 'This TIFF file holds only previews.', { fileName })
-  checkIsMeasurement(directory, fileName)
-  checkDeclaredGrid(fileName, numberIn(directory, tags.height, 0), numberIn(directory, tags.width, 0), 1)
-
-  useOwnZstdDecoder()
-  const tiff = await decoding(() => fromFile(path))
+  const descriptor = openSync(path, 'r')
   try {
-    const image = await decoding(() => tiff.getImage(place))
-    const grid = geotiffGrid(image, directory, fileName)
-    const dataset = await decoding(() => datasetItems(image))
-    const times = [timeOf(dataset)]
+    const layout = readTiffDirectories(descriptor, fileSize)
+    const directory = layout.directories.find((item) => kindOf(item) === 0)
+    if (!directory) throw new LayerRefused('no-grid', 'This TIFF file holds only previews.', { fileName })
+    checkIsMeasurement(directory, fileName)
+    checkDeclaredGrid(fileName, numberIn(directory, tags.height, 0), numberIn(directory, tags.width, 0), 1)
+    const grid = geotiffGrid(directory, fileName)
+    const dataset = datasetItems(directory)
     const warnings: string[] = []
-    const bands = await readBands(image, directory, dataset, grid, times, warnings)
-    const mask = await maskOf(tiff, directories, directory)
+    const bands = readBands(directory, dataset, grid, [timeOf(dataset)], warnings)
+    const mask = maskOf(layout, directory, fileName)
+    for (const item of mask ? [directory, mask] : [directory]) await prepareUnpacking(numberIn(item, tags.compression, 1))
+    const raster = tiffRaster(descriptor, directory, layout.littleEndian, bands[0]?.noData ?? 0)
+    const valid = mask && tiffRaster(descriptor, mask, layout.littleEndian, 0)
     return {
       format: 'geotiff',
       variables: bands.map(({ variable }) => variable),
       globalAttributes: dataset,
       warnings,
-      readWindow: (name, step, window) => readWindow(image, mask, bands, name, step, window),
-      close: () => void tiff.close(),
+      readWindow: async (name, step, window) => readWindow(raster, valid, bands, name, step, window),
+      close: () => closeSync(descriptor),
     }
   } catch (error) {
-    tiff.close()
+    closeSync(descriptor)
     throw error
   }
 }
@@ -76,14 +74,7 @@ function checkIsMeasurement(directory: TiffDirectory, fileName: string): void {
       fileName, samples, maxBands,
     })
   }
-  const compression = numberIn(directory, tags.compression, 1)
-  if (!compressions.has(compression)) {
-    throw new LayerRefused(
-      'unsupported-encoding',
-      `This TIFF file is compressed with a method Offing does not read (number ${compression}).`,
-      { fileName, compression },
-    )
-  }
+  checkEncoding(directory, fileName)
   const tiled = directory.has(tags.tileWidth)
   const width = numberIn(directory, tiled ? tags.tileWidth : tags.width, 0)
   const height = tiled ? numberIn(directory, tags.tileHeight, 0) : blockRows(directory)
@@ -95,26 +86,46 @@ function checkIsMeasurement(directory: TiffDirectory, fileName: string): void {
   }
 }
 
+function checkEncoding(directory: TiffDirectory, fileName: string): void {
+  const refuse = (what: string, facts: Record<string, unknown>) =>
+    new LayerRefused('unsupported-encoding', `This TIFF file ${what}, which Offing does not read.`, { fileName, ...facts })
+  const compression = numberIn(directory, tags.compression, 1)
+  if (!tiffCompressions.has(compression)) {
+    throw refuse(`is compressed with method number ${compression}`, { compression })
+  }
+  const bits = numberIn(directory, tags.bits, 1)
+  const format = sampleFormatOf(directory)
+  const mixed = [tags.bits, tags.sampleFormat].some((tag) => new Set(numbersIn(directory, tag)).size > 1)
+  if (mixed || !canReadSamples(bits, format)) {
+    throw refuse(mixed ? 'has bands of several number types' : `stores numbers of ${bits} bits in format ${format}`, {
+      bits, format,
+    })
+  }
+  const predictor = numberIn(directory, tags.predictor, 1)
+  const fits = predictor === 1 || (predictor === 2 && bits >= 8) || (predictor === 3 && format === 3)
+  if (!fits) throw refuse(`uses predictor ${predictor} for its type of number`, { predictor })
+  if (numberIn(directory, tags.fillOrder, 1) !== 1) throw refuse('stores its bits in reversed order', {})
+}
+
 function blockRows(directory: TiffDirectory): number {
   const height = numberIn(directory, tags.height, 0)
   return Math.min(height, numberIn(directory, tags.rowsPerStrip, height))
 }
 
-async function readBands(
-  image: GeoTIFFImage,
+function readBands(
   directory: TiffDirectory,
   dataset: Record<string, string>,
   grid: Grid,
   times: LayerTime[],
   warnings: string[],
-): Promise<Band[]> {
+): Band[] {
   // Extra samples marked as alpha say how see-through a picture is; they hold no measurement.
   const alphas = numbersIn(directory, tags.extraSamples).filter((kind) => kind === 1 || kind === 2).length
-  const count = image.getSamplesPerPixel() - alphas
+  const count = numberIn(directory, tags.samples, 1) - alphas
   const bands: Band[] = []
   const names = new Set<string>()
   for (let index = 0; index < count; index++) {
-    const notes = await decoding(() => bandNotes(image, index, dataset))
+    const notes = bandNotes(directory, index, dataset)
     if (names.has(notes.name)) notes.name = `band ${index + 1}`
     names.add(notes.name)
     if (!Number.isFinite(notes.scale) || notes.scale === 0 || !Number.isFinite(notes.offset)) {
@@ -158,18 +169,15 @@ function noDataOf(directory: TiffDirectory): number | null {
 }
 
 /** GDAL may keep a mask of valid cells as an image of its own; without it masked cells would look measured. */
-async function maskOf(
-  tiff: GeoTIFF,
-  directories: TiffDirectory[],
-  main: TiffDirectory,
-): Promise<GeoTIFFImage | null> {
-  const place = directories.findIndex(
+function maskOf({ directories }: TiffLayout, main: TiffDirectory, fileName: string): TiffDirectory | null {
+  const mask = directories.find(
     (item) =>
       kindOf(item) === transparencyMask &&
       numberIn(item, tags.width, 0) === numberIn(main, tags.width, -1) &&
       numberIn(item, tags.height, 0) === numberIn(main, tags.height, -1),
   )
-  return place < 0 ? null : decoding(() => tiff.getImage(place))
+  if (mask) checkEncoding(mask, fileName)
+  return mask ?? null
 }
 
 function timeOf(dataset: Record<string, string>): LayerTime {
@@ -180,53 +188,40 @@ function timeOf(dataset: Record<string, string>): LayerTime {
   return { observedAt: coverage.start, endsAt: null, hasClock: coverage.hasClock, from }
 }
 
-async function readWindow(
-  image: GeoTIFFImage,
-  mask: GeoTIFFImage | null,
+function readWindow(
+  raster: TiffRaster,
+  valid: TiffRaster | null,
   bands: Band[],
   name: string,
   step: number,
   window: GridWindow,
-): Promise<Float64Array> {
+): Float64Array {
   const band = bands.find(({ variable }) => variable.name === name)
   if (!band) throw new RangeError(`the file has no band ${name}`)
   checkWindow(band.variable, step, window)
   const cells = window.rows * window.columns
   if (cells === 0) return new Float64Array(0)
-  const stored = await readSamples(image, band.index, window)
-  const valid = mask ? await readSamples(mask, 0, window) : null
+  const values = unpacking(() => raster.read(band.index, window))
+  const seen = valid && unpacking(() => valid.read(0, window))
   const { scale, offset } = band.notes
-  const values = new Float64Array(cells)
   for (let i = 0; i < cells; i++) {
-    const value = stored[i]!
-    const missing = value === band.noData || !Number.isFinite(value) || valid?.[i] === 0
+    const value = values[i]!
+    const missing = value === band.noData || !Number.isFinite(value) || seen?.[i] === 0
     values[i] = missing ? NaN : value * scale + offset
   }
   convertInPlace(values, band.meaning)
   return values
 }
 
-async function readSamples(image: GeoTIFFImage, sample: number, window: GridWindow): Promise<ArrayLike<number>> {
-  const { row, column, rows, columns } = window
-  const rasters = await decoding(() =>
-    image.readRasters({ window: [column, row, column + columns, row + rows], samples: [sample], interleave: false }),
-  )
-  const raster = rasters[0]
-  if (!raster || raster.length !== rows * columns) throw damagedData('fewer cells came back than were asked for')
-  return raster
-}
-
-/** Whatever the decoder throws (some of it plain text) becomes a refusal. */
-async function decoding<T>(work: () => Promise<T>): Promise<T> {
+/** Whatever goes wrong while a block is unpacked becomes a refusal. */
+function unpacking<T>(work: () => T): T {
   try {
-    return await work()
+    return work()
   } catch (error) {
-    throw damagedData(error instanceof Error ? error.message : String(error), error)
+    if (error instanceof LayerRefused) throw error
+    const reason = error instanceof Error ? error.message : String(error)
+    throw new LayerRefused('damaged', 'This TIFF file is damaged: its data cannot be read back whole.', {
+      reason: reason.slice(0, 300),
+    }, { cause: error })
   }
-}
-
-function damagedData(reason: string, cause?: unknown): LayerRefused {
-  return new LayerRefused('damaged', 'This TIFF file is damaged: its data cannot be read back whole.', {
-    reason: reason.slice(0, 300),
-  }, { cause })
 }

@@ -1,9 +1,8 @@
-import { NetCDFReader } from 'netcdfjs'
 import { LayerRefused } from '../layer-refused'
 import { readExactly } from './bytes'
-import { classicHeaderLength, HeaderGoesOn } from './classic-header-length'
+import { type ClassicVersion, HeaderGoesOn, type ParsedHeader, parseClassicHeader } from './classic-header-parser'
 import { maxVariables } from './limits'
-import { type NumberType, type RawAttribute, type RawAttributes, type RawVariable, typeBytes } from './raw-netcdf'
+import { type RawAttributes, type RawVariable, typeBytes } from './raw-netcdf'
 
 export interface ClassicVariable extends RawVariable {
   /** Where the variable (or its first record) begins in the file. */
@@ -18,85 +17,74 @@ export interface ClassicHeader {
   recordBytes: number
 }
 
-const numberTypes: Record<string, NumberType> = {
-  byte: 'i1', short: 'i2', int: 'i4', float: 'f4', double: 'f8',
-}
 const firstRead = 64 * 1024
 const longestHeader = 16 * 1024 * 1024
-const streaming = 0xffffffff
+
+const padding = (bytes: number): number => (4 - (bytes % 4)) % 4
 
 /** Parses the header from the first bytes and checks that everything it declares lies inside the file. */
 export function readClassicHeader(descriptor: number, fileSize: number): ClassicHeader {
-  const { header } = parse(descriptor, fileSize)
-  const dimensions = header.dimensions ?? []
-  if ((header.variables ?? []).length > maxVariables) {
+  const header = parse(descriptor, fileSize)
+  if (header.variables.length > maxVariables) {
     throw new LayerRefused('too-large', `The file declares more than ${maxVariables} variables.`, {})
   }
-  const recordId = header.recordDimension.id
-  const declared = (header.variables ?? []).map((variable) => {
-    const type = numberTypes[variable.type] ?? null
-    const sizes = variable.dimensions.map((id) => {
-      const dimension = dimensions[id]
-      if (!dimension) throw damaged(`${variable.name} names a dimension that does not exist`)
-      return dimension
+  if (header.dimensions.filter(({ size }) => size === 0).length > 1) throw damaged('two of its dimensions grow')
+  const variables = header.variables.map(({ name, type, dimensions, attributes, offset }): ClassicVariable => {
+    const named = dimensions.map((id) => {
+      const dimension = header.dimensions[id]
+      if (!dimension) throw damaged(`${name} names a dimension that does not exist`)
+      return { ...dimension }
     })
-    return { variable, type, sizes, record: recordId !== undefined && variable.dimensions[0] === recordId }
+    // The dimension that grows has size 0 in the header and may only come first.
+    if (named.some(({ size }, index) => size === 0 && index > 0)) throw damaged(`${name} grows in a wrong dimension`)
+    return { name, type, dimensions: named, attributes, offset, record: named[0]?.size === 0 }
   })
-
-  const bytesOf = ({ type, sizes, record }: (typeof declared)[number]): number => {
-    const elements = sizes.slice(record ? 1 : 0).reduce((product, { size }) => product * size, 1)
-    return elements * (type ? typeBytes[type] : 1)
-  }
-  const padded = (bytes: number) => Math.ceil(bytes / 4) * 4
-  const records = declared.filter(({ record }) => record)
-  // The format's one exception: a single record variable is not padded.
-  const recordBytes =
-    records.length === 1 ? bytesOf(records[0]!) : records.reduce((sum, item) => sum + padded(bytesOf(item)), 0)
-  const firstRecord = Math.min(...records.map(({ variable }) => variable.offset))
-  const recordCount =
-    header.recordDimension.length === streaming
-      ? Math.max(0, Math.floor((fileSize - firstRecord) / Math.max(1, recordBytes)))
-      : header.recordDimension.length
-
-  for (const item of declared) {
-    const bytes = bytesOf(item)
-    const steps = item.record ? recordCount : 1
-    const end = steps === 0 ? 0 : item.variable.offset + (steps - 1) * recordBytes + bytes
-    if (!Number.isSafeInteger(end)) throw damaged(`${item.variable.name} declares an impossible size`)
-    if (end > fileSize) {
-      throw new LayerRefused(
-        'truncated',
-        `This file is not whole: ${item.variable.name} should reach to byte ${end}, but the file has ${fileSize}.`,
-        { variable: item.variable.name, neededBytes: end, fileSize },
-      )
-    }
-  }
-
-  return {
-    recordBytes,
-    attributes: attributesOf(header.globalAttributes ?? []),
-    variables: declared.map(({ variable, type, sizes, record }) => ({
-      name: utf8(variable.name),
-      type,
-      dimensions: sizes.map(({ name, size }, index) => ({
-        name: utf8(name),
-        size: record && index === 0 ? recordCount : size,
-      })),
-      attributes: attributesOf(variable.attributes),
-      offset: variable.offset,
-      record,
-    })),
-  }
+  const records = variables.filter(({ record }) => record)
+  // The format's one exception: the records of a single record variable are not padded.
+  const padded = records.length > 1
+  const recordBytes = records.reduce((sum, variable) => {
+    const bytes = bytesOf(variable)
+    return sum + bytes + (padded ? padding(bytes) : 0)
+  }, 0)
+  const count = header.records ?? countRecords(records, recordBytes, padded, fileSize)
+  for (const variable of records) variable.dimensions[0]!.size = count
+  for (const variable of variables) checkInside(variable, variable.record ? count : 1, recordBytes, fileSize)
+  return { variables, attributes: header.attributes, recordBytes }
 }
 
-function parse(descriptor: number, fileSize: number): NetCDFReader {
+/** Bytes of a whole variable, or of one record of it. */
+function bytesOf({ type, dimensions, record }: ClassicVariable): number {
+  const elements = dimensions.slice(record ? 1 : 0).reduce((product, { size }) => product * size, 1)
+  return elements * (type ? typeBytes[type] : 1)
+}
+
+/** A streamed file: as many records as arrived whole. The padding behind the very last number may be missing. */
+function countRecords(records: ClassicVariable[], recordBytes: number, padded: boolean, fileSize: number): number {
+  if (records.length === 0 || recordBytes === 0) return 0
+  const first = Math.min(...records.map(({ offset }) => offset))
+  const last = records.reduce((a, b) => (b.offset > a.offset ? b : a))
+  return Math.max(0, Math.floor((fileSize - first + (padded ? padding(bytesOf(last)) : 0)) / recordBytes))
+}
+
+function checkInside(variable: ClassicVariable, steps: number, recordBytes: number, fileSize: number): void {
+  const end = steps === 0 ? 0 : variable.offset + (steps - 1) * recordBytes + bytesOf(variable)
+  if (!Number.isSafeInteger(end)) throw damaged(`${variable.name} declares an impossible size`)
+  if (end <= fileSize) return
+  throw new LayerRefused(
+    'truncated',
+    `This file is not whole: ${variable.name} should reach to byte ${end}, but the file has ${fileSize}.`,
+    { variable: variable.name, neededBytes: end, fileSize },
+  )
+}
+
+function parse(descriptor: number, fileSize: number): ParsedHeader {
   for (let length = firstRead; ; length *= 4) {
     const size = Math.min(length, fileSize, longestHeader)
     const bytes = readExactly(descriptor, 0, size)
     try {
-      return new NetCDFReader(bytes.subarray(0, classicHeaderLength(bytes)))
+      return parseClassicHeader(bytes, bytes[3] as ClassicVersion)
     } catch (error) {
-      if (!(error instanceof HeaderGoesOn)) throw refused(error)
+      if (!(error instanceof HeaderGoesOn)) throw damaged(error instanceof Error ? error.message : String(error), error)
       if (size === fileSize) {
         throw new LayerRefused(
           'truncated',
@@ -110,41 +98,6 @@ function parse(descriptor: number, fileSize: number): NetCDFReader {
   }
 }
 
-function refused(error: unknown): LayerRefused {
-  const reason = error instanceof Error ? error.message : String(error)
-  if (!/4GB/.test(reason)) return damaged(reason, error)
-  return new LayerRefused(
-    'unsupported-encoding',
-    'Parts of this classic NetCDF file lie beyond 4 GB, which Offing cannot read yet; save it as NetCDF-4.',
-    {},
-    { cause: error },
-  )
-}
-
 function damaged(reason: string, cause?: unknown): LayerRefused {
   return new LayerRefused('damaged', `The header of this NetCDF file is damaged: ${reason}.`, { reason }, { cause })
-}
-
-function attributesOf(list: readonly { name: string; type: string; value: unknown }[]): RawAttributes {
-  const attributes = new Map<string, RawAttribute>()
-  for (const { name, type, value } of list) {
-    if (typeof value === 'string') attributes.set(utf8(name), { type: 'text', value: utf8(value).replace(/\0+$/, '') })
-    else {
-      const numbers = (Array.isArray(value) ? value : [value]).map(Number)
-      // The parser answers bytes as unsigned; in the file they are signed.
-      const signed = type === 'byte' ? numbers.map((byte) => (byte > 127 ? byte - 256 : byte)) : numbers
-      if (signed.length === 0) continue
-      attributes.set(utf8(name), {
-        type: numberTypes[type] ?? 'f8',
-        value: signed.length === 1 ? signed[0]! : signed,
-      })
-    }
-  }
-  return attributes
-}
-
-/** The parser reads text byte by byte; names and attributes are UTF-8. Text that is not stays as it was. */
-function utf8(text: string): string {
-  const decoded = Buffer.from(text, 'latin1').toString('utf8')
-  return decoded.includes('\ufffd') ? text : decoded
 }

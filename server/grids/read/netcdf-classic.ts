@@ -7,7 +7,7 @@ const readAhead = 128 * 1024
 const farApart = 8 * 1024
 const longestRead = 1024 * 1024
 
-/** A classic NetCDF file (CDF-1, CDF-2): header by netcdfjs, blocks read from the file by ourselves. */
+/** A classic NetCDF file (CDF-1, CDF-2, CDF-5): blocks are read from where the header says they are. */
 export function openClassic(path: string, fileSize: number): RawNetcdf {
   const descriptor = openSync(path, 'r')
   try {
@@ -98,6 +98,11 @@ function decode(bytes: Buffer, at: number, type: NumberType, out: Float64Array, 
   if (type === 'f4') for (let i = 0; i < count; i++) out[to + i] = view.getFloat32(i * 4)
   else if (type === 'f8') for (let i = 0; i < count; i++) out[to + i] = view.getFloat64(i * 8)
   else if (type === 'i2') for (let i = 0; i < count; i++) out[to + i] = view.getInt16(i * 2)
+  else if (type === 'u2') for (let i = 0; i < count; i++) out[to + i] = view.getUint16(i * 2)
   else if (type === 'i4') for (let i = 0; i < count; i++) out[to + i] = view.getInt32(i * 4)
+  else if (type === 'u4') for (let i = 0; i < count; i++) out[to + i] = view.getUint32(i * 4)
+  else if (type === 'i8') for (let i = 0; i < count; i++) out[to + i] = Number(view.getBigInt64(i * 8))
+  else if (type === 'u8') for (let i = 0; i < count; i++) out[to + i] = Number(view.getBigUint64(i * 8))
+  else if (type === 'u1') for (let i = 0; i < count; i++) out[to + i] = view.getUint8(i)
   else for (let i = 0; i < count; i++) out[to + i] = view.getInt8(i)
 }

@@ -23,25 +23,14 @@ export function recognise(path: string, fileName: string): Signature {
     if (start !== null) return { format: 'netcdf4', fileSize, start }
     if (head.subarray(0, 3).toString('latin1') === 'CDF') {
       const version = head[3]
-      if (version === 1 || version === 2) return { format: 'netcdf-classic', fileSize, start: 0 }
+      if (version === 1 || version === 2 || version === 5) return { format: 'netcdf-classic', fileSize, start: 0 }
       throw new LayerRefused(
         'unsupported-encoding',
-        version === 5
-          ? 'This is a CDF-5 file (64-bit data), which Offing cannot read yet; save it as NetCDF-4 and send it again.'
-          : 'This file begins like a classic NetCDF file, but its version is unknown.',
+        'This file begins like a classic NetCDF file, but its version is unknown.',
         { fileName, version },
       )
     }
-    const tiff = tiffOrder(head)
-    if (tiff === 'little') return { format: 'geotiff', fileSize, start: 0 }
-    if (tiff === 'big') {
-      throw new LayerRefused(
-        'unsupported-encoding',
-        'This TIFF file is in big-endian byte order, which Offing cannot read yet; ' +
-          'save it in little-endian order and send it again.',
-        { fileName },
-      )
-    }
+    if (isTiff(head)) return { format: 'geotiff', fileSize, start: 0 }
     throw new LayerRefused(
       'unknown-format',
       `This is not a NetCDF or GeoTIFF file: it ${beginsWith(head)}.`,
@@ -61,12 +50,12 @@ function findHdf5(descriptor: number, fileSize: number): number | null {
   return null
 }
 
-function tiffOrder(head: Buffer): 'little' | 'big' | null {
-  if (head.length < 4) return null
+/** TIFF and BigTIFF, in either byte order. */
+function isTiff(head: Buffer): boolean {
+  if (head.length < 4) return false
   const order = head.subarray(0, 2).toString('latin1')
-  if (order === 'II' && [42, 43].includes(head.readUInt16LE(2))) return 'little'
-  if (order === 'MM' && [42, 43].includes(head.readUInt16BE(2))) return 'big'
-  return null
+  if (order === 'II') return [42, 43].includes(head.readUInt16LE(2))
+  return order === 'MM' && [42, 43].includes(head.readUInt16BE(2))
 }
 
 function beginsWith(head: Buffer): string {

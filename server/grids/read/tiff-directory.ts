@@ -1,4 +1,3 @@
-import { closeSync, openSync } from 'node:fs'
 import { LayerRefused } from '../layer-refused'
 import { readExactly } from './bytes'
 
@@ -9,7 +8,7 @@ export const tags = {
   subfileType: 254, width: 256, height: 257, bits: 258, compression: 259, photometric: 262, stripOffsets: 273,
   samples: 277, rowsPerStrip: 278, stripBytes: 279, planar: 284, tileWidth: 322, tileHeight: 323, tileOffsets: 324,
   tileBytes: 325, extraSamples: 338, sampleFormat: 339, pixelScale: 33550, tiepoint: 33922, transformation: 34264,
-  geoKeys: 34735, noData: 42113,
+  geoKeys: 34735, geoDoubles: 34736, geoText: 34737, metadata: 42112, noData: 42113, fillOrder: 266, predictor: 317,
 } as const
 
 const typeWidths: Record<number, number> = {
@@ -18,39 +17,53 @@ const typeWidths: Record<number, number> = {
 const maxDirectories = 256
 const maxTagBytes = 64 * 1024 * 1024
 
+export interface TiffLayout {
+  littleEndian: boolean
+  directories: TiffDirectory[]
+}
+
 /**
- * Reads the directories of a little-endian TIFF or BigTIFF and checks that every block they point to lies inside the
- * file. The decoder behind it would wait for ever on some cut files and answer zeros for others.
+ * Reads the directories of a TIFF or BigTIFF in either byte order and checks that every block they point to lies
+ * inside the file: a cut file must not be read as if its missing part were empty.
  */
-export function readTiffDirectories(path: string, fileSize: number): TiffDirectory[] {
-  const descriptor = openSync(path, 'r')
-  try {
-    const head = readExactly(descriptor, 0, Math.min(16, fileSize))
-    if (head.length < 8) throw new LayerRefused('truncated', 'This TIFF file ends inside its header.', { fileSize })
-    const big = head.readUInt16LE(2) === 43
-    if (big && head.length < 16) {
-      throw new LayerRefused('truncated', 'This TIFF file ends inside its header.', { fileSize })
-    }
-    let next = big ? Number(head.readBigUInt64LE(8)) : head.readUInt32LE(4)
-    const directories: TiffDirectory[] = []
-    const seen = new Set<number>()
-    while (next !== 0) {
-      if (seen.has(next)) throw damaged('its directories form a circle')
-      if (directories.length >= maxDirectories) throw damaged(`it has more than ${maxDirectories} directories`)
-      seen.add(next)
-      const read = readDirectory(descriptor, next, fileSize, big)
-      directories.push(read.directory)
-      next = read.next
-    }
-    if (directories.length === 0) throw damaged('it holds no image')
-    for (const directory of directories) checkBlocks(directory, fileSize)
-    return directories
-  } finally {
-    closeSync(descriptor)
+export function readTiffDirectories(descriptor: number, fileSize: number): TiffLayout {
+  const head = readExactly(descriptor, 0, Math.min(16, fileSize))
+  const endless = () => new LayerRefused('truncated', 'This TIFF file ends inside its header.', { fileSize })
+  if (head.length < 8) throw endless()
+  const numbers = numbersInOrder(head[0] === 0x49)
+  const big = numbers.u2(head, 2) === 43
+  if (big && head.length < 16) throw endless()
+  let next = big ? numbers.u8(head, 8) : numbers.u4(head, 4)
+  const directories: TiffDirectory[] = []
+  const seen = new Set<number>()
+  while (next !== 0) {
+    if (seen.has(next)) throw damaged('its directories form a circle')
+    if (directories.length >= maxDirectories) throw damaged(`it has more than ${maxDirectories} directories`)
+    seen.add(next)
+    const read = readDirectory(descriptor, next, fileSize, big, numbers)
+    directories.push(read.directory)
+    next = read.next
+  }
+  if (directories.length === 0) throw damaged('it holds no image')
+  for (const directory of directories) checkBlocks(directory, fileSize)
+  return { littleEndian: numbers.littleEndian, directories }
+}
+
+type Numbers = ReturnType<typeof numbersInOrder>
+
+function numbersInOrder(littleEndian: boolean) {
+  const view = (bytes: Buffer) => new DataView(bytes.buffer, bytes.byteOffset, bytes.length)
+  return {
+    littleEndian,
+    u2: (bytes: Buffer, at: number) => view(bytes).getUint16(at, littleEndian),
+    u4: (bytes: Buffer, at: number) => view(bytes).getUint32(at, littleEndian),
+    u8: (bytes: Buffer, at: number) => Number(view(bytes).getBigUint64(at, littleEndian)),
+    view,
   }
 }
 
-function readDirectory(descriptor: number, at: number, fileSize: number, big: boolean) {
+function readDirectory(descriptor: number, at: number, fileSize: number, big: boolean, numbers: Numbers) {
+  const { u2, u4, u8 } = numbers
   const countBytes = big ? 8 : 2
   const entryBytes = big ? 20 : 12
   const inlineBytes = big ? 8 : 4
@@ -59,41 +72,42 @@ function readDirectory(descriptor: number, at: number, fileSize: number, big: bo
     return readExactly(descriptor, offset, length)
   }
   const head = inside(at, countBytes, 'its directory')
-  const count = big ? Number(head.readBigUInt64LE(0)) : head.readUInt16LE(0)
+  const count = big ? u8(head, 0) : u2(head, 0)
   if (count > 4096) throw damaged(`a directory declares ${count} tags`)
   const table = inside(at + countBytes, count * entryBytes + inlineBytes, 'its directory')
   const directory = new Map<number, number[] | string>()
   for (let i = 0; i < count; i++) {
     const entry = table.subarray(i * entryBytes, (i + 1) * entryBytes)
-    const [id, type] = [entry.readUInt16LE(0), entry.readUInt16LE(2)]
-    const length = big ? Number(entry.readBigUInt64LE(4)) : entry.readUInt32LE(4)
+    const [id, type] = [u2(entry, 0), u2(entry, 2)]
+    const length = big ? u8(entry, 4) : u4(entry, 4)
     const width = typeWidths[type]
     if (width === undefined) continue
     const bytes = length * width
     if (bytes > maxTagBytes) throw damaged(`tag ${id} declares ${bytes} bytes`)
     const where = entry.subarray(big ? 12 : 8)
-    const offset = big ? Number(where.readBigUInt64LE(0)) : where.readUInt32LE(0)
+    const offset = big ? u8(where, 0) : u4(where, 0)
     const content = bytes <= inlineBytes ? where.subarray(0, bytes) : inside(offset, bytes, `tag ${id}`)
-    directory.set(id, decodeTag(content, type, length))
+    directory.set(id, decodeTag(content, type, length, numbers))
   }
   const tail = table.subarray(count * entryBytes)
-  return { directory, next: big ? Number(tail.readBigUInt64LE(0)) : tail.readUInt32LE(0) }
+  return { directory, next: big ? u8(tail, 0) : u4(tail, 0) }
 }
 
-function decodeTag(bytes: Buffer, type: number, length: number): number[] | string {
+function decodeTag(bytes: Buffer, type: number, length: number, { view, littleEndian }: Numbers): number[] | string {
   if (type === 2) return bytes.toString('utf8').replace(/\0[\s\S]*$/, '')
+  const data = view(bytes)
   const read: Record<number, (i: number) => number> = {
-    3: (i) => bytes.readUInt16LE(i * 2),
-    4: (i) => bytes.readUInt32LE(i * 4),
-    6: (i) => bytes.readInt8(i),
-    8: (i) => bytes.readInt16LE(i * 2),
-    9: (i) => bytes.readInt32LE(i * 4),
-    11: (i) => bytes.readFloatLE(i * 4),
-    12: (i) => bytes.readDoubleLE(i * 8),
-    13: (i) => bytes.readUInt32LE(i * 4),
-    16: (i) => Number(bytes.readBigUInt64LE(i * 8)),
-    17: (i) => Number(bytes.readBigInt64LE(i * 8)),
-    18: (i) => Number(bytes.readBigUInt64LE(i * 8)),
+    3: (i) => data.getUint16(i * 2, littleEndian),
+    4: (i) => data.getUint32(i * 4, littleEndian),
+    6: (i) => data.getInt8(i),
+    8: (i) => data.getInt16(i * 2, littleEndian),
+    9: (i) => data.getInt32(i * 4, littleEndian),
+    11: (i) => data.getFloat32(i * 4, littleEndian),
+    12: (i) => data.getFloat64(i * 8, littleEndian),
+    13: (i) => data.getUint32(i * 4, littleEndian),
+    16: (i) => Number(data.getBigUint64(i * 8, littleEndian)),
+    17: (i) => Number(data.getBigInt64(i * 8, littleEndian)),
+    18: (i) => Number(data.getBigUint64(i * 8, littleEndian)),
   }
   const decode = read[type] ?? ((i: number) => bytes[i]!)
   return Array.from({ length }, (_, i) => decode(i))

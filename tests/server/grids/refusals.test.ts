@@ -85,8 +85,7 @@ describe('a file that is no grid', () => {
   })
 
   it.each([
-    [Buffer.from('CDF\x05\0\0\0\0', 'latin1'), 'CDF-5'],
-    [Buffer.from('MM\0*\0\0\0\x08', 'latin1'), 'big-endian'],
+    [Buffer.from('CDF\x06\0\0\0\0', 'latin1'), 'version is unknown'],
   ])('is refused clearly in an encoding that is not read: %s', async (content, what) => {
     const refused = await refusalOf(content)
     expect(refused.code).toBe('unsupported-encoding')
