@@ -85,11 +85,13 @@ function union(a: GridWindow | null, b: GridWindow): GridWindow {
 }
 
 function pick({ window, values }: Reading, weights: RegionCellWeights): Float64Array {
-  return Float64Array.from(weights.index, (cell) => {
-    const row = Math.floor(cell / weights.columns) - window.row
-    const column = (cell % weights.columns) - window.column
-    return values[row * window.columns + column]!
-  })
+  const { index, columns } = weights
+  const picked = new Float64Array(index.length)
+  for (let i = 0; i < index.length; i++) {
+    const row = Math.floor(index[i]! / columns)
+    picked[i] = values[(row - window.row) * window.columns + (index[i]! - row * columns) - window.column]!
+  }
+  return picked
 }
 
 /** The feed's own valid range, in the unit of the feed. */
