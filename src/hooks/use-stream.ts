@@ -5,6 +5,7 @@ import { queriesOfTopic, readChange, topics, type Topic } from '../api/stream'
 
 const pollMs = 30_000
 const gatherMs = 150
+const leavingMs = 1_000
 
 /**
  * Keeps what is on screen as new as the server's: listens to the event stream and makes the queries of a changed topic
@@ -16,6 +17,7 @@ export function useStream(): void {
     let source: EventSource | undefined
     let poll: ReturnType<typeof setInterval> | undefined
     let flush: ReturnType<typeof setTimeout> | undefined
+    let renewal: ReturnType<typeof setTimeout> | undefined
     const waiting = new Set<Topic>()
 
     const refreshWaiting = () => {
@@ -27,6 +29,10 @@ export function useStream(): void {
     const changed = (changes: readonly Topic[]) => {
       changes.forEach((topic) => waiting.add(topic))
       flush ??= setTimeout(refreshWaiting, gatherMs)
+    }
+    const renew = () => {
+      renewal = undefined
+      void renewSession()
     }
     const open = () => {
       source?.close()
@@ -46,8 +52,9 @@ export function useStream(): void {
           changed(topics)
           if (source?.readyState === EventSource.CLOSED) open()
         }, pollMs)
-        // Closed for good means refused: the session has run out. Renewing it reopens the stream.
-        if (source?.readyState === EventSource.CLOSED) void renewSession()
+        // Closed for good means refused: the session has run out. Renewing it reopens the stream. A page that is being
+        // left closes its stream too; it must not ask for a renewal whose answer nobody will be there to receive.
+        if (source?.readyState === EventSource.CLOSED) renewal ??= setTimeout(renew, leavingMs)
       })
     }
 
@@ -58,6 +65,7 @@ export function useStream(): void {
       source?.close()
       clearInterval(poll)
       clearTimeout(flush)
+      clearTimeout(renewal)
     }
   }, [client])
 }

@@ -42,6 +42,7 @@ export default function DrawMap(props: Props) {
           <OutlinePen
             geometry={geometry}
             drawing={drawing}
+            editable={!props.siting}
             onCorners={props.onCorners}
             onChange={props.onGeometry}
             onDrawn={(made) => {

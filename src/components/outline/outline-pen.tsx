@@ -1,16 +1,18 @@
 import { useEffect, useEffectEvent } from 'react'
 import { useMap } from 'react-leaflet'
 import type { RegionGeometry } from '../../../shared/schemas/regions'
-import { type Pen, showEditable, startDrawing } from './pen'
+import { type Pen, showOutline, startDrawing } from './pen'
 
 interface Props extends Pen {
   geometry: RegionGeometry | null
   drawing: boolean
+  /** Whether the outline that is there can be moved by its corners. */
+  editable: boolean
   onChange: (geometry: RegionGeometry) => void
 }
 
 /** Draws a new outline, or shows the one there is with corners to move. */
-export function OutlinePen({ geometry, drawing, onChange, onDrawn, onCorners }: Props) {
+export function OutlinePen({ geometry, drawing, editable, onChange, onDrawn, onCorners }: Props) {
   const map = useMap()
   const drawn = useEffectEvent(onDrawn)
   const corners = useEffectEvent(onCorners)
@@ -23,8 +25,8 @@ export function OutlinePen({ geometry, drawing, onChange, onDrawn, onCorners }: 
 
   useEffect(() => {
     if (drawing || !geometry) return
-    return showEditable(map, geometry, (made) => changed(made))
-  }, [map, drawing, geometry])
+    return showOutline(map, geometry, editable ? (made) => changed(made) : undefined)
+  }, [map, drawing, editable, geometry])
 
   return null
 }

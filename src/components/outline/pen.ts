@@ -60,14 +60,14 @@ export function takeBackLastCorner(map: L.Map): void {
   polygonTool(map)._removeLastVertex()
 }
 
-/** The outline with corners to drag; the small marks between them make new ones. Returns how to take it away. */
-export function showEditable(map: L.Map, geometry: RegionGeometry, onChange: (geometry: RegionGeometry) => void): () => void {
+/** The outline; given `onChange`, with corners to drag and small marks between them for new ones. Returns how to take it away. */
+export function showOutline(map: L.Map, geometry: RegionGeometry, onChange?: (geometry: RegionGeometry) => void): () => void {
   const casing = L.polygon(latLngRings(geometry), { pane: outlinePane, className: 'region-casing', interactive: false, fill: false, pmIgnore: true })
   const line = L.polygon(latLngRings(geometry), { pane: outlinePane, className: 'pen-line', fill: false })
   casing.addTo(map)
   line.addTo(map)
-  line.pm.enable({ snappable: false, allowSelfIntersection: true, draggable: false, removeLayerBelowMinVertexCount: false })
-  line.on('pm:edit', () => onChange(geometryOf(line)))
+  if (onChange) line.pm.enable({ snappable: false, allowSelfIntersection: true, draggable: false, removeLayerBelowMinVertexCount: false })
+  line.on('pm:edit', () => onChange?.(geometryOf(line)))
   return () => {
     line.pm.disable()
     line.remove()

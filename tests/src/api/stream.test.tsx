@@ -1,4 +1,4 @@
-import { act } from '@testing-library/react'
+import { act, cleanup } from '@testing-library/react'
 import { beforeEach, expect, test, vi } from 'vitest'
 import { useStream } from '../../../src/hooks/use-stream'
 import { show } from '../support/show'
@@ -66,9 +66,20 @@ test('a stream refused for an ended session opens again when the session is rene
   vi.stubGlobal('fetch', () => Promise.resolve(Response.json({ user: {}, expiresAt: '2026-06-11T04:00:00Z' })))
   listen()
   latest()?.fail()
-  await act(() => vi.advanceTimersByTimeAsync(10))
+  await act(() => vi.advanceTimersByTimeAsync(1_010))
   expect(FakeSource.all).toHaveLength(2)
   expect(latest()?.readyState).toBe(1)
+})
+
+test('a page that is being left asks for no renewal: its answer would be lost, and the next page seem a thief', async () => {
+  const fetched = vi.fn(() => Promise.resolve(Response.json({ user: {}, expiresAt: '2026-06-11T04:00:00Z' })))
+  vi.stubGlobal('fetch', fetched)
+  listen()
+  latest()?.fail()
+  await act(() => vi.advanceTimersByTimeAsync(200))
+  cleanup()
+  await vi.advanceTimersByTimeAsync(5_000)
+  expect(fetched).not.toHaveBeenCalled()
 })
 
 test('while the stream is down everything is asked again each half minute', async () => {
