@@ -1,3 +1,4 @@
+import fs from 'node:fs'
 import type * as hdf5 from 'h5wasm/node'
 
 type Library = typeof hdf5
@@ -29,5 +30,23 @@ export function guarded<T>(work: () => T): T {
     return work()
   } finally {
     loaded.Module.deactivate_throwing_error_handler()
+  }
+}
+
+/**
+ * Runs an opening without the pages the library writes to the error output when it fails: the caller says it in a
+ * sentence. The library writes through Node's file functions, which are put back before anything else runs.
+ */
+export function quietly<T>(work: () => T): T {
+  const { writeSync } = fs
+  const silent = (descriptor: number, data: string | NodeJS.ArrayBufferView, ...rest: unknown[]): number =>
+    descriptor === 2
+      ? typeof data === 'string' ? data.length : typeof rest[1] === 'number' ? rest[1] : data.byteLength
+      : (writeSync as (...all: unknown[]) => number)(descriptor, data, ...rest)
+  fs.writeSync = silent as typeof fs.writeSync
+  try {
+    return work()
+  } finally {
+    fs.writeSync = writeSync
   }
 }

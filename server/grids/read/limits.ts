@@ -7,6 +7,8 @@ export const maxSteps = 100_000
 export const maxAxisLength = 1_000_000
 export const maxVariables = 2_000
 export const maxBands = 512
+/** What a whole-file gzip may expand to. */
+export const maxExpandedBytes = 4 * 1024 ** 3 - 1
 export const maxChunkBytes = 256 * 1024 * 1024
 
 export function checkDeclaredGrid(name: string, rows: number, columns: number, steps: number): void {

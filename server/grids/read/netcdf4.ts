@@ -1,13 +1,16 @@
 import type { Dataset, File, Group } from 'h5wasm'
-import { guarded, hdf5Library } from '../hdf5-library'
+import { guarded, hdf5Library, quietly } from '../hdf5-library'
 import { LayerRefused } from '../layer-refused'
 import { checkHdf5Size } from './hdf5-superblock'
 import { maxChunkBytes, maxVariables } from './limits'
 import { numberType, readAttributes } from './netcdf4-attributes'
 import type { RawNetcdf, RawVariable } from './raw-netcdf'
+import { StepCache } from './step-cache'
 
 const deepestGroup = 8
 const blockCells = 4 * 1024 * 1024
+/** Numbers kept of chunks that hold many steps: 64 MB. */
+const mostKeptCells = 8 * 1024 * 1024
 /** Filters the library and its plugins can undo: deflate, shuffle, fletcher32, szip, nbit, scale-offset, then plugins. */
 const knownFilters = new Set([1, 2, 3, 4, 5, 6, 307, 32000, 32001, 32004, 32008, 32013, 32015, 32022, 32023, 32026])
 
@@ -15,7 +18,7 @@ const knownFilters = new Set([1, 2, 3, 4, 5, 6, 307, 32000, 32001, 32004, 32008,
 export async function openNetcdf4(path: string, start: number, fileSize: number): Promise<RawNetcdf> {
   checkHdf5Size(path, start, fileSize)
   const library = await hdf5Library()
-  const file = new library.File(path, 'r')
+  const file = quietly(() => new library.File(path, 'r'))
   if (file.file_id < 0n) {
     throw new LayerRefused('damaged', 'This file begins like NetCDF-4 (HDF5), but its structure cannot be read.', {})
   }
@@ -28,12 +31,13 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
     const variables = [...datasets].flatMap(([name, dataset]) =>
       reading(name, () => describe(name, dataset)) ?? [],
     )
+    const kept = new StepCache(mostKeptCells)
     return {
       format: 'netcdf4',
       variables,
       attributes,
       warnings: [],
-      read: (variable, from, count) => readBlocks(variable, datasets.get(variable.name)!, from, count),
+      read: (variable, from, count) => readBlock(variable, datasets.get(variable.name)!, kept, from, count),
       close: () => void file.close(),
     }
   } catch (error) {
@@ -76,15 +80,49 @@ function describe(name: string, dataset: Dataset): RawVariable | null {
   return { name, type: numberType(metadata), dimensions, attributes: readAttributes(dataset) }
 }
 
-function readBlocks(variable: RawVariable, dataset: Dataset, start: number[], count: number[]): Float64Array {
+/** Reads a block; where a chunk holds many steps, all of them are unpacked at once and kept for the next step. */
+function readBlock(
+  variable: RawVariable,
+  dataset: Dataset,
+  kept: StepCache,
+  start: number[],
+  count: number[],
+): Float64Array {
   checkEncoding(variable, dataset)
   const total = count.reduce((product, n) => product * n, 1)
+  if (total === 0) return new Float64Array(0)
+  if (count.length === 0) return Float64Array.of(Number(reading(variable.name, () => dataset.value)))
+  const wider = stepsTogether(dataset, start, count, total)
+  if (!wider) return readBlocks(variable, dataset, start, count, total)
+  const key = `${variable.name}\0${wider.start.join()}\0${wider.count.join()}`
+  const { axis } = wider
+  const steps = wider.count[axis]!
+  const all = kept.get(key) ?? readBlocks(variable, dataset, wider.start, wider.count, total * steps)
+  kept.set(key, all)
+  // The steps' numbers stand `inner` at a time, one step after the other, once for each index of the axes before.
+  const inner = count.slice(axis + 1).reduce((product, n) => product * n, 1)
+  const step = start[axis]! - wider.start[axis]!
   const values = new Float64Array(total)
-  if (total === 0) return values
-  if (count.length === 0) {
-    values[0] = Number(reading(variable.name, () => dataset.value))
-    return values
+  for (let outer = 0; outer < total / inner; outer++) {
+    const from = (outer * steps + step) * inner
+    values.set(all.subarray(from, from + inner), outer * inner)
   }
+  return values
+}
+
+/** The block that covers whole chunks along the axis of which one index is wanted; null where that gains nothing. */
+function stepsTogether(dataset: Dataset, start: number[], count: number[], total: number) {
+  const { chunks, shape } = dataset.metadata
+  const axis = count.findIndex((n, d) => n === 1 && (chunks?.[d] ?? 1) > 1 && (shape?.[d] ?? 1) > 1)
+  if (!chunks || !shape || axis < 0) return null
+  const from = start[axis]! - (start[axis]! % chunks[axis]!)
+  const steps = Math.min(chunks[axis]!, shape[axis]! - from)
+  if (total * steps > mostKeptCells) return null
+  return { axis, start: start.with(axis, from), count: count.with(axis, steps) }
+}
+
+function readBlocks(variable: RawVariable, dataset: Dataset, start: number[], count: number[], total: number): Float64Array {
+  const values = new Float64Array(total)
   // Blocks run along the first dimension with more than one index, in whole chunks, so no chunk is unpacked twice.
   const along = Math.max(0, count.findIndex((n) => n > 1))
   const perIndex = total / count[along]!

@@ -1,5 +1,8 @@
+import { rmSync } from 'node:fs'
 import type { GridSource } from '../grid-source'
+import { LayerRefused } from '../layer-refused'
 import { cfSource } from './cf-source'
+import { gunzipBeside, isGzip } from './gunzip'
 import type { RawNetcdf } from './raw-netcdf'
 import { recognise } from './signature'
 
@@ -8,6 +11,20 @@ import { recognise } from './signature'
  * closes the source.
  */
 export async function openGridSource(path: string, fileName: string): Promise<GridSource> {
+  if (!isGzip(path)) return openExpanded(path, fileName)
+  const expanded = await gunzipBeside(path, fileName)
+  try {
+    if (isGzip(expanded)) {
+      throw new LayerRefused('unsupported-encoding', 'This file was packed by gzip twice; unpack it first.', { fileName })
+    }
+    return await openExpanded(expanded, fileName)
+  } finally {
+    // The source holds the file open: without its name it lasts just as long, and is gone even if the process is killed.
+    rmSync(expanded, { force: true })
+  }
+}
+
+async function openExpanded(path: string, fileName: string): Promise<GridSource> {
   const { format, fileSize, start } = recognise(path, fileName)
   if (format === 'geotiff') return (await import('./geotiff')).openGeotiff(path, fileName, fileSize)
   const file = await openNetcdf(path, fileSize, format === 'netcdf4' ? start : null)

@@ -64,7 +64,6 @@ function beginsWith(head: Buffer): string {
     ['\xff\xd8\xff', 'is a JPEG picture'],
     ['GIF8', 'is a GIF picture'],
     ['PK\x03\x04', 'is a ZIP archive'],
-    ['\x1f\x8b', 'is a gzip archive; unpack it first'],
     ['%PDF', 'is a PDF document'],
     ['GRIB', 'is a GRIB file'],
     ['\x0e\x03\x13\x01', 'is an HDF4 file'],
