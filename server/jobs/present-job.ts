@@ -5,6 +5,7 @@ const kindNames: Record<string, string> = {
   'process-file': 'read a file',
   'judge-region': 'judge a region',
   'backfill-region': 'read the history of a region',
+  'backfill-feed': 'work out the history of a derived feed',
   'reread-views': 'make views anew',
 }
 

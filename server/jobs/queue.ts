@@ -13,7 +13,7 @@ export interface NewJob {
   runAfter?: number
 }
 
-export const jobKinds = ['process-file', 'judge-region', 'backfill-region', 'reread-views'] as const
+export const jobKinds = ['process-file', 'judge-region', 'backfill-region', 'backfill-feed', 'reread-views'] as const
 export type JobKind = (typeof jobKinds)[number]
 
 const leaseMs = 60_000

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto'
 import type { Context } from '../context'
 import type { JobRecord } from '../models/job'
+import { backfillFeed } from '../pipeline/backfill-feed'
 import { backfillRegion } from '../pipeline/backfill-region'
 import { judgeRegionJob } from '../pipeline/judge-region'
 import { processFile } from '../pipeline/process-file'
@@ -10,6 +11,7 @@ import { takeJob, type JobKind } from './queue'
 const handlers: Record<JobKind, (context: Context, job: JobRecord) => Promise<'done' | 'paused'>> = {
   'process-file': processFile,
   'backfill-region': backfillRegion,
+  'backfill-feed': backfillFeed,
   'reread-views': rereadViews,
   'judge-region': judgeRegionJob,
 }

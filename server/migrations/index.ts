@@ -1,8 +1,12 @@
 import { Umzug } from 'umzug'
 import type { Database } from '../db'
 import { sql as firstSchema } from './001-first-schema'
+import { sql as derivedFeeds } from './002-derived-feeds'
 
-const migrations = [{ name: '001-first-schema', sql: firstSchema }]
+const migrations = [
+  { name: '001-first-schema', sql: firstSchema },
+  { name: '002-derived-feeds', sql: derivedFeeds },
+]
 
 /** Brings the database to the newest schema; answers the names of what was applied. */
 export async function migrate(db: Database): Promise<string[]> {

@@ -1,5 +1,6 @@
 import { DataTypes, type Model, type Optional, type Sequelize } from 'sequelize'
 import type { FeedProposal } from '../../shared/schemas/feeds'
+import { jsonColumn } from './json-column'
 
 export interface FeedRow {
   id: number
@@ -17,6 +18,7 @@ export interface FeedRow {
   freshnessLimitHours: number
   silentAfterHours: number
   derivedFrom: number | null
+  derivedSources: number[]
   formula: string | null
   formulaVersion: string | null
   retired: boolean
@@ -24,7 +26,7 @@ export interface FeedRow {
   version: number
 }
 
-export interface FeedRecord extends Model<FeedRow, Optional<FeedRow, 'id' | 'unit' | 'validMin' | 'validMax' | 'fileNamePattern' | 'derivedFrom' | 'formula' | 'formulaVersion' | 'version'>>, FeedRow {}
+export interface FeedRecord extends Model<FeedRow, Optional<FeedRow, 'id' | 'unit' | 'validMin' | 'validMax' | 'fileNamePattern' | 'derivedFrom' | 'derivedSources' | 'formula' | 'formulaVersion' | 'version'>>, FeedRow {}
 
 export function defineFeed(sequelize: Sequelize) {
   return sequelize.define<FeedRecord>(
@@ -45,6 +47,7 @@ export function defineFeed(sequelize: Sequelize) {
       freshnessLimitHours: { type: DataTypes.REAL, allowNull: false },
       silentAfterHours: { type: DataTypes.REAL, allowNull: false },
       derivedFrom: { type: DataTypes.INTEGER, allowNull: true },
+      derivedSources: { ...jsonColumn('derivedSources', false), defaultValue: [] },
       formula: { type: DataTypes.TEXT, allowNull: true },
       formulaVersion: { type: DataTypes.TEXT, allowNull: true },
       retired: { type: DataTypes.BOOLEAN, allowNull: false },

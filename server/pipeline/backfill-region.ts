@@ -1,5 +1,6 @@
 import type { Context } from '../context'
 import type { Transaction } from '../db'
+import { giveWay, moreUrgent } from '../jobs/give-way'
 import { enqueueJob, markProgress } from '../jobs/queue'
 import type { JobRecord } from '../models/job'
 import { ensureFirstRule } from './first-rule'
@@ -68,15 +69,4 @@ async function viewsToRead(context: Context, geometryId: number, box: { west: nu
     keys.set(`${layer.feedId}:${day}`, { geometryId, feedId: layer.feedId, day })
   }
   return [...keys.values()].sort((a, b) => b.day - a.day || a.feedId - b.feedId)
-}
-
-/** New layers go before history: the job steps back and is taken up again where it stopped. */
-async function moreUrgent(context: Context, job: JobRecord): Promise<boolean> {
-  const waiting = await context.db.first(`SELECT 1 AS one FROM jobs WHERE state = 'waiting' AND priority < $priority LIMIT 1`, { priority: job.priority })
-  return waiting !== undefined
-}
-
-async function giveWay(context: Context, job: JobRecord): Promise<'paused'> {
-  await context.db.write((tx) => job.update({ state: 'waiting', leaseOwner: null, leaseUntil: null, attempts: 0 }, { transaction: tx }))
-  return 'paused'
 }

@@ -1,11 +1,13 @@
 import type { z } from 'zod'
-import type { Feed, feedChange, NewFeed } from '../../shared/schemas/feeds'
+import { feedFields, type Feed, type feedChange, type NewFeed } from '../../shared/schemas/feeds'
 import { audit } from '../accounts/audit'
 import type { Person } from '../accounts/person'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import type { Transaction } from '../db'
 import type { FeedRecord } from '../models/feed'
+import { queueFeedBackfill } from './backfill-feed'
+import { derivedFields } from './derived-feed'
 import { queueFile } from './receive-file'
 
 const hourMs = 3_600_000
@@ -45,7 +47,9 @@ export async function presentFeeds(context: Context, feeds: readonly FeedRecord[
 export async function createFeed(context: Context, person: Person, { fileId, ...fields }: NewFeed): Promise<FeedRecord> {
   const feed = await context.db.write(async (tx) => {
     await freeName(context, tx, fields.name)
-    const record = await context.models.feeds.create({ ...fields, retired: false, createdAt: context.clock.now() }, { transaction: tx })
+    const known = fields.derivedFrom === undefined ? feedFields.parse(fields) : await derivedFields(context, tx, { ...fields, derivedFrom: fields.derivedFrom })
+    const record = await context.models.feeds.create({ ...known, retired: false, createdAt: context.clock.now() }, { transaction: tx })
+    if (record.derivedFrom !== null && record.derivedFrom !== undefined) await queueFeedBackfill(context, tx, record)
     if (fileId !== undefined) await requeueNamed(context, tx, fileId)
     for (const file of await context.models.files.findAll({ where: { status: 'waiting' }, transaction: tx })) await queueFile(context, file, tx)
     await audit(context, tx, { userId: person.id, action: 'feed:create', subject: `feed ${record.id}`, details: { name: fields.name, fileId: fileId ?? null } })

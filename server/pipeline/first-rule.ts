@@ -25,7 +25,7 @@ export async function ensureFirstRule(context: Context, tx: Transaction, region:
 async function seenChlorophyllFeed(context: Context, tx: Transaction, region: RegionRow): Promise<number | null> {
   const feed = await context.db.first<{ id: number }>(
     `SELECT f.id FROM feeds f WHERE f.quantity = 'chlorophyll' AND f.retired = 0
-     AND EXISTS (SELECT 1 FROM summaries s WHERE s.geometry_id = $geometryId AND s.feed_id = f.id) ORDER BY f.id LIMIT 1`,
+     AND EXISTS (SELECT 1 FROM summaries s WHERE s.geometry_id = $geometryId AND s.feed_id = f.id) ORDER BY f.derived_from IS NOT NULL, f.id LIMIT 1`,
     { geometryId: region.geometryId },
     tx,
   )

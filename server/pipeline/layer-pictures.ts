@@ -3,9 +3,8 @@ import type { Context } from '../context'
 import { cellFinder } from '../pictures/cell-finder'
 import { projectTo } from '../grids/read/project'
 import { layersById, type PlacedLayer } from '../queries/layers'
-import type { LayerPlace } from '../workers/tasks'
 import { gridOf } from './known-grids'
-import { storedPath } from './stored-files'
+import { placeOf } from './layer-place'
 
 export async function knownLayer(context: Context, id: number): Promise<PlacedLayer> {
   const [layer] = await layersById(context, [id])
@@ -25,9 +24,4 @@ export async function layerCell(context: Context, layer: PlacedLayer, lat: numbe
   const cell = cellFinder(grid, grid.kind === 'transform' ? projectTo(grid.crs) : undefined)(lon, lat)
   if (!cell) return { row: null, column: null, value: null }
   return { ...cell, value: await context.workers.light('readCell', { layer: placeOf(context, layer), ...cell }) }
-}
-
-function placeOf(context: Context, layer: PlacedLayer): LayerPlace {
-  const { fileName, variable, step, processingVersion } = layer
-  return { path: storedPath(context.env, layer.checksum), fileName, variable, step, processingVersion }
 }

@@ -2,6 +2,7 @@ import { audit } from '../accounts/audit'
 import type { Person } from '../accounts/person'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
+import { layersDerivedFrom } from '../queries/derived-layers'
 import { activeGeometries } from '../queries/geometries'
 import { layersById } from '../queries/layers'
 import { queueRereading } from './reread-views'
@@ -15,7 +16,10 @@ export async function markSuspect(context: Context, person: Person, id: number, 
     const mark = suspect ? { suspectAt: context.clock.now(), suspectBy: person.id, suspectNote: note } : { suspectAt: null, suspectBy: null, suspectNote: null }
     await layer.update(mark, { transaction: tx })
     const subject = `layer of ${new Date(layer.observedAt).toISOString().slice(0, 10)}`
-    const views = viewKeysOf(await layersById(context, [id]), await activeGeometries(context), layer.feedId)
+    const geometries = await activeGeometries(context)
+    const touched = [{ id, feedId: layer.feedId }, ...(await layersDerivedFrom(context, tx, [id]))]
+    const placed = await layersById(context, touched.map((one) => one.id))
+    const views = [...new Set(touched.map((one) => one.feedId))].flatMap((feedId) => viewKeysOf(placed.filter((one) => one.feedId === feedId), geometries, feedId))
     await queueRereading(context, tx, { key: `layer ${id}`, subject, views })
     await audit(context, tx, { userId: person.id, action: suspect ? 'layer:suspect' : 'layer:trust', subject: `layer ${id}`, details: { note } })
   })

@@ -5,6 +5,7 @@ import type { JobRecord } from '../models/job'
 import type { Seen } from '../workers/inspect-file'
 import { markProgress } from '../jobs/queue'
 import { addLayers, keepGrids } from './add-layers'
+import { deriveFrom, type DerivedShare } from './derive-from'
 import { ensureFirstRule, regionsWithoutRule } from './first-rule'
 import { matchFeeds, type FeedMatch } from './match-feeds'
 import { proposeFeed } from './propose-feed'
@@ -36,8 +37,11 @@ export async function processFile(context: Context, job: JobRecord): Promise<'do
 }
 
 async function takeIn(context: Context, job: JobRecord, file: FileRecord, seen: Seen, matches: FeedMatch[]): Promise<void> {
+  // Recipes of derived layers name bands by what was understood of the file.
+  await setStatus(context, file, { report: { ...seen.report, feeds: [] } })
   const gridIds = await keepGrids(context, seen.grids)
   const total = matches.reduce((sum, match) => sum + match.steps.length, 0)
+  const taken: number[] = []
   let done = 0
   for (const match of matches) {
     for (let from = 0; from < match.steps.length; from += stepsAtOnce) {
@@ -45,22 +49,27 @@ async function takeIn(context: Context, job: JobRecord, file: FileRecord, seen: 
       const gridId = gridIds[match.variable.grid]!
       const layerIds = await addLayers(context, { file, match, steps, gridId, processingVersion: seen.processingVersion })
       done += steps.length
+      taken.push(...layerIds)
       await summariseLayers(context, match.feed.id, layerIds, (tx) => markProgress(context, tx, job, done, total))
       context.news.tell({ topic: 'files', id: file.id })
     }
   }
-  await finish(context, file, seen, matches)
+  const derived = await deriveFrom(context, { layerIds: taken, feedIds: matches.map((match) => match.feed.id) }, (tx) => markProgress(context, tx, job, done, total))
+  await finish(context, file, seen, matches, derived)
 }
 
-async function finish(context: Context, file: FileRecord, seen: Seen, matches: FeedMatch[]): Promise<void> {
-  const feeds = matches.map(({ feed, variable, steps }) => ({ feedId: feed.id, variable: variable.name, layers: steps.length }))
+async function finish(context: Context, file: FileRecord, seen: Seen, matches: FeedMatch[], derived: readonly DerivedShare[]): Promise<void> {
+  const feeds = [
+    ...matches.map(({ feed, variable, steps }) => ({ feedId: feed.id, variable: variable.name, layers: steps.length })),
+    ...derived.map(({ feed, layers }) => ({ feedId: feed.id, variable: feed.variable, layers })),
+  ]
   await context.db.write(async (tx) => {
     await file.update(
       { status: 'processed', processedAt: context.clock.now(), report: { ...seen.report, feeds }, proposal: null, waitingFor: null, refusal: null },
       { transaction: tx },
     )
     for (const region of await regionsWithoutRule(context, tx)) await ensureFirstRule(context, tx, region)
-    for (const { feed } of matches) await queueJudging(context, tx, { feedId: feed.id })
+    for (const { feed } of [...matches, ...derived]) await queueJudging(context, tx, { feedId: feed.id })
   })
   context.news.tell({ topic: 'files', id: file.id }, { topic: 'feeds' }, { topic: 'regions' })
 }

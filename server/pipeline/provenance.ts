@@ -19,14 +19,15 @@ export async function maskFor(context: Context, feedId: number, gridId: number):
   )
 }
 
-export async function provenanceFor(context: Context, of: { gridId: number; maskId: number; processingVersion: string }): Promise<number> {
+/** A mask belongs to one feed, and a feed to one formula: the formula needs no place in the key. */
+export async function provenanceFor(context: Context, { formula, ...of }: { gridId: number; maskId: number; processingVersion: string; formula: string | null }): Promise<number> {
   const bind = { ...of, softwareVersion }
   return remembered(context, `from ${JSON.stringify(bind)}`, () =>
     context.db.write(async (tx) => {
       await context.db.run(
-        `INSERT INTO provenances (grid_id, mask_id, processing_version, software_version)
-         VALUES ($gridId, $maskId, $processingVersion, $softwareVersion) ON CONFLICT DO NOTHING`,
-        bind,
+        `INSERT INTO provenances (grid_id, mask_id, processing_version, software_version, formula)
+         VALUES ($gridId, $maskId, $processingVersion, $softwareVersion, $formula) ON CONFLICT DO NOTHING`,
+        { ...bind, formula },
         tx,
       )
       const row = await context.db.first<{ id: number }>(

@@ -14,8 +14,9 @@ export async function queueRereading(context: Context, tx: Transaction, { key, s
 /** The views a layer belongs to, or all layers of a file do. */
 export async function viewsHolding(context: Context, tx: Transaction, of: { layerId: number } | { fileId: number }): Promise<ViewKey[]> {
   const [column, id] = 'layerId' in of ? (['l.id', of.layerId] as const) : (['l.file_id', of.fileId] as const)
+  const derived = 'fileId' in of ? 'OR l.id IN (SELECT layer_id FROM layer_sources WHERE file_id = $id)' : ''
   return context.db.all<ViewKey>(
-    `SELECT DISTINCT v.geometry_id AS geometryId, v.feed_id AS feedId, v.day FROM layers l JOIN view_layers v ON v.layer_id = l.id WHERE ${column} = $id`,
+    `SELECT DISTINCT v.geometry_id AS geometryId, v.feed_id AS feedId, v.day FROM layers l JOIN view_layers v ON v.layer_id = l.id WHERE ${column} = $id ${derived}`,
     { id },
     tx,
   )

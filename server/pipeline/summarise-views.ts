@@ -8,8 +8,8 @@ import { writeSummaries, type SummaryRow } from '../queries/summaries'
 import { cellCentre } from '../grids/cell-centre'
 import { cellWeights } from './cell-weights'
 import { gridOf } from './known-grids'
+import { placeOf } from './layer-place'
 import { maskFor, provenanceFor } from './provenance'
-import { storedPath } from './stored-files'
 import { viewDay } from './view-day'
 
 export interface ViewKey {
@@ -97,13 +97,7 @@ async function figuresOf(context: Context, feed: FeedRecord, views: readonly Vie
   const touched = views.map((view) => weights[weightsAt.get(`${view.geometryId}:${view.gridId}`)!]!.index.length > 0)
   const kept = views.filter((_, i) => touched[i])
   const figures = await context.workers.heavy('summariseViews', {
-    layers: layers.map((layer) => ({
-      path: storedPath(context.env, layer.checksum),
-      fileName: layer.fileName,
-      variable: layer.variable,
-      step: layer.step,
-      processingVersion: layer.processingVersion,
-    })),
+    layers: layers.map((layer) => placeOf(context, layer)),
     weights,
     views: tasks.filter((_, i) => touched[i]),
     scale: feed.scale,
@@ -131,10 +125,16 @@ async function rowsOf(context: Context, views: readonly View[], figures: readonl
       layerIds: view.layers.map((layer) => layer.id),
       observedAt: first.observedAt,
       endsAt: view.layers.reduce<number | null>((end, layer) => (layer.endsAt === null ? end : Math.max(end ?? 0, layer.endsAt)), null),
-      provenanceId: await provenanceFor(context, { gridId: view.gridId, maskId, processingVersion }),
+      provenanceId: await provenanceFor(context, { gridId: view.gridId, maskId, processingVersion, formula: recipeText(first.recipe) }),
     })
   }
   return rows
+}
+
+/** Formula, version and bands of a derived layer, as its figures are traced by. */
+function recipeText(recipe: PlacedLayer['recipe']): string | null {
+  if (!recipe) return null
+  return `${recipe.formula}, version ${recipe.formulaVersion}, of ${[...new Set(recipe.bands.map((band) => band.variable))].join(', ')}`
 }
 
 function groupBy<T, K>(items: readonly T[], keyOf: (item: T) => K): Map<K, T[]> {

@@ -26,6 +26,9 @@ interface Row {
   suspectAt: number | null
   suspectBy: string | null
   suspectNote: string | null
+  formula: string | null
+  formulaVersion: string | null
+  bands: string | null
 }
 
 export interface LayersWanted {
@@ -43,7 +46,10 @@ export async function layerRows(context: Context, wanted: LayersWanted, after: n
     `SELECT l.id, l.feed_id AS feedId, l.file_id AS fileId, f.name AS fileName, l.checksum, l.variable, fe.unit, l.observed_at AS observedAt,
        l.ends_at AS endsAt, l.has_clock AS hasClock, l.processing_version AS processingVersion, l.stage, l.received_at AS receivedAt,
        g.kind, g.row_count AS gridRows, g.column_count AS gridColumns, g.west, g.south, g.east, g.north,
-       l.suspect_at AS suspectAt, u.name AS suspectBy, l.suspect_note AS suspectNote
+       l.suspect_at AS suspectAt, u.name AS suspectBy, l.suspect_note AS suspectNote,
+       fe.formula, fe.formula_version AS formulaVersion,
+       (SELECT json_group_array(json_object('wavelengthNm', s.wavelength_nm, 'variable', s.variable, 'fileId', s.file_id))
+         FROM (SELECT * FROM layer_sources WHERE layer_id = l.id ORDER BY slot) s) AS bands
      FROM layers l JOIN files f ON f.id = l.file_id JOIN feeds fe ON fe.id = l.feed_id JOIN grids g ON g.id = l.grid_id
        LEFT JOIN users u ON u.id = l.suspect_by
      WHERE ($id IS NULL OR l.id = $id) AND ($feedId IS NULL OR l.feed_id = $feedId)
@@ -62,7 +68,7 @@ export async function layerRows(context: Context, wanted: LayersWanted, after: n
   return rows.map(present)
 }
 
-function present({ kind, gridRows, gridColumns, west, south, east, north, suspectAt, suspectBy, suspectNote, ...row }: Row): Layer {
+function present({ kind, gridRows, gridColumns, west, south, east, north, suspectAt, suspectBy, suspectNote, formula, formulaVersion, bands, ...row }: Row): Layer {
   const iso = (instant: number) => new Date(instant).toISOString()
   return {
     ...row,
@@ -71,6 +77,7 @@ function present({ kind, gridRows, gridColumns, west, south, east, north, suspec
     hasClock: row.hasClock === 1,
     receivedAt: iso(row.receivedAt),
     grid: { kind, rows: gridRows, columns: gridColumns, west, south, east, north },
+    derived: formula === null ? null : { formula, formulaVersion: formulaVersion ?? '', bands: JSON.parse(bands ?? '[]') as NonNullable<Layer['derived']>['bands'] },
     suspect: suspectAt === null ? null : { at: iso(suspectAt), by: suspectBy ?? '', note: suspectNote ?? '' },
   }
 }

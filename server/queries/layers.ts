@@ -19,21 +19,52 @@ export interface PlacedLayer {
   east: number
   north: number
   columns: number
+  /** Set where the values are worked out: by which formula, of what. */
+  recipe: LayerRecipe | null
 }
+
+export interface LayerRecipe {
+  formula: string
+  formulaVersion: string
+  bands: { checksum: string; fileName: string; variable: string; step: number; wavelengthNm: number }[]
+}
+
+type Row = Omit<PlacedLayer, 'recipe'> & { formula: string | null; formulaVersion: string | null; bands: string | null }
 
 const placed = `SELECT l.id, l.feed_id AS feedId, l.file_id AS fileId, l.grid_id AS gridId, f.name AS fileName, l.checksum, l.variable, l.step,
   l.observed_at AS observedAt, l.ends_at AS endsAt, l.has_clock AS hasClock, l.processing_version AS processingVersion,
-  g.west, g.south, g.east, g.north, g.column_count AS columns
-  FROM layers l JOIN files f ON f.id = l.file_id JOIN grids g ON g.id = l.grid_id`
+  g.west, g.south, g.east, g.north, g.column_count AS columns, fe.formula, fe.formula_version AS formulaVersion,
+  CASE WHEN fe.formula IS NULL THEN NULL ELSE (
+    SELECT json_group_array(json_object('checksum', b.checksum, 'fileName', b.name, 'variable', s.variable, 'step', s.step, 'wavelengthNm', s.wavelength_nm))
+    FROM (SELECT * FROM layer_sources WHERE layer_id = l.id ORDER BY slot) s JOIN files b ON b.id = s.file_id) END AS bands
+  FROM layers l JOIN files f ON f.id = l.file_id JOIN grids g ON g.id = l.grid_id JOIN feeds fe ON fe.id = l.feed_id`
+
+/** A layer is trusted unless somebody marked it suspect, or one that it is worked out from. */
+const isTrusted = `l.suspect_at IS NULL AND NOT EXISTS (
+  SELECT 1 FROM layer_sources s JOIN layers b ON b.file_id = s.file_id AND b.step = s.step AND b.variable = s.variable AND b.suspect_at IS NOT NULL
+  WHERE s.layer_id = l.id)`
+
+function placedLayer({ formula, formulaVersion, bands, ...layer }: Row): PlacedLayer {
+  const recipe = formula === null || bands === null ? null : { formula, formulaVersion: formulaVersion ?? '', bands: JSON.parse(bands) as LayerRecipe['bands'] }
+  return { ...layer, recipe }
+}
 
 export async function layersById(context: Context, ids: readonly number[]): Promise<PlacedLayer[]> {
-  return context.db.all<PlacedLayer>(`${placed} WHERE l.id IN (SELECT value FROM json_each($ids)) ORDER BY l.id`, { ids: JSON.stringify(ids) })
+  const rows = await context.db.all<Row>(`${placed} WHERE l.id IN (SELECT value FROM json_each($ids)) ORDER BY l.id`, { ids: JSON.stringify(ids) })
+  return rows.map(placedLayer)
 }
 
 /** Layers of a feed that people trust, observed between two instants (both included). */
 export async function trustedLayers(context: Context, feedId: number, from: number, to: number): Promise<PlacedLayer[]> {
-  return context.db.all<PlacedLayer>(
-    `${placed} WHERE l.feed_id = $feedId AND l.observed_at BETWEEN $from AND $to AND l.suspect_at IS NULL ORDER BY l.observed_at, l.id`,
+  const rows = await context.db.all<Row>(
+    `${placed} WHERE l.feed_id = $feedId AND l.observed_at BETWEEN $from AND $to AND ${isTrusted} ORDER BY l.observed_at, l.id`,
     { feedId, from, to },
   )
+  return rows.map(placedLayer)
+}
+
+/** Every layer of a feed, the last observed first. */
+export async function layerIdsFromNewest(context: Context, feedId: number): Promise<number[]> {
+  const rows = await context.db.all<{ id: number }>('SELECT id FROM layers WHERE feed_id = $feedId ORDER BY observed_at DESC, id DESC', { feedId })
+  return rows.map((row) => row.id)
 }

@@ -24,7 +24,7 @@ export function layerRoutes(router: Router, context: Context): void {
   serve(router, context, endpoints.layer, ({ params }) => one(params.id))
   serve(router, context, endpoints.layerTile, async ({ params: { id, z, x, y }, query: { theme }, req, res }) => {
     const layer = await knownLayer(context, id)
-    const tag = `"${createHash('sha1').update(`1:${layer.checksum}:${layer.variable}:${layer.step}:${z}/${x}/${y}:${theme}`).digest('base64url')}"`
+    const tag = `"${createHash('sha1').update(`1:${layer.id}:${layer.checksum}:${layer.variable}:${layer.step}:${z}/${x}/${y}:${theme}`).digest('base64url')}"`
     res.set({ ETag: tag, 'Cache-Control': 'private, max-age=86400' })
     if (req.get('If-None-Match') === tag) {
       res.status(304).end()

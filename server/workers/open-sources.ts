@@ -2,7 +2,8 @@ import type { GridSource } from '../grids/grid-source'
 import { openGridSource } from '../grids/read/open'
 
 const kept = new Map<string, Promise<GridSource>>()
-const most = 4
+/** Enough for a formula of several bands, each in a file of its own. */
+const most = 8
 
 /** Opens a stored file, or answers the one this thread has open. Stored files never change: their name is their checksum. */
 export async function sourceOf(path: string, fileName: string): Promise<GridSource> {

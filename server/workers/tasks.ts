@@ -4,13 +4,18 @@ import type { Judgement, JudgeInput } from '../../shared/science/judge'
 import type { DemoFile } from '../seeders/demo/files'
 import type { Seen } from './inspect-file'
 
-/** Where a layer's values are. */
-export interface LayerPlace {
+/** One variable of a stored file, at one step. */
+export interface StoredValues {
   path: string
   fileName: string
   variable: string
   step: number
+}
+
+/** Where a layer's values are; with a recipe they are worked out from its bands instead. */
+export interface LayerPlace extends StoredValues {
   processingVersion: string
+  recipe?: { formula: string; formulaVersion: string; bands: (StoredValues & { wavelengthNm: number })[] }
 }
 
 /** The cells of one region on one grid, as kept by the database. `water` is 1 where the mask says water. */

@@ -27,7 +27,30 @@ export const feedFields = z.object({
   silentAfterHours: z.number().min(1).max(24 * 120).default(72),
 })
 
-export const newFeed = feedFields.extend({ fileId: id.optional() })
+/** What the formula of a derived feed says by itself. */
+const saidByFormula = { quantity: true, variable: true, unit: true, scale: true } as const
+const derivation = z.object({
+  /** The feed of one reflectance band; the other bands come from the same files, or from `derivedSources`. */
+  derivedFrom: id.optional(),
+  derivedSources: z.array(id).max(20).optional(),
+  formula: text(100).optional(),
+  formulaVersion: text(50).optional(),
+})
+
+/** A feed as proposed; or a derived one: `derivedFrom`, `formula` and `formulaVersion`, the rest follows from these. */
+export const newFeed = feedFields
+  .partial(saidByFormula)
+  .extend({ fileId: id.optional(), ...derivation.shape })
+  .superRefine((feed, context) => {
+    const say = (field: string, message: string) => context.addIssue({ code: 'custom', path: [field], message })
+    const derived = feed.derivedFrom !== undefined
+    for (const field of derived ? (['formula', 'formulaVersion'] as const) : (['quantity', 'variable', 'scale', 'unit'] as const)) {
+      if (feed[field] === undefined) say(field, derived ? 'A derived feed needs it.' : 'A feed needs it.')
+    }
+    for (const field of ['formula', 'formulaVersion', 'derivedSources'] as const) {
+      if (!derived && feed[field] !== undefined) say(field, 'Only a derived feed has it: say derivedFrom.')
+    }
+  })
 export type NewFeed = z.infer<typeof newFeed>
 export const feedProposal = feedFields
 export type FeedProposal = z.infer<typeof feedProposal>
@@ -48,6 +71,8 @@ export const feedChange = z.object({
 export const feed = feedFields.extend({
   id,
   derivedFrom: id.nullable(),
+  /** Feeds whose layers a derived feed is made of, `derivedFrom` among them; empty for any other. */
+  derivedSources: z.array(id),
   formula: z.string().nullable(),
   formulaVersion: z.string().nullable(),
   retired: z.boolean(),

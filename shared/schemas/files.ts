@@ -10,6 +10,7 @@ export const reportVariable = z.object({
   name: z.string(),
   longName: z.string().nullable(),
   quantity: z.string(),
+  wavelengthNm: z.number().nullable().optional(),
   unit: z.string().nullable(),
   fileUnit: z.string().nullable(),
   conversion: z.string().nullable(),

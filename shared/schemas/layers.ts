@@ -24,6 +24,10 @@ export const layer = z.object({
     east: z.number(),
     north: z.number(),
   }),
+  /** Set where the values are worked out from other layers whenever they are read. */
+  derived: z
+    .object({ formula: z.string(), formulaVersion: z.string(), bands: z.array(z.object({ wavelengthNm: z.number(), variable: z.string(), fileId: id })) })
+    .nullable(),
   suspect: z.object({ at: instant, by: z.string(), note: z.string() }).nullable(),
 })
 export type Layer = z.infer<typeof layer>

@@ -38,8 +38,7 @@ export interface SeaStep {
 
 /** A chlorophyll file of the sea; its path lies in a folder that `cleanSea` removes. */
 export async function seaFile(steps: readonly SeaStep[], { name = 'sea.nc', processingVersion = 'R1' } = {}): Promise<string> {
-  const folder = await mkdtemp(join(tmpdir(), 'offing-sea-'))
-  folders.push(folder)
+  const folder = await seaFolder()
   const data = new Float64Array(steps.length * sea.cells)
   for (const [s, step] of steps.entries()) {
     for (let cell = 0; cell < sea.cells; cell++) {
@@ -61,6 +60,13 @@ export async function seaFile(steps: readonly SeaStep[], { name = 'sea.nc', proc
 }
 
 const folders: string[] = []
+/** A folder that `cleanSea` removes. */
+export async function seaFolder(): Promise<string> {
+  const folder = await mkdtemp(join(tmpdir(), 'offing-sea-'))
+  folders.push(folder)
+  return folder
+}
+
 export async function cleanSea(): Promise<void> {
   await Promise.all(folders.splice(0).map((folder) => rm(folder, { recursive: true, force: true })))
 }

@@ -5,7 +5,7 @@ import { regionSeries } from '../../../server/desk/region-series'
 import { deleteFile } from '../../../server/pipeline/delete-file'
 import { createFeed } from '../../../server/pipeline/feeds'
 import { markSuspect } from '../../../server/pipeline/mark-suspect'
-import { newFeed } from '../../../shared/schemas/feeds'
+import { feedFields, newFeed } from '../../../shared/schemas/feeds'
 import { aFeed, aPerson, aRegion, cleanSea, runJobs, seaFile, send } from '../../support/sea'
 import { createTestContext, type TestContext } from '../../support/test-context'
 
@@ -94,7 +94,7 @@ describe('the road of a layer', () => {
     const waiting = await send(context, path)
     await runJobs(context)
     const feed = await context.models.feeds.create(
-      { ...newFeed.parse({ name: 'Other', quantity: 'chlorophyll', variable: 'chl', unit: 'mg m-3', scale: 'log10' }), retired: false, createdAt: 0 },
+      { ...feedFields.parse({ name: 'Other', quantity: 'chlorophyll', variable: 'chl', unit: 'mg m-3', scale: 'log10' }), retired: false, createdAt: 0 },
     )
     const again = await send(context, path, { feedId: feed.id })
     expect(again.id).toBe(waiting.id)

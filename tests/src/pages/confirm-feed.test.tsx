@@ -3,7 +3,7 @@ import userEvent from '@testing-library/user-event'
 import { expect, test } from 'vitest'
 import type { Me } from '../../../shared/schemas/auth'
 import { endpoints } from '../../../shared/schemas/endpoints'
-import type { Feed } from '../../../shared/schemas/feeds'
+import { feedFields, type Feed } from '../../../shared/schemas/feeds'
 import { Component as FilePage } from '../../../src/pages/file'
 import { fakeServer, reply } from '../support/fake-server'
 import { aWaitingFile } from '../support/file-fixtures'
@@ -19,7 +19,7 @@ function open(me: Me) {
     'GET /feeds': () => reply(endpoints.listFeeds, { items: [], nextCursor: null }),
     'POST /feeds': ({ body }) => {
       const feed: Feed = {
-        ...endpoints.createFeed.body.parse(body), id: 4, derivedFrom: null, formula: null, formulaVersion: null, retired: false,
+        ...feedFields.parse(body), id: 4, derivedFrom: null, derivedSources: [], formula: null, formulaVersion: null, retired: false,
         createdAt: '2026-06-11T03:00:00Z', version: 1, layers: 0, oldestLayerAt: null, newestLayerAt: null, newestAgeHours: null, silent: false,
       }
       return reply(endpoints.createFeed, feed)
