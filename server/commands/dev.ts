@@ -34,3 +34,11 @@ const { createServer } = await import('vite')
 const vite = await createServer()
 await vite.listen()
 vite.printUrls()
+
+for (const signal of ['SIGINT', 'SIGTERM'] as const) {
+  process.on(signal, () => {
+    server.removeAllListeners('exit')
+    server.kill('SIGTERM')
+    void vite.close().finally(() => process.exit(0))
+  })
+}
