@@ -15,6 +15,7 @@ const schema = z.object({
   SMTP_URL: optional(z.string().optional()),
   MAIL_FROM: optional(z.string().default('Offing <offing@localhost>')),
   MAX_UPLOAD_MB: optional(z.coerce.number().positive().default(2048)),
+  PULL_ALLOW_PRIVATE: optional(z.enum(['true', 'false']).default('false')),
   TRUST_PROXY: optional(z.coerce.number().int().min(0).max(10).default(0)),
   TILE_URL: optional(z.string().default('')),
   LOG_LEVEL: optional(z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']).default('info')),
@@ -34,6 +35,8 @@ export interface Env {
   smtpUrl: string | null
   mailFrom: string
   maxUploadBytes: number
+  /** Feeds may fetch from http and from private networks. */
+  pullAllowPrivate: boolean
   trustProxy: number
   tileUrl: string
   logLevel: string
@@ -61,6 +64,7 @@ export function readEnv(mode: Mode, source: NodeJS.ProcessEnv = process.env): En
     smtpUrl: env.SMTP_URL ?? null,
     mailFrom: env.MAIL_FROM,
     maxUploadBytes: Math.round(env.MAX_UPLOAD_MB * 1024 * 1024),
+    pullAllowPrivate: env.PULL_ALLOW_PRIVATE === 'true',
     trustProxy: env.TRUST_PROXY,
     tileUrl: env.TILE_URL,
     logLevel: env.LOG_LEVEL,

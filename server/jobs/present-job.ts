@@ -6,6 +6,7 @@ const kindNames: Record<string, string> = {
   'judge-region': 'judge a region',
   'backfill-region': 'read the history of a region',
   'backfill-feed': 'work out the history of a derived feed',
+  'pull-feed': 'fetch for a feed',
   'reread-views': 'make views anew',
 }
 

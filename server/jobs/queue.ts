@@ -13,8 +13,13 @@ export interface NewJob {
   runAfter?: number
 }
 
-export const jobKinds = ['process-file', 'judge-region', 'backfill-region', 'backfill-feed', 'reread-views'] as const
-export type JobKind = (typeof jobKinds)[number]
+/** Jobs of one lane run one after another. Fetching waits for servers elsewhere, so it has a lane that holds up no other. */
+export const jobLanes = {
+  road: ['process-file', 'judge-region', 'backfill-region', 'backfill-feed', 'reread-views'],
+  pull: ['pull-feed'],
+} as const
+export type JobLane = keyof typeof jobLanes
+export type JobKind = (typeof jobLanes)[JobLane][number]
 
 const leaseMs = 60_000
 
@@ -30,11 +35,14 @@ export async function enqueueJob(context: Context, tx: Transaction, job: NewJob)
   )
 }
 
-/** Takes the next due job with a lease, or answers null. */
-export async function takeJob(context: Context, owner: string): Promise<JobRecord | null> {
+/** Takes the next due job of a lane with a lease, or answers null. One whose twin still runs waits for that to end. */
+export async function takeJob(context: Context, owner: string, lane: JobLane): Promise<JobRecord | null> {
   const now = context.clock.system()
-  const due = { now }
-  const sql = `SELECT id FROM jobs WHERE state = 'waiting' AND (run_after IS NULL OR run_after <= $now) ORDER BY priority, id LIMIT 1`
+  const due = { now, kinds: JSON.stringify(jobLanes[lane]) }
+  const sql = `SELECT id FROM jobs j WHERE state = 'waiting' AND (run_after IS NULL OR run_after <= $now)
+    AND kind IN (SELECT value FROM json_each($kinds))
+    AND NOT EXISTS (SELECT 1 FROM jobs r WHERE r.state = 'running' AND r.kind = j.kind AND r.job_key = j.job_key)
+    ORDER BY priority, id LIMIT 1`
   if (!(await context.db.first<{ id: number }>(sql, due))) return null
   return context.db.write(async (tx) => {
     const next = await context.db.first<{ id: number }>(sql, due, tx)

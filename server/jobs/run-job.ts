@@ -6,7 +6,8 @@ import { backfillRegion } from '../pipeline/backfill-region'
 import { judgeRegionJob } from '../pipeline/judge-region'
 import { processFile } from '../pipeline/process-file'
 import { rereadViews } from '../pipeline/reread-views'
-import { takeJob, type JobKind } from './queue'
+import { pullFeed } from '../pull/pull-feed'
+import { takeJob, type JobKind, type JobLane } from './queue'
 
 const handlers: Record<JobKind, (context: Context, job: JobRecord) => Promise<'done' | 'paused'>> = {
   'process-file': processFile,
@@ -14,6 +15,7 @@ const handlers: Record<JobKind, (context: Context, job: JobRecord) => Promise<'d
   'backfill-feed': backfillFeed,
   'reread-views': rereadViews,
   'judge-region': judgeRegionJob,
+  'pull-feed': pullFeed,
 }
 
 const mostAttempts = 5
@@ -21,9 +23,9 @@ const retryAfterMs = [1_000, 5_000, 30_000, 120_000]
 
 export const processOwner = randomUUID()
 
-/** Runs one due job to its end; answers false when none was due. */
-export async function runNextJob(context: Context): Promise<boolean> {
-  const job = await takeJob(context, processOwner)
+/** Runs one due job of a lane to its end; answers false when none was due. */
+export async function runNextJob(context: Context, lane: JobLane = 'road'): Promise<boolean> {
+  const job = await takeJob(context, processOwner, lane)
   if (!job) return false
   context.news.tell({ topic: 'jobs', id: job.id })
   try {

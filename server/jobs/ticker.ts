@@ -2,6 +2,8 @@ import { schedule } from 'node-cron'
 import type { Context } from '../context'
 import { deliverDue } from '../mail/delivery'
 import { scanInbox } from '../pipeline/scan-inbox'
+import { stopPulls } from '../pull/network'
+import { queueDuePulls } from '../pull/queue-pulls'
 import { refreshStandings } from '../pipeline/refresh-standings'
 import { runNextJob } from './run-job'
 
@@ -12,6 +14,9 @@ export interface Ticker {
   wake(): void
   stop(): Promise<void>
 }
+
+/** Feeds fetched for side by side; a slow server holds up only its own. */
+const pullsAtOnce = 3
 
 interface Wheel {
   turn(): Promise<void>
@@ -26,16 +31,24 @@ export function startTicker(context: Context, options: { cron: boolean }): Ticke
   })
   const inbox = wheel(() => scanInbox(context))
   const letters = wheel(async () => void (await deliverDue(context)))
+  const duePulls = wheel(() => queueDuePulls(context))
+  const pulls = Array.from({ length: pullsAtOnce }, () =>
+    wheel(async () => {
+      while (!stopped && (await runNextJob(context, 'pull')));
+    }),
+  )
   const standings = wheel(() => refreshStandings(context))
   const safely = (name: string, one: Wheel) => () =>
     stopped ? Promise.resolve() : one.turn().catch((error) => context.log.error({ err: error, wheel: name }, 'a tick failed'))
   const turnJobs = safely('jobs', jobs)
+  const turnPulls = () => void Promise.all(pulls.map((one) => safely('pulls', one)()))
   const turnLetters = safely('letters', letters)
   const tasks = options.cron
     ? [
         schedule('* * * * * *', turnJobs),
         schedule('* * * * * *', safely('inbox', inbox)),
         schedule('* * * * * *', turnLetters),
+        schedule('* * * * * *', () => safely('due pulls', duePulls)().then(turnPulls)),
         schedule('0 */10 * * * *', safely('standings', standings)),
       ]
     : []
@@ -45,11 +58,15 @@ export function startTicker(context: Context, options: { cron: boolean }): Ticke
       await jobs.turn()
       await letters.turn()
     },
-    wake: () => void turnJobs().then(turnLetters),
+    wake: () => {
+      void turnJobs().then(turnLetters)
+      turnPulls()
+    },
     stop: async () => {
       stopped = true
+      stopPulls(context)
       await Promise.all(tasks.map((task) => task.destroy()))
-      await Promise.all([jobs.turn(), inbox.turn(), letters.turn()].map((turn) => turn.catch(() => undefined)))
+      await Promise.all([jobs, inbox, letters, ...pulls].map((one) => one.turn().catch(() => undefined)))
     },
   }
 }

@@ -7,7 +7,7 @@ import { dropFile, keepFile, type Arrived } from './stored-files'
 export interface Arrival {
   name: string
   arrived: Arrived
-  origin: 'upload' | 'inbox' | 'command'
+  origin: 'upload' | 'inbox' | 'command' | 'pull'
   userId: number | null
   feedId: number | null
   observedAt: number | null

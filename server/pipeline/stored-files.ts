@@ -18,11 +18,16 @@ export class TooLarge extends Error {
   override name = 'TooLarge'
 }
 
-/** Streams bytes to a temporary name, counting and checksumming on the way, and syncs them to disk. */
-export async function storeStream(env: Env, stream: Readable): Promise<Arrived> {
+/** A new name for bytes on their way in; what lies there at the next start is cleared. */
+export async function arrivingName(env: Env): Promise<string> {
   const folder = join(env.dataDir, 'files', 'arriving')
   await mkdir(folder, { recursive: true })
-  const temporary = join(folder, randomUUID())
+  return join(folder, randomUUID())
+}
+
+/** Streams bytes to a temporary name, counting and checksumming on the way, and syncs them to disk. */
+export async function storeStream(env: Env, stream: Readable): Promise<Arrived> {
+  const temporary = await arrivingName(env)
   const hash = createHash('sha256')
   let bytes = 0
   const meter = new Transform({

@@ -15,6 +15,7 @@ import { feedRoutes } from './feeds'
 import { fileRoutes } from './files'
 import { jobRoutes } from './jobs'
 import { layerRoutes } from './layers'
+import { pullRoutes } from './pulls'
 import { regionRoutes } from './regions'
 import { ruleRoutes } from './rules'
 import { runningRoutes } from './running'
@@ -36,6 +37,7 @@ const routes: ((router: Router, context: Context) => void)[] = [
   fileRoutes,
   jobRoutes,
   layerRoutes,
+  pullRoutes,
   regionRoutes,
   ruleRoutes,
   runningRoutes,

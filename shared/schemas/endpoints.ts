@@ -7,6 +7,7 @@ import { endpoint } from './endpoint'
 import * as feeds from './feeds'
 import * as files from './files'
 import * as layers from './layers'
+import * as pulls from './pulls'
 import * as regions from './regions'
 import * as rules from './rules'
 import * as running from './running'
@@ -46,6 +47,10 @@ export const endpoints = {
   createFeed: endpoint({ method: 'POST', path: '/feeds', may: 'feed:confirm', summary: 'Make a feed; a proposal is a valid body', body: feeds.newFeed, reply: feeds.feed, status: 201 }),
   feed: endpoint({ method: 'GET', path: '/feeds/:id', may: 'read', summary: 'One feed', params: idParam, reply: feeds.feed }),
   changeFeed: endpoint({ method: 'PATCH', path: '/feeds/:id', may: 'feed:edit', summary: 'Change or retire a feed', params: idParam, body: feeds.feedChange, reply: feeds.feed }),
+  feedPull: endpoint({ method: 'GET', path: '/feeds/:id/pull', may: 'read', summary: 'What a feed fetches for itself, and how that goes', params: idParam, reply: pulls.feedPull }),
+  keepPull: endpoint({ method: 'PUT', path: '/feeds/:id/pull', may: 'feed:edit', summary: 'Let a feed fetch for itself; credentials are taken and never given out', params: idParam, body: pulls.pullSettings, reply: pulls.feedPull }),
+  dropPull: endpoint({ method: 'DELETE', path: '/feeds/:id/pull', may: 'feed:edit', summary: 'Fetch nothing any more', params: idParam, status: 204 }),
+  pullNow: endpoint({ method: 'POST', path: '/feeds/:id/pull/now', may: 'feed:edit', summary: 'Fetch now', params: idParam, reply: pulls.feedPull, status: 202 }),
 
   uploadFiles: endpoint({ method: 'POST', path: '/files', may: 'file:upload', summary: 'Send files', multipart: true, reply: z.object({ items: z.array(files.receipt) }), status: 202 }),
   listFiles: endpoint({ method: 'GET', path: '/files', may: 'read', summary: 'Files, newest first', query: page.extend({ status: files.fileStatus.optional() }), reply: list(files.fileItem) }),

@@ -61,7 +61,7 @@ export const fileItem = z.object({
   checksum: z.string(),
   bytes: z.number().int(),
   status: fileStatus,
-  origin: z.enum(['upload', 'inbox', 'command']),
+  origin: z.enum(['upload', 'inbox', 'command', 'pull']),
   uploadedBy: z.object({ id, name: z.string() }).nullable(),
   receivedAt: instant,
   processedAt: instant.nullable(),

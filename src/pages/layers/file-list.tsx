@@ -99,5 +99,6 @@ function FileSentence({ file }: { file: FileItem }) {
 function cameBy(file: FileItem): string {
   if (file.origin === 'inbox') return 'watched folder'
   if (file.origin === 'command') return 'command'
+  if (file.origin === 'pull') return 'fetched'
   return file.uploadedBy?.name ?? 'upload'
 }

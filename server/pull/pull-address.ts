@@ -1,0 +1,51 @@
+import { namesItsDay, type Slot } from '../../shared/address-pattern'
+import type { Context } from '../context'
+import { receiveFile } from '../pipeline/receive-file'
+import { dropFile } from '../pipeline/stored-files'
+import { feedHasBytes, hostRestsUntil, keepPulledAddress, pulledAddress, type PullRow } from '../queries/pulls'
+import { fetchFile } from './fetch-file'
+import { fileNameOf } from './file-name-of'
+import { networkOf } from './network'
+import { HostRests } from './pull-failed'
+import type { Counts } from './tally'
+
+interface With {
+  authorization: string | null
+  forgiven: Set<string>
+}
+
+/**
+ * Asks one address. New bytes go down the road of every file; bytes the feed has are nothing, whatever a server says of
+ * them. What is remembered of the address is written last: a crash before that only means asking once more.
+ */
+export async function pullAddress(context: Context, pull: PullRow, slot: Slot, { authorization, forgiven }: With): Promise<Exclude<keyof Counts, 'failed'>> {
+  const { db, clock } = context
+  const url = new URL(slot.address)
+  const before = await pulledAddress(db, pull.feedId, slot.address)
+  const fetched = await fetchFile(context.env, networkOf(context), {
+    url,
+    authorization,
+    known: before && { etag: before.etag, lastModified: before.lastModified },
+    now: clock.now(),
+    mayAsk: async (host) => {
+      const until = await hostRestsUntil(db, host)
+      if (until === null) return
+      if (until > clock.now()) throw new HostRests(host, until)
+      forgiven.add(host)
+    },
+  })
+  if (fetched.kind !== 'fetched') return fetched.kind === 'unchanged' ? 'unchanged' : 'notThere'
+  const { arrived, validators } = fetched
+  const known = before?.checksum === arrived.checksum || (await feedHasBytes(db, pull.feedId, arrived.checksum))
+  const file = known ? null : await receiveFile(context, { name: fileNameOf(url), arrived, origin: 'pull', userId: null, feedId: pull.feedId, observedAt: observedAt(pull, slot) })
+  await dropFile(arrived)
+  await db.write((tx) =>
+    keepPulledAddress(db, tx, { feedId: pull.feedId, address: slot.address, ...validators, checksum: arrived.checksum, fileId: file?.id ?? null, askedAt: clock.now() }),
+  )
+  return known ? 'unchanged' : 'fetched'
+}
+
+/** For a file without a time of its own: the day its address names. Where it names an hour, the feed's file-name pattern has to say it. */
+function observedAt(pull: PullRow, slot: Slot): number | null {
+  return namesItsDay(pull.address) && !pull.address.includes('{HH}') ? slot.at : null
+}
