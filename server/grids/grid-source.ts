@@ -1,4 +1,5 @@
 import type { Grid, GridWindow } from '../../shared/science/grid'
+import type { FlagCells, FlagVariable } from './flags'
 
 export type GridFormat = 'netcdf-classic' | 'netcdf4' | 'geotiff'
 
@@ -33,6 +34,13 @@ export interface GridVariable {
   times: LayerTime[]
   attributes: Record<string, string | number | number[]>
   dimensions: { name: string; size: number }[]
+  /** The variable that says why a cell may not be trusted, where the file has one for this variable. */
+  flags?: FlagVariable
+  /**
+   * Set when cells may have been filled in rather than seen: the meanings that mark such cells, or `variable: null`
+   * when the file says that it is gap-filled but not where.
+   */
+  gapFilled?: FlagVariable | { variable: null; meanings: [] }
 }
 
 /**
@@ -46,5 +54,10 @@ export interface GridSource {
   readonly warnings: string[]
   /** `step` indexes `times` of the variable. Throws LayerRefused when the bytes can't be trusted. */
   readWindow(variable: string, step: number, window: GridWindow): Promise<Float64Array>
+  /**
+   * The flags of the same cells, from `flags` of the variable or from another flag variable that its `gapFilled`
+   * names. RangeError for a variable without flags; LayerRefused as for `readWindow`.
+   */
+  readFlags(variable: string, step: number, window: GridWindow, flagVariable?: string): Promise<FlagCells>
   close(): void
 }

@@ -1,7 +1,9 @@
 import type { AxesGrid, GridWindow } from '../../../shared/science/grid'
+import type { FlagCells } from '../flags'
 import type { GridSource, GridVariable } from '../grid-source'
 import { LayerRefused } from '../layer-refused'
 import { axesGrid, type PlacedGrid } from './cf-axes'
+import { ancillaryNames, filledMeanings, flagBlock, flagMeanings, saysGapFilled } from './cf-flags'
 import { type Packing, packingOf, unpackInPlace } from './cf-packing'
 import { coordinateOf, lookUp, type Role, roleOf } from './cf-roles'
 import { isClimatological, layerTimes } from './cf-time'
@@ -56,6 +58,7 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
     )
   }
   if (placed.length === 0) throw nothingPlaced(file, fileName, climatological)
+  attachFlags(file, placed, warnings)
 
   return {
     format: file.format,
@@ -63,8 +66,54 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
     globalAttributes: plainAttributes(file.attributes),
     warnings: [...new Set(warnings)],
     readWindow: async (name, step, window) => readWindow(file, find(placed, name), step, window),
+    readFlags: async (name, step, window, flagVariable) =>
+      readFlags(file, placed, find(placed, name), step, window, flagVariable),
     close: () => file.close(),
   }
+}
+
+/** Gives each variable the flags that its ancillary_variables name, or the only flag variable on its grid. */
+function attachFlags(file: RawNetcdf, placed: Placed[], warnings: string[]): void {
+  const flagged = placed.flatMap((candidate) => {
+    const { meanings, problem } = flagMeanings(candidate.raw)
+    if (problem) warnings.push(problem)
+    return meanings ? [{ candidate, flags: { variable: candidate.raw.name, meanings } }] : []
+  })
+  for (const { raw, variable } of placed) {
+    if (flagged.some(({ candidate }) => candidate.raw === raw)) continue
+    const fitting = flagged.filter(
+      ({ candidate: { variable: other, stepAxis } }) =>
+        other.grid === variable.grid && (stepAxis === null || other.times.length === variable.times.length),
+    )
+    const named = new Set(ancillaryNames(raw).map((name) => lookUp(file, raw, name)?.name))
+    const own = fitting.filter(({ flags }) => named.has(flags.variable))
+    const chosen = own[0] ?? (fitting.length === 1 ? fitting[0] : undefined)
+    if (chosen) variable.flags = chosen.flags
+    const filled = (own.length ? own : fitting)
+      .map(({ flags }) => ({ variable: flags.variable, meanings: filledMeanings(flags.meanings) }))
+      .find(({ meanings }) => meanings.length > 0)
+    if (filled) variable.gapFilled = filled
+    else if (saysGapFilled(file, raw)) variable.gapFilled = { variable: null, meanings: [] }
+  }
+}
+
+function readFlags(
+  file: RawNetcdf,
+  placed: Placed[],
+  { variable }: Placed,
+  step: number,
+  window: GridWindow,
+  flagVariable = variable.flags?.variable,
+): FlagCells {
+  const known = flagVariable !== undefined && [variable.flags?.variable, variable.gapFilled?.variable].includes(flagVariable)
+  if (!known) throw new RangeError(`${variable.name} has no flags ${flagVariable ?? ''}`)
+  const flags = find(placed, flagVariable)
+  checkWindow(variable, step, window)
+  const { start, count } = blockOf(flags, step, window)
+  const block = flagBlock(file, flags.raw, start, count)
+  if (flags.rowAxis < flags.columnAxis) return block
+  const { raw, high, missing } = block
+  return { raw: transpose(raw, window), high: high && transpose(high, window), missing: missing && transpose(missing, window) }
 }
 
 interface Axis {
@@ -158,8 +207,16 @@ function sharedGrid(
 }
 
 function readWindow(file: RawNetcdf, placed: Placed, step: number, window: GridWindow): Float64Array {
-  const { raw, variable, rowAxis, columnAxis, stepAxis } = placed
+  const { raw, variable, rowAxis, columnAxis } = placed
   checkWindow(variable, step, window)
+  const { start, count } = blockOf(placed, step, window)
+  const block = file.read(raw, start, count)
+  unpackInPlace(block, placed.packing)
+  convertInPlace(block, placed.meaning)
+  return rowAxis < columnAxis ? block : transpose(block, window)
+}
+
+function blockOf({ raw, rowAxis, columnAxis, stepAxis }: Placed, step: number, window: GridWindow) {
   const start = raw.dimensions.map(() => 0)
   const count = raw.dimensions.map(() => 1)
   start[rowAxis] = window.row
@@ -167,14 +224,11 @@ function readWindow(file: RawNetcdf, placed: Placed, step: number, window: GridW
   start[columnAxis] = window.column
   count[columnAxis] = window.columns
   if (stepAxis !== null) start[stepAxis] = step
-  const block = file.read(raw, start, count)
-  unpackInPlace(block, placed.packing)
-  convertInPlace(block, placed.meaning)
-  return rowAxis < columnAxis ? block : transpose(block, window)
+  return { start, count }
 }
 
-function transpose(block: Float64Array, { rows, columns }: GridWindow): Float64Array {
-  const turned = new Float64Array(block.length)
+function transpose<T extends Float64Array | Uint32Array | Uint8Array>(block: T, { rows, columns }: GridWindow): T {
+  const turned = block.slice() as T
   for (let row = 0; row < rows; row++) {
     for (let column = 0; column < columns; column++) turned[row * columns + column] = block[column * rows + row]!
   }

@@ -48,6 +48,9 @@ export async function openGeotiff(path: string, fileName: string, fileSize: numb
       globalAttributes: dataset,
       warnings,
       readWindow: async (name, step, window) => readWindow(raster, valid, bands, name, step, window),
+      readFlags: async (name) => {
+        throw new RangeError(`${name} has no flags`)
+      },
       close: () => closeSync(descriptor),
     }
   } catch (error) {

@@ -20,6 +20,14 @@ export function openClassic(path: string, fileSize: number): RawNetcdf {
       warnings: [],
       read: ({ name }, start, count) =>
         readBlock(descriptor, byName.get(name)!, header.recordBytes, fileSize, start, count),
+      readWords: ({ name }, start, count) => {
+        // Big-endian: each number is a pair of words, the high one first.
+        const variable = byName.get(name)!
+        const pairs: ClassicVariable = { ...variable, type: 'u4', dimensions: [...variable.dimensions, { name: '', size: 2 }] }
+        const words = readBlock(descriptor, pairs, header.recordBytes, fileSize, [...start, 0], [...count, 2])
+        const half = (at: number) => Uint32Array.from({ length: words.length / 2 }, (_, i) => words[2 * i + at]!)
+        return { low: half(1), high: half(0) }
+      },
       close: () => closeSync(descriptor),
     }
   } catch (error) {

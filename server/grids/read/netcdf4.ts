@@ -38,6 +38,7 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
       attributes,
       warnings: [],
       read: (variable, from, count) => readBlock(variable, datasets.get(variable.name)!, kept, from, count),
+      readWords: (variable, from, count) => readWords(variable, datasets.get(variable.name)!, from, count),
       close: () => void file.close(),
     }
   } catch (error) {
@@ -150,6 +151,17 @@ function readBlocks(variable: RawVariable, dataset: Dataset, start: number[], co
   }
   if (filled !== total) throw damagedData(variable.name, 'fewer numbers came back than were asked for')
   return values
+}
+
+function readWords(variable: RawVariable, dataset: Dataset, start: number[], count: number[]) {
+  checkEncoding(variable, dataset)
+  const block = reading(variable.name, () => dataset.slice(start.map((from, d) => [from, from + count[d]!])))
+  if (!(block instanceof BigInt64Array) && !(block instanceof BigUint64Array)) {
+    throw damagedData(variable.name, 'no 64-bit numbers came back')
+  }
+  const low = Uint32Array.from(block, (bits) => Number(bits & 0xffffffffn))
+  const high = Uint32Array.from(block, (bits) => Number((bits >> 32n) & 0xffffffffn))
+  return { low, high }
 }
 
 function checkEncoding(variable: RawVariable, dataset: Dataset): void {

@@ -31,6 +31,8 @@ export interface RawNetcdf {
   warnings: string[]
   /** The stored (packed) numbers of a block, in the file's own dimension order. */
   read(variable: RawVariable, start: number[], count: number[]): Float64Array
+  /** The bits of a block of a 64-bit integer variable, which numbers above 2^53 would lose. */
+  readWords(variable: RawVariable, start: number[], count: number[]): { low: Uint32Array; high: Uint32Array }
   close(): void
 }
 

@@ -26,6 +26,10 @@ export function rawFile(variables: RawVariable[], data: Record<string, number[]>
     attributes: attributesOf(global),
     warnings: [],
     read: ({ name }) => Float64Array.from(data[name] ?? []),
+    readWords: ({ name }) => ({
+      low: Uint32Array.from(data[name] ?? [], (value) => value % 2 ** 32),
+      high: Uint32Array.from(data[name] ?? [], (value) => Math.floor(value / 2 ** 32)),
+    }),
     close: () => undefined,
   }
 }
