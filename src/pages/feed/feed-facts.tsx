@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react'
 import type { Feed } from '../../../shared/schemas/feeds'
+import { formulaOf } from '../../../shared/science/optics/formulas'
 import { SectionHead } from '../../components/ui/page'
 import { dayWithYear } from '../../lib/dates'
 import { grouped, unitWords } from '../../lib/format'
@@ -21,7 +22,13 @@ export function FeedFacts({ feed }: { feed: Feed }) {
     ['Layers', <span className="fig">{grouped(feed.layers)}</span>],
   ]
   if (feed.oldestLayerAt) facts.push(['Since', <span className="fig">{dayWithYear(feed.oldestLayerAt)}</span>])
-  if (feed.formula) facts.push(['Worked out by', `${feed.formula}, version ${feed.formulaVersion ?? '1'}`])
+  if (feed.formula !== null) {
+    const formula = formulaOf(feed.formula, feed.formulaVersion ?? '')
+    facts.push(['Worked out by', `${formula?.title ?? feed.formula}, version ${feed.formulaVersion ?? '1'}`])
+    if (formula) facts.push(['From bands', <span className="fig">{[...new Set(formula.bands.map((band) => band.nm[0]))].join(', ')} nm</span>])
+    if (formula) facts.push(['Coefficients', formula.status])
+    if (formula?.caution) facts.push(['Mind', formula.caution])
+  }
   return (
     <section>
       <SectionHead>How it is read</SectionHead>

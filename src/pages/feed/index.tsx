@@ -11,6 +11,7 @@ import { Message } from '../../components/ui/message'
 import { Page, SectionHead, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
 import { LayerList } from '../layers/layer-list'
+import { DeriveFeed } from './derive-feed'
 import { FeedFacts } from './feed-facts'
 import { FeedForm } from './feed-form'
 import { RetireFeed } from './retire-feed'
@@ -29,6 +30,7 @@ export function Component() {
 
 function FeedParts({ feed }: { feed: Feed }) {
   const mayEdit = useCan('feed:edit')
+  const mayDerive = useCan('feed:confirm') && feed.quantity === 'reflectance' && feed.derivedFrom === null && !feed.retired
   return (
     <>
       <Statement
@@ -60,8 +62,9 @@ function FeedParts({ feed }: { feed: Feed }) {
           <SectionHead>Layers</SectionHead>
           <LayerList feedId={feed.id} />
         </section>
-        <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-8">
+        <div className="order-first grid grid-cols-[minmax(0,1fr)] content-start gap-8 desk:order-none">
           <FeedFacts feed={feed} />
+          {mayDerive && <DeriveFeed feed={feed} />}
           {mayEdit && <FeedForm key={feed.version} feed={feed} />}
           {mayEdit && !feed.retired && <RetireFeed feed={feed} />}
         </div>

@@ -18,6 +18,7 @@ import { LayersPart } from './layers-part'
 import { mayDeleteFile } from './may-delete-file'
 import { RefusedPart } from './refused-part'
 import { UnderstoodPart } from './understood-part'
+import { formatWords } from './understood-rows'
 
 export function Component() {
   const id = Number(useParams()['id'])
@@ -64,7 +65,7 @@ function WhichFile({ file }: { file: OffingFile }) {
       </Link>{' '}
       <span className="fig break-all">
         {file.name}, {megabytes(file.bytes)}
-        {file.report && `, ${file.report.format}`}, sha256 <span title={file.checksum}>{shortChecksum(file.checksum)}</span>
+        {file.report && `, ${formatWords(file.report.format)}`}, sha256 <span title={file.checksum}>{shortChecksum(file.checksum)}</span>
       </span>
     </>
   )

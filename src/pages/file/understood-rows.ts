@@ -15,16 +15,22 @@ export interface UnderstoodRow {
 export function understoodRows(format: string, variable: ReportVariable): UnderstoodRow[] {
   const { grid, times } = variable
   const rows: UnderstoodRow[] = [
-    { item: 'Format', understood: format, how: 'read', note: 'from its first bytes, not its name' },
+    { item: 'Format', understood: formatWords(format), how: 'read', note: 'from its first bytes, not its name' },
     { item: 'Quantity', understood: variable.quantity, how: 'read', note: variable.longName ? `long name “${variable.longName}”` : 'from the name of the variable' },
     { item: 'Variable', understood: variable.name, how: 'read', note: variable.dimensions.map((one) => `${one.name} ${one.size}`).join(' × '), mono: true },
     unitRow(variable),
     { item: 'Grid', understood: `${grouped(grid.columns)} × ${grouped(grid.rows)} cells`, how: 'read', note: gridNote(variable), mono: true },
     { item: 'Time', understood: timeWords(variable), how: times.first ? 'read' : 'worked out', note: `${times.from}${times.hasClock ? '' : '; no clock time'}` },
-    { item: 'Kept', understood: `${percent(variable.cells > 0 ? variable.valid / variable.cells : 0)} of the cells`, how: 'worked out', note: `${grouped(variable.valid)} of ${grouped(variable.cells)}; the rest is missing`, mono: true },
+    { item: 'Kept of the first step', understood: `${percent(variable.cells > 0 ? variable.valid / variable.cells : 0)} of the cells`, how: 'worked out', note: `${grouped(variable.valid)} of ${grouped(variable.cells)} cells looked at; the rest is missing`, mono: true },
   ]
   const values = valueRow(variable)
   return values ? [...rows, values] : rows
+}
+
+const formats: Record<string, string> = { netcdf4: 'NetCDF-4', 'netcdf-classic': 'classic NetCDF', geotiff: 'GeoTIFF' }
+
+export function formatWords(format: string): string {
+  return formats[format] ?? format
 }
 
 function unitRow({ unit, fileUnit, conversion }: ReportVariable): UnderstoodRow {
@@ -39,7 +45,7 @@ function unitRow({ unit, fileUnit, conversion }: ReportVariable): UnderstoodRow 
 
 function gridNote({ grid }: ReportVariable): string {
   const span = `${side(grid.south, 'S', 'N')} to ${side(grid.north, 'S', 'N')}, ${side(grid.west, 'W', 'E')} to ${side(grid.east, 'W', 'E')}`
-  return [grid.kind, span, grid.crs].filter(Boolean).join('; ')
+  return [grid.kind === 'axes' ? 'axes of latitude and longitude' : 'placed by a transform', span, grid.crs].filter(Boolean).join('; ')
 }
 
 function side(value: number, below: string, above: string): string {
@@ -57,7 +63,7 @@ function timeWords({ times }: ReportVariable): string {
 function valueRow({ min, median, max, unit }: ReportVariable): UnderstoodRow | undefined {
   if (min === null || max === null) return undefined
   return {
-    item: 'Values',
+    item: 'Values of the first step',
     understood: `${threeDigits(min)} to ${threeDigits(max)}`,
     how: 'worked out',
     note: `${median === null ? '' : `median ${threeDigits(median)} `}${unitWords(unit)}`,
