@@ -14,6 +14,7 @@ import { LayerList } from '../layers/layer-list'
 import { DeriveFeed } from './derive-feed'
 import { FeedFacts } from './feed-facts'
 import { FeedForm } from './feed-form'
+import { PullPart } from './pull-part'
 import { RetireFeed } from './retire-feed'
 
 export function Component() {
@@ -64,6 +65,7 @@ function FeedParts({ feed }: { feed: Feed }) {
         </section>
         <div className="order-first grid grid-cols-[minmax(0,1fr)] content-start gap-8 desk:order-none">
           <FeedFacts feed={feed} />
+          {feed.derivedFrom === null && <PullPart feed={feed} />}
           {mayDerive && <DeriveFeed feed={feed} />}
           {mayEdit && <FeedForm key={feed.version} feed={feed} />}
           {mayEdit && !feed.retired && <RetireFeed feed={feed} />}
