@@ -27,3 +27,13 @@ export function ageText(hours: number): string {
   if (hours < 1) return `${Math.max(1, Math.round(hours * 60))} min`
   return hours < 48 ? `${Math.round(hours)} h` : `${Math.round(hours / 24)} d`
 }
+
+/** "mg m-3" as people write it: mg m⁻³. */
+export function unitWords(unit: string | null | undefined): string {
+  if (!unit) return ''
+  return unit.replace(/([a-zA-Z])\^?([-−]?\d+)/g, (_, letter: string, power: string) => letter + superscript(power))
+}
+
+function superscript(power: string): string {
+  return [...power].map((c) => (c === '-' || c === '−' ? '⁻' : '⁰¹²³⁴⁵⁶⁷⁸⁹'[Number(c)] ?? c)).join('')
+}

@@ -1,4 +1,4 @@
-import { figureText } from './figure-text'
+import { figureText, unitWords } from './figure-text'
 import type { RuleDefinition, RuleTest } from './science/rule'
 
 const statisticNames: Record<RuleDefinition['statistic'], string> = {
@@ -19,7 +19,7 @@ export function ruleText(rule: RuleDefinition, unit: string | null): string {
 function testText(test: RuleTest, unit: string | null): string {
   switch (test.kind) {
     case 'above-level':
-      return `above ${figureText(test.level)}${unit ? ` ${unit}` : ''}`
+      return `above ${figureText(test.level)}${unit ? ` ${unitWords(unit)}` : ''}`
     case 'above-percentile':
       return `above the ${test.percentile}th percentile of the season`
     case 'times-usual':

@@ -1,4 +1,4 @@
-import { figureText, timesText } from '../../shared/figure-text'
+import { figureText, timesText, unitWords } from '../../shared/figure-text'
 import type { Evidence } from '../../shared/schemas/alerts'
 import type { Severity } from '../../shared/schemas/common'
 import type { AlertRow } from '../models/alert'
@@ -13,7 +13,7 @@ export interface Statement {
 export function alertStatement(severity: Severity, regionName: string, evidence: Evidence): Statement {
   const stands =
     evidence.timesUsual === null
-      ? `${figureText(evidence.value)}${evidence.unit ? ` ${evidence.unit}` : ''}`
+      ? `${figureText(evidence.value)}${evidence.unit ? ` ${unitWords(evidence.unit)}` : ''}`
       : `${timesText(evidence.timesUsual)} times usual`
   return { lead: `${severity}.`, rest: `${regionName} is at ${stands}.` }
 }
@@ -35,7 +35,7 @@ function dayText(day: number): string {
 
 /** The figures behind it in one line. */
 export function evidenceLine(evidence: Evidence): string {
-  const unit = evidence.unit ? ` ${evidence.unit}` : ''
+  const unit = evidence.unit ? ` ${unitWords(evidence.unit)}` : ''
   const usual = evidence.usual === null ? '' : ` where ${figureText(evidence.usual)} is usual`
   const range = evidence.p10 === null || evidence.p90 === null ? '' : ` (${figureText(evidence.p10)} to ${figureText(evidence.p90)}, p10 to p90)`
   return `${figureText(evidence.value)}${unit}${usual}${range}; ${Math.round(evidence.coverage * 100)} % of the water was seen.`

@@ -24,12 +24,6 @@ export function grouped(whole: number): string {
   return String(whole).replace(/\B(?=(\d{3})+(?!\d))/g, '\u202f')
 }
 
-/** "mg m-3" as people write it: mg m⁻³. */
-export function unitWords(unit: string | null | undefined): string {
-  if (!unit) return ''
-  return unit.replace(/([a-zA-Z])\^?([-−]?\d+)/g, (_, letter: string, power: string) => letter + superscript(power))
-}
-
 export function megabytes(bytes: number): string {
   if (bytes < 1000) return `${bytes} B`
   if (bytes < 999_500) return `${figureText(bytes / 1000)} kB`
@@ -67,10 +61,6 @@ const words = ['No', 'One', 'Two', 'Three', 'Four', 'Five', 'Six', 'Seven', 'Eig
 /** A count that begins a sentence: in words up to twelve. */
 export function countAtHead(count: number): string {
   return words[count] ?? grouped(count)
-}
-
-function superscript(power: string): string {
-  return [...power].map((c) => (c === '-' || c === '−' ? '⁻' : '⁰¹²³⁴⁵⁶⁷⁸⁹'[Number(c)] ?? c)).join('')
 }
 
 function wrapLongitude(value: number): number {

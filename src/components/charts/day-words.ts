@@ -1,6 +1,7 @@
 import { dateOf } from '../../../shared/science/local-day'
 import { dayWithYear } from '../../lib/dates'
-import { percent, threeDigits, timesUsual, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { percent, threeDigits, timesUsual } from '../../lib/format'
 import type { SeriesDays } from './series-days'
 
 export interface DayWords {

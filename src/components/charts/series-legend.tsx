@@ -1,4 +1,4 @@
-import { unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
 import { statisticWords } from './statistic-words'
 import type { Statistic } from './series-days'
 

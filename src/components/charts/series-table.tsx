@@ -1,6 +1,7 @@
 import { useState } from 'react'
 import { dayWithYear } from '../../lib/dates'
-import { figure, percent, timesUsual, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { figure, percent, timesUsual } from '../../lib/format'
 import { Button } from '../ui/button'
 import { StateWord } from '../ui/mark'
 import { Table, Td, Th, Tr } from '../ui/table'

@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react'
 import { chlorophyllRamp, departureRamp } from '../../../shared/ramps'
 import { useTheme } from '../../hooks/use-theme'
-import { unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
 import { HatchTile } from '../ui/hatch-pattern'
 
 interface Props {

@@ -6,7 +6,8 @@ import { Mark, severityMark } from '../../components/ui/mark'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { useWide } from '../../hooks/use-wide'
 import { dayAndTime } from '../../lib/dates'
-import { figure, percent, timesUsual, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { figure, percent, timesUsual } from '../../lib/format'
 import { holderWords } from './holder-words'
 
 export function AlertTable({ alerts }: { alerts: readonly AlertItem[] }) {

@@ -3,7 +3,8 @@ import type { Feed } from '../../../shared/schemas/feeds'
 import { formulaOf } from '../../../shared/science/optics/formulas'
 import { SectionHead } from '../../components/ui/page'
 import { dayWithYear } from '../../lib/dates'
-import { grouped, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { grouped } from '../../lib/format'
 
 /** How the files of this feed are read and what it holds. */
 export function FeedFacts({ feed }: { feed: Feed }) {

@@ -11,7 +11,8 @@ import { Page, Statement } from '../../components/ui/page'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { Waiting } from '../../components/ui/waiting'
 import { dayWords } from '../../lib/dates'
-import { countAtHead, grouped, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { countAtHead, grouped } from '../../lib/format'
 
 export function Component() {
   const feeds = useQuery(feedsQuery())

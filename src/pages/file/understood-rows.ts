@@ -1,6 +1,7 @@
 import type { ReportVariable } from '../../../shared/schemas/files'
 import { dayWithYear } from '../../lib/dates'
-import { countWords, grouped, percent, threeDigits, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { countWords, grouped, percent, threeDigits } from '../../lib/format'
 
 export interface UnderstoodRow {
   item: string

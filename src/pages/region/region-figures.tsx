@@ -1,6 +1,7 @@
 import type { RegionStanding } from '../../../shared/schemas/regions'
 import { Figure } from '../../components/ui/figure'
-import { figure, percent, threeDigits, timesUsual, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { figure, percent, threeDigits, timesUsual } from '../../lib/format'
 
 /** What the state rests on. A figure that is missing is left out, never written as 0. */
 export function RegionFigures({ standing }: { standing: RegionStanding }) {

@@ -6,7 +6,7 @@ import { type RuleDefinition, useChangeRule } from '../../api/rules'
 import { Button } from '../../components/ui/button'
 import { TextField } from '../../components/ui/field'
 import { Message } from '../../components/ui/message'
-import { unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
 import { type RuleNumbers, ruleNumbers, withNumbers } from './simple-rule'
 
 interface Props {

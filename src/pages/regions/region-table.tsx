@@ -5,7 +5,8 @@ import { Age } from '../../components/ui/age'
 import { StateWord } from '../../components/ui/mark'
 import { Progress } from '../../components/ui/progress'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
-import { grouped, percent, threeDigits, timesUsual, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { grouped, percent, threeDigits, timesUsual } from '../../lib/format'
 
 /** The regions by worry, each with the newest usable view it rests on. */
 export function RegionTable({ regions }: { regions: readonly Region[] }) {

@@ -1,6 +1,7 @@
 import { expect, test } from 'vitest'
 import { clockTime, daySpan, localDay, longDay } from '../../../src/lib/dates'
-import { bearing, degrees, megabytes, percent, shortChecksum, threeDigits, timesUsual, unitWords } from '../../../src/lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { bearing, degrees, megabytes, percent, shortChecksum, threeDigits, timesUsual } from '../../../src/lib/format'
 import { safeNext } from '../../../src/lib/safe-next'
 import { yearsWords } from '../../../src/lib/years-words'
 
