@@ -14,6 +14,7 @@ interface LayerSource {
   processingVersion: string
   maskKind: string
   maskVersion: number
+  formula: string | null
 }
 
 /** What one day's view says, with everything needed to compute it again. */
@@ -21,7 +22,7 @@ export async function evidenceOn(context: Context, tx: Transaction, subject: Sub
   const view = judged.views.find((one) => one.day === day)!
   const verdict = judged.judgement.judged.find((one) => one.day === day)!
   const source = (await context.db.first<LayerSource>(
-    `SELECT l.file_id AS fileId, f.name AS fileName, l.checksum, p.processing_version AS processingVersion, m.kind AS maskKind, m.version AS maskVersion
+    `SELECT l.file_id AS fileId, f.name AS fileName, l.checksum, p.processing_version AS processingVersion, m.kind AS maskKind, m.version AS maskVersion, p.formula
      FROM summaries s JOIN layers l ON l.id = s.layer_id JOIN files f ON f.id = l.file_id
        JOIN provenances p ON p.id = s.provenance_id JOIN masks m ON m.id = p.mask_id
      WHERE s.geometry_id = $geometryId AND s.feed_id = $feedId AND s.day = $day`,
@@ -58,5 +59,6 @@ export async function evidenceOn(context: Context, tx: Transaction, subject: Sub
     geometryVersion: subject.geometry.version,
     waterMask: `${source.maskKind}, version ${source.maskVersion}`,
     softwareVersion,
+    formula: source.formula,
   }
 }

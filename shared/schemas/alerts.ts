@@ -38,6 +38,8 @@ export const evidence = z.object({
   geometryVersion: z.number().int(),
   waterMask: z.string(),
   softwareVersion: z.string(),
+  /** Formula, version and bands of a derived figure. */
+  formula: z.string().nullable().optional(),
 })
 export type Evidence = z.infer<typeof evidence>
 

@@ -14,6 +14,7 @@ import { newFeed } from '../../../shared/schemas/feeds'
 import { newRegion } from '../../../shared/schemas/regions'
 import { isoDay } from './days'
 import { historyFiles, type DemoFile } from './files'
+import { derivedFeeds } from './scenario-derived'
 import { feeds, people, regions, scenarioDays, scenarioInstant, type DemoPerson } from './scenario'
 
 const dayMs = 86_400_000
@@ -38,6 +39,7 @@ export async function seedDemo(context: Context, ticker: Ticker): Promise<void> 
   const analyst = persons.get('analyst@demo.example')!
   const feedIds = new Map<string, number>()
   for (const { key, ...feed } of feeds) feedIds.set(key, (await createFeed(context, admin, newFeed.parse(feed))).id)
+  for (const { from, ...feed } of derivedFeeds) await createFeed(context, analyst, newFeed.parse({ ...feed, derivedFrom: feedIds.get(from) }))
   for (const { key: _, feed, ...region } of regions) await drawRegion(context, analyst, newRegion.parse({ ...region, feedId: feedIds.get(feed) }))
 
   const staging = join(env.dataDir, 'demo-staging')

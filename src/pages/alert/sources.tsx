@@ -35,6 +35,12 @@ export function Sources({ evidence }: { evidence: Evidence }) {
           </span>
         </dd>
       </div>
+      {evidence.formula && (
+        <div>
+          <dt>Formula</dt>
+          <dd>{evidence.formula}</dd>
+        </div>
+      )}
       <div>
         <dt>Baseline</dt>
         <dd className="fig">{evidence.baselineVersion === null ? 'none' : `version ${evidence.baselineVersion}, ${yearsWords(evidence.baselineYears)}`}</dd>
