@@ -1,4 +1,5 @@
-import type { Grid, TransformGrid } from '../../shared/science/grid'
+import type { CurvilinearGrid, Grid, TransformGrid } from '../../shared/science/grid'
+import { quadCell, type QuadCell } from '../../shared/science/quad-cell'
 import { unprojectFrom } from './read/project'
 
 export interface GridDescription {
@@ -10,7 +11,7 @@ export interface GridDescription {
   south: number
   east: number
   north: number
-  /** Size of a cell in degrees; null where cells differ by more than a thousandth, and for projected grids. */
+  /** Size of a cell in degrees; null where cells differ by more than a thousandth, and for other grids than axes. */
   latStep: number | null
   lonStep: number | null
   /** proj4 definition of a projected grid. */
@@ -21,6 +22,9 @@ export function describeGrid(grid: Grid): GridDescription {
   const { kind, rows, columns } = grid
   if (grid.kind === 'transform') {
     return { kind, rows, columns, ...boxOf(grid), latStep: null, lonStep: null, crs: grid.crs }
+  }
+  if (grid.kind === 'curvilinear') {
+    return { kind, rows, columns, ...quadBox(grid), latStep: null, lonStep: null, crs: null }
   }
   const { latEdges, lonEdges } = grid
   const [south, north] = ordered(latEdges[0]!, latEdges[rows]!)
@@ -72,4 +76,53 @@ function boxOf(grid: TransformGrid) {
     east: Math.max(...longitudes),
     north: Math.max(...latitudes),
   }
+}
+
+/** Tenths of a degree. */
+const lonBins = 3600
+
+/** The box round cells placed one by one: in longitude all but the widest gap that no cell reaches into. */
+function quadBox(grid: CurvilinearGrid) {
+  const covered = new Uint8Array(lonBins)
+  let [south, north] = [Infinity, -Infinity]
+  for (const quad of quadsOf(grid)) {
+    south = Math.min(south, ...quad.lats)
+    north = Math.max(north, ...quad.lats)
+    const last = Math.floor(Math.max(...quad.lons) * 10)
+    for (let bin = Math.floor(Math.min(...quad.lons) * 10); bin <= last; bin++) {
+      covered[((bin % lonBins) + lonBins) % lonBins] = 1
+    }
+  }
+  const gap = widestGap(covered)
+  if (gap === null) return { west: -180, east: 180, south, north }
+  // Counted from the middle of the gap, no cell is torn apart.
+  const origin = (gap.from + gap.length / 2) / 10
+  let [west, east] = [Infinity, -Infinity]
+  for (const { lons } of quadsOf(grid)) {
+    const least = Math.min(...lons)
+    const turn = 360 * Math.floor((least - origin) / 360)
+    west = Math.min(west, least - turn)
+    east = Math.max(east, Math.max(...lons) - turn)
+  }
+  const turn = 360 * Math.floor((west + 180) / 360)
+  return { west: west - turn, east: east - turn, south, north }
+}
+
+function* quadsOf(grid: CurvilinearGrid): Generator<QuadCell> {
+  for (let cell = 0; cell < grid.rows * grid.columns; cell++) {
+    const quad = quadCell(grid, cell)
+    if (quad) yield quad
+  }
+}
+
+/** The longest run of bins that nothing covers, going round the globe; null when everything is covered. */
+function widestGap(covered: Uint8Array): { from: number; length: number } | null {
+  let best: { from: number; length: number } | null = null
+  for (let from = 0; from < lonBins; from++) {
+    if (covered[from] || !covered[(from + lonBins - 1) % lonBins]) continue
+    let length = 0
+    while (length < lonBins && !covered[(from + length) % lonBins]) length++
+    if (!best || length > best.length) best = { from, length }
+  }
+  return best
 }

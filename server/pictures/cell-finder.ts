@@ -1,4 +1,5 @@
 import type { AxesGrid, Grid } from '../../shared/science/grid'
+import { quadFinder } from './quad-finder'
 
 export interface CellPlace {
   row: number
@@ -8,6 +9,7 @@ export interface CellPlace {
 /** Answers which cell of a grid holds a place, or null outside it. Longitudes may be given in any turn. */
 export function cellFinder(grid: Grid, project?: (lon: number, lat: number) => [number, number]): (lon: number, lat: number) => CellPlace | null {
   if (grid.kind === 'axes') return axesFinder(grid)
+  if (grid.kind === 'curvilinear') return quadFinder(grid)
   const [t0, t1, t2, t3, t4, t5] = grid.transform
   const determinant = t1 * t5 - t2 * t4
   return (lon, lat) => {

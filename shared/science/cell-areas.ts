@@ -1,4 +1,6 @@
 import type { Grid, TransformGrid } from './grid'
+import { quadCell } from './quad-cell'
+import { ringAreaKm2 } from './ring-area'
 import { areaToEquatorKm2, authalicRadiusKm, cellAreaKm2 } from './wgs84'
 
 export type Unproject = (x: number, y: number) => [lon: number, lat: number]
@@ -50,12 +52,19 @@ function transformCellKm2(grid: TransformGrid, row: number, column: number, unpr
 /**
  * WGS84 area in km2 of each listed cell (whole cells, not shares). Axes grids: exact. Transform: its outline, four
  * pieces a side, unprojected and measured on the sphere of equal area. Checked to 2e-6 on a
- * UTM cell of 100 km and better on smaller ones. A corner without a place on Earth gives NaN.
+ * UTM cell of 100 km and better on smaller ones. Curvilinear: the ring of its corners. A corner without a place on Earth gives NaN.
  * RangeError for a transform grid without `unproject` (x, y of the crs to longitude, latitude), or a cell off the grid.
  */
 export function cellAreasKm2(grid: Grid, index: Uint32Array, unproject?: Unproject): Float64Array {
   if (grid.kind === 'axes') {
     return Float64Array.from(index, (cell) => cellAreaKm2(grid, Math.floor(cell / grid.columns), cell % grid.columns))
+  }
+  if (grid.kind === 'curvilinear') {
+    return Float64Array.from(index, (cell) => {
+      if (cell >= grid.rows * grid.columns) throw new RangeError(`The grid of ${grid.rows} x ${grid.columns} cells has no cell ${cell}.`)
+      const quad = quadCell(grid, cell)
+      return quad ? ringAreaKm2(quad.lons.map((lon, i) => [lon, quad.lats[i]!])) : NaN
+    })
   }
   if (!unproject) throw new RangeError('A grid with a transform needs its projection to find areas of cells.')
   return Float64Array.from(index, (cell) => {

@@ -1,7 +1,8 @@
 import type { MultiPolygon, Polygon, Position } from 'geojson'
 import { scanCoverage, type PlaneRing } from './coverage-scan'
-import type { AxesGrid, Grid, GridWindow, TransformGrid } from './grid'
+import type { AxesGrid, CurvilinearGrid, Grid, GridWindow, TransformGrid } from './grid'
 import { planeRing, type Placed } from './plane-ring'
+import { scanQuads } from './quad-shares'
 
 export type Project = (lon: number, lat: number) => [x: number, y: number]
 
@@ -76,11 +77,22 @@ function onTransform(geometry: Polygon | MultiPolygon, grid: TransformGrid, proj
   scanCoverage(rings, steps(grid.columns), steps(grid.rows), emit)
 }
 
+function onQuads(geometry: Polygon | MultiPolygon, grid: CurvilinearGrid, emit: Emit): void {
+  const rings = partsOf(geometry).flatMap((part) =>
+    part.map((ring, i) => ({
+      x: Float64Array.from(ring, ([lon = NaN]) => lon),
+      y: Float64Array.from(ring, ([, lat = NaN]) => lat),
+      hole: i > 0,
+    })),
+  )
+  scanQuads(rings, grid, emit)
+}
+
 type Emit = (row: number, column: number, share: number) => void
 
 /**
  * For every cell that meets a polygon, the share of the cell inside it: exact overlap over cell area, in the
- * longitude/latitude plane for an axes grid, in the grid's own plane for a transform grid.
+ * longitude/latitude plane for an axes or curvilinear grid, in the grid's own plane for a transform grid.
  *
  * Longitudes in degrees; polygon and grid may count them differently (-180..180, 0..360, 170..190): the polygon is
  * shifted by full turns to wherever it meets the grid. Columns past a full circle are left out, so a repeated column
@@ -95,9 +107,16 @@ export function cellShares(geometry: Polygon | MultiPolygon, grid: Grid, project
     share.push(value)
   }
   if (grid.kind === 'axes') onAxes(geometry, grid, emit)
+  else if (grid.kind === 'curvilinear') onQuads(geometry, grid, emit)
   else if (project) onTransform(geometry, grid, project, emit)
   else throw new RangeError('A grid with a transform needs its projection to find shares of cells.')
-  return { index: Uint32Array.from(index), share: Float64Array.from(share) }
+  return grid.kind === 'curvilinear' ? ascendingCells(index, share) : { index: Uint32Array.from(index), share: Float64Array.from(share) }
+}
+
+/** Curvilinear grids are gone through block by block, so their cells are put in order. */
+function ascendingCells(index: number[], share: number[]): CellShares {
+  const order = index.map((_, i) => i).sort((a, b) => index[a]! - index[b]!)
+  return { index: Uint32Array.from(order, (i) => index[i]!), share: Float64Array.from(order, (i) => share[i]!) }
 }
 
 /** The smallest rectangle of cells that holds all listed cells; null when none is listed. */

@@ -7,7 +7,7 @@ import { projectTo, unprojectFrom } from '../../server/grids/read/project'
 import { cellAreasKm2 } from '../../shared/science/cell-areas'
 import { cellShares } from '../../shared/science/cell-shares'
 import { summarise } from '../../shared/science/figures'
-import type { Grid } from '../../shared/science/grid'
+import type { CurvilinearGrid, Grid } from '../../shared/science/grid'
 
 const folder = new URL('./grids/', import.meta.url).pathname
 
@@ -25,6 +25,8 @@ interface ExpectedFile {
   latEdges?: number[]
   lonEdges?: number[]
   transform?: number[]
+  /** Of curvilinear grids: corners row by row, longitude and latitude. */
+  corners?: [number, number][][]
 }
 
 const expected = JSON.parse(readFileSync(`${folder}expected.json`, 'utf8')) as {
@@ -118,9 +120,23 @@ function comparePlace(grid: Grid, file: ExpectedFile): void {
     file.transform!.forEach((number, i) => close(grid.transform[i]!, number, 1e-12))
     return
   }
+  if (grid.kind === 'curvilinear') {
+    compareCorners(grid, file)
+    return
+  }
   file.latEdges!.forEach((edge, i) => expect(grid.latEdges[i]).toBeCloseTo(edge, 10))
   expect(grid.lonEdges.length).toBe(file.lonEdges!.length)
   // Which turn round the globe a file counts from is free; the edges must be the same places.
   const turn = 360 * Math.round((file.lonEdges![0]! - grid.lonEdges[0]!) / 360)
   file.lonEdges!.forEach((edge, i) => expect(grid.lonEdges[i]! + turn).toBeCloseTo(edge, 9))
+}
+
+function compareCorners(grid: CurvilinearGrid, file: ExpectedFile): void {
+  const corners = file.corners!.flat()
+  expect(grid.cornerLats.length).toBe(corners.length)
+  corners.forEach(([lon, lat], i) => {
+    expect(grid.cornerLats[i]).toBeCloseTo(lat, 8)
+    const aside = grid.cornerLons[i]! - lon
+    expect(aside - 360 * Math.round(aside / 360)).toBeCloseTo(0, 8)
+  })
 }

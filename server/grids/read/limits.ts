@@ -2,6 +2,8 @@ import { LayerRefused } from '../layer-refused'
 
 /** Declared sizes above these are refused before anything is allocated for them. */
 export const maxCells = 400_000_000
+/** Cells whose places are given one by one. */
+export const maxCurvedCells = 25_000_000
 export const maxWindowCells = 160_000_000
 export const maxSteps = 100_000
 export const maxAxisLength = 1_000_000
