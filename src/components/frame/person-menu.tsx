@@ -27,10 +27,10 @@ export function PersonMenu({ me }: { me: Me }) {
       trigger={
         <button
           type="button"
-          aria-label={`${me.name}: account, theme, sign out`}
           className="grid size-11 place-items-center rounded-round tab:size-9"
         >
-          <span className="grid size-8 place-items-center rounded-round border-2 border-accent text-fine font-heading text-accent">{initials(me.name)}</span>
+          <span className="heard">{me.name}: account, theme, sign out</span>
+          <span aria-hidden className="grid size-8 place-items-center rounded-round border-2 border-accent text-fine font-heading text-accent">{initials(me.name)}</span>
         </button>
       }
     >

@@ -23,6 +23,15 @@ export interface Pen {
   onCorners: (corners: [number, number][]) => void
 }
 
+/** Corner marks are for the pointer; they have no name to be called by. For the keyboard there is the outline as text. */
+function silenceMark({ layer }: L.LayerEvent): void {
+  const element = layer instanceof L.Marker ? layer.getElement() : undefined
+  if (!element?.classList.contains('marker-icon')) return
+  element.removeAttribute('role')
+  element.removeAttribute('tabindex')
+  element.setAttribute('aria-hidden', 'true')
+}
+
 /** Each tap or click puts a corner; the first corner, Enter or `finish` closes the outline. Returns how to stop. */
 export function startDrawing(map: L.Map, pen: Pen): () => void {
   const begun = ({ workingLayer }: { workingLayer: L.Layer }) => {
@@ -34,6 +43,7 @@ export function startDrawing(map: L.Map, pen: Pen): () => void {
     layer.remove()
     if (layer instanceof L.Polygon) pen.onDrawn(geometryOf(layer))
   }
+  map.on('layeradd', silenceMark)
   map.on('pm:drawstart', begun)
   map.on('pm:create', created)
   map.pm.enableDraw('Polygon', {
@@ -46,6 +56,7 @@ export function startDrawing(map: L.Map, pen: Pen): () => void {
     pathOptions: { className: 'pen-line', fill: false },
   })
   return () => {
+    map.off('layeradd', silenceMark)
     map.off('pm:drawstart', begun)
     map.off('pm:create', created)
     map.pm.disableDraw('Polygon')
@@ -64,11 +75,13 @@ export function takeBackLastCorner(map: L.Map): void {
 export function showOutline(map: L.Map, geometry: RegionGeometry, onChange?: (geometry: RegionGeometry) => void): () => void {
   const casing = L.polygon(latLngRings(geometry), { pane: outlinePane, className: 'region-casing', interactive: false, fill: false, pmIgnore: true })
   const line = L.polygon(latLngRings(geometry), { pane: outlinePane, className: 'pen-line', fill: false })
+  map.on('layeradd', silenceMark)
   casing.addTo(map)
   line.addTo(map)
   if (onChange) line.pm.enable({ snappable: false, allowSelfIntersection: true, draggable: false, removeLayerBelowMinVertexCount: false })
   line.on('pm:edit', () => onChange?.(geometryOf(line)))
   return () => {
+    map.off('layeradd', silenceMark)
     line.pm.disable()
     line.remove()
     casing.remove()
