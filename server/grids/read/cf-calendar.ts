@@ -1,3 +1,5 @@
+import { taiAheadOfUtc, utcFromTai } from './leap-seconds'
+
 /** A date as a calendar writes it; month and day from 1. */
 export interface CalendarDate {
   year: number
@@ -5,11 +7,12 @@ export interface CalendarDate {
   day: number
 }
 
-export type Calendar = 'standard' | 'proleptic_gregorian' | 'julian' | 'noleap' | 'all_leap' | '360_day'
+export type Calendar = 'standard' | 'proleptic_gregorian' | 'julian' | 'noleap' | 'all_leap' | '360_day' | 'utc' | 'tai'
 
 const aliases: Record<string, Calendar> = {
   standard: 'standard', gregorian: 'standard', proleptic_gregorian: 'proleptic_gregorian', julian: 'julian',
   noleap: 'noleap', '365_day': 'noleap', all_leap: 'all_leap', '366_day': 'all_leap', '360_day': '360_day',
+  utc: 'utc', tai: 'tai',
 }
 
 export const dayMs = 86_400_000
@@ -20,9 +23,10 @@ export function calendarNamed(name: string | null): Calendar | null {
 
 /**
  * The instant `elapsedMs` after a reference in a calendar, as epoch milliseconds.
- * standard, julian and proleptic_gregorian count real days; the others count days of their own and the date they
- * arrive at is taken as the date it names. null when a date does not exist (5 October 1582 in standard,
- * 30 February of a 360-day year on the real calendar). Source: CF conventions 4.4.1.
+ * standard, julian and proleptic_gregorian count real days; utc counts leap seconds too, and tai is the clock without
+ * them, turned into UTC; the others count days of their own and the date they arrive at is taken as the date it names.
+ * null when a date does not exist (5 October 1582 in standard, 30 February of a 360-day year on the real calendar, UTC
+ * before 1972). Source: CF conventions 4.4.1.
  */
 export function instantAfter(
   calendar: Calendar,
@@ -40,8 +44,18 @@ export function instantAfter(
     const realDay = gregorianDay(date)
     return realDay === null ? null : realDay * dayMs + rest
   }
+  if (calendar === 'utc' || calendar === 'tai') return atomic(calendar, reference, referenceMs, elapsedMs)
   const first = realDay(calendar, reference)
   return first === null ? null : (first + days) * dayMs + rest
+}
+
+function atomic(calendar: 'utc' | 'tai', reference: CalendarDate, referenceMs: number, elapsedMs: number): number | null {
+  const first = gregorianDay(reference)
+  if (first === null) return null
+  const start = first * dayMs + referenceMs
+  if (calendar === 'tai') return utcFromTai(start + elapsedMs)
+  const ahead = taiAheadOfUtc(start)
+  return ahead === null ? null : utcFromTai(start + 1000 * ahead + elapsedMs)
 }
 
 function realDay(calendar: Calendar, date: CalendarDate): number | null {

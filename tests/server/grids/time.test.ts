@@ -56,6 +56,18 @@ describe('CF time', () => {
     expect(instant(60, 'days since 2025-01-01', '360_day')).toBe('2025-03-01T00:00:00.000Z')
   })
 
+  it('counts leap seconds in utc, and turns tai into utc', () => {
+    expect(instant(86_400, 'seconds since 2016-12-31', 'standard')).toBe('2017-01-01T00:00:00.000Z')
+    expect(instant(86_399, 'seconds since 2016-12-31', 'utc')).toBe('2016-12-31T23:59:59.000Z')
+    expect(instant(86_400.5, 'seconds since 2016-12-31', 'utc')).toBe('2016-12-31T23:59:59.999Z')
+    expect(instant(86_401, 'seconds since 2016-12-31', 'utc')).toBe('2017-01-01T00:00:00.000Z')
+    expect(instant(0, 'seconds since 2024-05-01 12:00:37', 'tai')).toBe('2024-05-01T12:00:00.000Z')
+    // Satellite missions count from 1993, when TAI was 27 seconds ahead; in 2024 it was 37.
+    expect(instant(988_675_210, 'seconds since 1993-01-01 00:00:27', 'tai')).toBe('2024-05-01T00:00:00.000Z')
+    expect(instant(0, 'seconds since 1971-12-31', 'utc')).toBeNull()
+    expect(instant(0, 'days since 1957-01-01', 'tai')).toBeNull()
+  })
+
   it.each([
     ['seconds since 1970-01-01T00:00:00Z', 1000], ['sec since 1981-1-1 0:0:0', 1000], ['s since 1990-01-01', 1000],
     ['hours since 1900-01-01 00:00:0.0', 3_600_000], ['Days since 1950-01-01 00:00:00 UTC', 86_400_000],
