@@ -1,6 +1,7 @@
 import { readFileSync } from 'node:fs'
 import type { MultiPolygon, Polygon } from 'geojson'
 import { afterEach, describe, expect, it } from 'vitest'
+import { cellsWith } from '../../server/grids/flags'
 import type { GridSource } from '../../server/grids/grid-source'
 import { openGridSource } from '../../server/grids/read/open'
 import { projectTo, unprojectFrom } from '../../server/grids/read/project'
@@ -26,13 +27,19 @@ interface ExpectedFile {
   lonEdges?: number[]
   transform?: number[]
   /** Of curvilinear grids: corners row by row, longitude and latitude. */
-  corners?: [number, number][][]
+  corners?: ([number, number] | null)[][]
+  /** Ends of composites. */
+  ends?: string[]
+  /** Of a flag variable: which cells each meaning marks. */
+  flags?: Record<string, number[]>
 }
 
 const expected = JSON.parse(readFileSync(`${folder}expected.json`, 'utf8')) as {
   regions: Record<string, Record<string, Polygon | MultiPolygon>>
   files: Record<string, ExpectedFile>
 }
+const more = JSON.parse(readFileSync(`${folder}expected-more.json`, 'utf8')) as Pick<typeof expected, 'files'>
+Object.assign(expected.files, more.files)
 
 let source: GridSource | null = null
 afterEach(() => {
@@ -52,13 +59,14 @@ const close = (actual: number, wanted: number, relative: number) =>
   expect(Math.abs(actual - wanted)).toBeLessThanOrEqual(relative * Math.max(Math.abs(wanted), 1e-12))
 
 describe('files written and read back by reference libraries', () => {
-  it('are at least thirty', () => expect(Object.keys(expected.files).length).toBeGreaterThanOrEqual(30))
+  it('are at least sixty', () => expect(Object.keys(expected.files).length).toBeGreaterThanOrEqual(60))
 
   it.each(Object.keys(expected.files))('%s gives the same place, times and cell values', async (name) => {
     const { source, file, variable } = await open(name)
     expect(variable.quantity).toBe('chlorophyll')
     expect(variable.unit).toBe(file.unit)
     expect(variable.times.map(({ observedAt }) => new Date(observedAt ?? NaN).toISOString())).toEqual(file.times)
+    if (file.ends) expect(variable.times.map(({ endsAt }) => new Date(endsAt ?? NaN).toISOString())).toEqual(file.ends)
     comparePlace(variable.grid, file)
     const { rows, columns } = variable.grid
     for (const [step, wanted] of Object.entries(file.values)) {
@@ -85,6 +93,15 @@ describe('files written and read back by reference libraries', () => {
       expect(values.length).toBe(cells.length)
       cells.forEach((value, i) => (value === null ? expect(values[i]).toBeNaN() : close(values[i]!, value, 1e-9)))
     }
+  })
+
+  const flagged = Object.keys(expected.files).filter((name) => expected.files[name]!.flags)
+  it.each(flagged)('%s marks the cells that numpy finds flagged', async (name) => {
+    const { source, file, variable } = await open(name)
+    const { rows, columns } = variable.grid
+    const cells = await source.readFlags(variable.name, 0, { row: 0, column: 0, rows, columns })
+    expect(variable.flags!.meanings.map((meaning) => meaning.name)).toEqual(Object.keys(file.flags!))
+    for (const meaning of variable.flags!.meanings) expect(Array.from(cellsWith(cells, meaning))).toEqual(file.flags![meaning.name])
   })
 
   it.each(Object.keys(expected.files))('%s gives the figures of numpy and shapely for its regions', async (name) => {
@@ -134,7 +151,12 @@ function comparePlace(grid: Grid, file: ExpectedFile): void {
 function compareCorners(grid: CurvilinearGrid, file: ExpectedFile): void {
   const corners = file.corners!.flat()
   expect(grid.cornerLats.length).toBe(corners.length)
-  corners.forEach(([lon, lat], i) => {
+  corners.forEach((corner, i) => {
+    if (corner === null) {
+      expect(grid.cornerLats[i]! + grid.cornerLons[i]!).toBeNaN()
+      return
+    }
+    const [lon, lat] = corner
     expect(grid.cornerLats[i]).toBeCloseTo(lat, 8)
     const aside = grid.cornerLons[i]! - lon
     expect(aside - 360 * Math.round(aside / 360)).toBeCloseTo(0, 8)
