@@ -4,6 +4,7 @@ import { seriesColumnNames, type Series, type seriesQuery } from '../../shared/s
 import type { RuleTest } from '../../shared/science/rule'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
+import { maskedByReason } from '../queries/masked-by-reason'
 import { seriesColumns } from '../queries/series'
 
 export type SeriesQuery = z.infer<typeof seriesQuery>
@@ -13,15 +14,19 @@ export async function regionSeries(context: Context, regionId: number, query: Se
   if (!region?.geometryId) throw new ApiError('not-found', 'There is no such region.')
   const feed = await context.models.feeds.findByPk(query.feedId)
   if (!feed) throw new ApiError('not-found', 'There is no such feed.')
-  const columns = await seriesColumns(context, {
+  const views = {
     geometryId: region.geometryId,
     feedId: feed.id,
     fromDay: query.from === undefined ? null : epochDayOf(query.from),
     toDay: query.to === undefined ? null : epochDayOf(query.to),
+  }
+  const columns = await seriesColumns(context, {
+    ...views,
     columns: columnsAsked(query.columns),
     above: query.above ?? (await absoluteFloor(context, regionId, feed.id)),
   })
-  return { regionId, feedId: feed.id, unit: feed.unit, columns }
+  const masked = query.masked === 'true' ? { maskedByReason: await maskedByReason(context, views) } : {}
+  return { regionId, feedId: feed.id, unit: feed.unit, columns, ...masked }
 }
 
 function columnsAsked(text: string | undefined): (typeof seriesColumnNames)[number][] {

@@ -71,6 +71,7 @@ function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; bec
   const newerLayers = facts.newestLayerAt !== null && facts.newestLayerAt > judged.observedAt
   if (newerLayers && viewAge > (notSeenAfterHours[facts.cadence ?? 'daily'] ?? 36)) return { state: 'not seen', because: `Last seen well enough ${ageText(viewAge)} ago.` }
   if (judged.state === 'not-comparable') return { state: 'not comparable', because: 'The processing version changed, and has no earlier years of its own.' }
+  if (facts.gapFilled) return { state: 'not ready', because: `${facts.feedName} is gap-filled, and its files do not say which cells were seen: it cannot raise alerts.` }
   if (judged.state === 'not-ready') return { state: 'not ready', because: 'There are too few earlier years to say what is usual.' }
   if (judged.state === 'flagged') {
     return { state: 'usual', because: 'One view is above the rule; the rule asks for more before it calls the water unusual.' }

@@ -5,7 +5,7 @@ const kindNames: Record<string, string> = {
   'process-file': 'read a file',
   'judge-region': 'judge a region',
   'backfill-region': 'read the history of a region',
-  'backfill-feed': 'work out the history of a derived feed',
+  'backfill-feed': 'make the history of a feed anew',
   'pull-feed': 'fetch for a feed',
   'reread-views': 'make views anew',
 }

@@ -19,6 +19,11 @@ export interface FeedRow {
   silentAfterHours: number
   derivedFrom: number | null
   derivedSources: number[]
+  hiddenFlags: string[]
+  flagMeanings: string[]
+  gapFilled: boolean
+  storedLog10: boolean
+  fileUnit: string | null
   formula: string | null
   formulaVersion: string | null
   retired: boolean
@@ -26,7 +31,7 @@ export interface FeedRow {
   version: number
 }
 
-export interface FeedRecord extends Model<FeedRow, Optional<FeedRow, 'id' | 'unit' | 'validMin' | 'validMax' | 'fileNamePattern' | 'derivedFrom' | 'derivedSources' | 'formula' | 'formulaVersion' | 'version'>>, FeedRow {}
+export interface FeedRecord extends Model<FeedRow, Optional<FeedRow, 'id' | 'unit' | 'validMin' | 'validMax' | 'fileNamePattern' | 'derivedFrom' | 'derivedSources' | 'hiddenFlags' | 'flagMeanings' | 'gapFilled' | 'storedLog10' | 'fileUnit' | 'formula' | 'formulaVersion' | 'version'>>, FeedRow {}
 
 export function defineFeed(sequelize: Sequelize) {
   return sequelize.define<FeedRecord>(
@@ -47,6 +52,11 @@ export function defineFeed(sequelize: Sequelize) {
       freshnessLimitHours: { type: DataTypes.REAL, allowNull: false },
       silentAfterHours: { type: DataTypes.REAL, allowNull: false },
       derivedFrom: { type: DataTypes.INTEGER, allowNull: true },
+      hiddenFlags: { ...jsonColumn('hiddenFlags', false), defaultValue: [] },
+      flagMeanings: { ...jsonColumn('flagMeanings', false), defaultValue: [] },
+      gapFilled: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
+      storedLog10: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
+      fileUnit: { type: DataTypes.TEXT, allowNull: true },
       derivedSources: { ...jsonColumn('derivedSources', false), defaultValue: [] },
       formula: { type: DataTypes.TEXT, allowNull: true },
       formulaVersion: { type: DataTypes.TEXT, allowNull: true },

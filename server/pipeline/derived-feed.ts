@@ -21,9 +21,9 @@ export async function derivedFields(context: Context, tx: Transaction, asked: Ne
   if (source.retired) throw refused('derivedFrom', `${source.name} is retired.`)
   const formula = formulaAsked(asked)
   const derivedSources = await sourcesFor(context, tx, source, formula, asked.derivedSources ?? [])
-  const { cadence, stage, processingVersion, freshnessLimitHours, silentAfterHours } = source
+  const { cadence, stage, processingVersion, freshnessLimitHours, silentAfterHours, hiddenFlags, flagMeanings, gapFilled } = source
   const { variable, quantity, unit, scale } = formula
-  const fields = { ...asked, variable, quantity, unit, scale, cadence, stage, processingVersion, freshnessLimitHours, silentAfterHours, fileNamePattern: null }
+  const fields = { ...asked, variable, quantity, unit, scale, cadence, stage, processingVersion, freshnessLimitHours, silentAfterHours, hiddenFlags, flagMeanings, gapFilled, fileNamePattern: null }
   return { ...feedFields.parse(fields), derivedFrom: source.id, derivedSources, formula: formula.name, formulaVersion: formula.version }
 }
 

@@ -8,6 +8,8 @@ import type { Transaction } from '../db'
 import type { FeedRecord } from '../models/feed'
 import { queueFeedBackfill } from './backfill-feed'
 import { derivedFields } from './derived-feed'
+import { changesReading, checkReading } from './feed-reading'
+import { queueJudging } from './queue-judging'
 import { queueFile } from './receive-file'
 
 const hourMs = 3_600_000
@@ -48,6 +50,7 @@ export async function createFeed(context: Context, person: Person, { fileId, ...
   const feed = await context.db.write(async (tx) => {
     await freeName(context, tx, fields.name)
     const known = fields.derivedFrom === undefined ? feedFields.parse(fields) : await derivedFields(context, tx, { ...fields, derivedFrom: fields.derivedFrom })
+    checkReading(known)
     const record = await context.models.feeds.create({ ...known, retired: false, createdAt: context.clock.now() }, { transaction: tx })
     if (record.derivedFrom !== null && record.derivedFrom !== undefined) await queueFeedBackfill(context, tx, record)
     if (fileId !== undefined) await requeueNamed(context, tx, fileId)
@@ -66,12 +69,22 @@ export async function changeFeed(context: Context, person: Person, id: number, {
     if (!record) throw new ApiError('not-found', 'There is no such feed.')
     if (record.version !== version) throw new ApiError('stale-version', 'Somebody else changed this feed meanwhile. Look at it again.', { version: record.version })
     if (change.name !== undefined && change.name !== record.name) await freeName(context, tx, change.name)
+    checkReading({ ...record.get({ plain: true }), ...definedOf(change) })
+    const rereads = changesReading(record, change)
+    const rejudges = change.gapFilled !== undefined && change.gapFilled !== record.gapFilled
     await record.update({ ...change, version: version + 1 }, { transaction: tx })
+    if (rereads) await queueFeedBackfill(context, tx, record)
+    if (rejudges) await queueJudging(context, tx, { feedId: id })
     await audit(context, tx, { userId: person.id, action: 'feed:change', subject: `feed ${id}`, details: { ...change } })
     return record
   })
   context.news.tell({ topic: 'feeds', id })
+  context.wake()
   return feed
+}
+
+function definedOf<T extends object>(change: T): { [K in keyof T]?: Exclude<T[K], undefined> } {
+  return Object.fromEntries(Object.entries(change).filter(([, value]) => value !== undefined)) as { [K in keyof T]?: Exclude<T[K], undefined> }
 }
 
 async function requeueNamed(context: Context, tx: Transaction, fileId: number): Promise<void> {

@@ -3,6 +3,7 @@ import type { Context } from '../context'
 import { keepAlerts } from '../desk/keep-alerts'
 import type { JobRecord } from '../models/job'
 import { judgeableViews } from '../queries/judgeable-views'
+import type { RegionJudgement } from '../workers/tasks'
 import { keepBaseline } from './keep-baseline'
 import { keepEvents } from './keep-events'
 import { keepStanding } from './keep-standing'
@@ -25,7 +26,8 @@ export async function judgeRegion(context: Context, ruleId: number): Promise<voi
   const nowDay = localSolarDay(context.clock.now(), subject.geometry.centreLongitude)
   const newest = views.reduce((day, view) => Math.max(day, view.day), -Infinity)
   const today = Math.max(nowDay, Math.min(newest, nowDay + 1))
-  const judgement = await context.workers.heavy('judgeRegion', { views, rule: subject.definition, today })
+  const found = await context.workers.heavy('judgeRegion', { views, rule: subject.definition, today })
+  const judgement = subject.feed.gapFilled ? unsure(found) : found
   const changes = await context.db.write(async (tx) => {
     const baselineId = await keepBaseline(context, tx, subject, views, judgement)
     const events = await keepEvents(context, tx, subject, judgement.events, baselineId)
@@ -33,4 +35,9 @@ export async function judgeRegion(context: Context, ruleId: number): Promise<voi
     return keepAlerts(context, tx, subject, { views, judgement, events, baselineId })
   })
   context.news.tell({ topic: 'regions', id: subject.region.id }, ...changes)
+}
+
+/** Where cells may be filled in rather than seen, no view can be judged and nothing may be raised. */
+function unsure(judgement: RegionJudgement): RegionJudgement {
+  return { ...judgement, events: [], judged: judgement.judged.map((view) => (view.state === 'not-seen' ? view : { ...view, state: 'not-ready' })) }
 }

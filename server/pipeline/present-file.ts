@@ -1,5 +1,5 @@
 import { dateOf } from '../../shared/science/local-day'
-import type { FileItem, OffingFile } from '../../shared/schemas/files'
+import type { FileItem, OffingFile, ReportVariable } from '../../shared/schemas/files'
 import type { Context } from '../context'
 import type { FileRecord } from '../models/file'
 
@@ -58,9 +58,22 @@ export async function presentFile(context: Context, file: FileRecord): Promise<O
   )
   return {
     ...item!,
-    report: file.report,
+    report: file.report && { ...file.report, variables: await withMasked(context, file) },
     proposal: file.proposal,
     layers: layers.map((layer) => ({ ...layer, observedAt: iso(layer.observedAt)! })),
     summaries: summaries.map((row) => ({ ...row, day: dateOf(row.day) })),
   }
+}
+
+/** Which flagged cells are hidden: by the feeds that read the variable, or by the proposal while the file waits for one. */
+async function withMasked(context: Context, file: FileRecord): Promise<ReportVariable[]> {
+  const { variables = [], feeds = [] } = file.report ?? {}
+  const records = await context.models.feeds.findAll({ where: { id: feeds.map((one) => one.feedId) } })
+  return variables.map((variable) => {
+    const own = feeds.filter((one) => one.variable === variable.name).map((one) => one.feedId)
+    const byFeeds = records.filter((record) => own.includes(record.id)).flatMap((record) => record.hiddenFlags)
+    const hidden = new Set(file.proposal?.variable === variable.name ? [...byFeeds, ...(file.proposal.hiddenFlags ?? [])] : byFeeds)
+    const masked = (variable.flags ?? []).filter((flag) => hidden.has(flag.meaning)).map(({ meaning, cells }) => ({ reason: meaning, cells }))
+    return { ...variable, masked }
+  })
 }

@@ -6,6 +6,7 @@ import type { Seen } from '../workers/inspect-file'
 import { markProgress } from '../jobs/queue'
 import { addLayers, keepGrids } from './add-layers'
 import { deriveFrom, type DerivedShare } from './derive-from'
+import { noteQuality } from './feed-reading'
 import { ensureFirstRule, regionsWithoutRule } from './first-rule'
 import { matchFeeds, type FeedMatch } from './match-feeds'
 import { proposeFeed } from './propose-feed'
@@ -68,6 +69,7 @@ async function finish(context: Context, file: FileRecord, seen: Seen, matches: F
       { status: 'processed', processedAt: context.clock.now(), report: { ...seen.report, feeds }, proposal: null, waitingFor: null, refusal: null },
       { transaction: tx },
     )
+    await noteQuality(context, tx, matches)
     for (const region of await regionsWithoutRule(context, tx)) await ensureFirstRule(context, tx, region)
     for (const { feed } of [...matches, ...derived]) await queueJudging(context, tx, { feedId: feed.id })
   })

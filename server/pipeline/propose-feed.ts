@@ -1,4 +1,5 @@
 import type { FeedProposal } from '../../shared/schemas/feeds'
+import { proposeHiddenFlags } from './propose-flags'
 import type { Seen, SeenVariable } from '../workers/inspect-file'
 
 const dayMs = 86_400_000
@@ -22,6 +23,11 @@ export function proposeFeed(seen: Seen, fileName: string, takenNames: readonly s
     validMax: null,
     fileNamePattern: variable.times.some((time) => time.observedAt === null) ? patternOf(fileName) : null,
     freshnessLimitHours: 72,
+    hiddenFlags: proposeHiddenFlags(variable.flagMeanings),
+    flagMeanings: variable.flagMeanings,
+    gapFilled: variable.gapFilled === 'unmarked',
+    storedLog10: false,
+    fileUnit: null,
     silentAfterHours: cadence === 'daily' ? 72 : cadence === '8-day' ? 24 * 20 : 24 * 70,
   }
 }

@@ -19,6 +19,10 @@ export interface PlacedLayer {
   east: number
   north: number
   columns: number
+  hiddenFlags: string[]
+  storedLog10: boolean
+  fileUnit: string | null
+  unit: string | null
   /** Set where the values are worked out: by which formula, of what. */
   recipe: LayerRecipe | null
 }
@@ -29,11 +33,12 @@ export interface LayerRecipe {
   bands: { checksum: string; fileName: string; variable: string; step: number; wavelengthNm: number }[]
 }
 
-type Row = Omit<PlacedLayer, 'recipe'> & { formula: string | null; formulaVersion: string | null; bands: string | null }
+type Row = Omit<PlacedLayer, 'recipe' | 'hiddenFlags' | 'storedLog10'> & { hiddenFlags: string; storedLog10: number; formula: string | null; formulaVersion: string | null; bands: string | null }
 
 const placed = `SELECT l.id, l.feed_id AS feedId, l.file_id AS fileId, l.grid_id AS gridId, f.name AS fileName, l.checksum, l.variable, l.step,
   l.observed_at AS observedAt, l.ends_at AS endsAt, l.has_clock AS hasClock, l.processing_version AS processingVersion,
   g.west, g.south, g.east, g.north, g.column_count AS columns, fe.formula, fe.formula_version AS formulaVersion,
+  fe.hidden_flags AS hiddenFlags, fe.stored_log10 AS storedLog10, fe.file_unit AS fileUnit, fe.unit,
   CASE WHEN fe.formula IS NULL THEN NULL ELSE (
     SELECT json_group_array(json_object('checksum', b.checksum, 'fileName', b.name, 'variable', s.variable, 'step', s.step, 'wavelengthNm', s.wavelength_nm))
     FROM (SELECT * FROM layer_sources WHERE layer_id = l.id ORDER BY slot) s JOIN files b ON b.id = s.file_id) END AS bands
@@ -44,9 +49,9 @@ const isTrusted = `l.suspect_at IS NULL AND NOT EXISTS (
   SELECT 1 FROM layer_sources s JOIN layers b ON b.file_id = s.file_id AND b.step = s.step AND b.variable = s.variable AND b.suspect_at IS NOT NULL
   WHERE s.layer_id = l.id)`
 
-function placedLayer({ formula, formulaVersion, bands, ...layer }: Row): PlacedLayer {
+function placedLayer({ formula, formulaVersion, bands, hiddenFlags, storedLog10, ...layer }: Row): PlacedLayer {
   const recipe = formula === null || bands === null ? null : { formula, formulaVersion: formulaVersion ?? '', bands: JSON.parse(bands) as LayerRecipe['bands'] }
-  return { ...layer, recipe }
+  return { ...layer, hiddenFlags: JSON.parse(hiddenFlags) as string[], storedLog10: storedLog10 === 1, recipe }
 }
 
 export async function layersById(context: Context, ids: readonly number[]): Promise<PlacedLayer[]> {

@@ -11,6 +11,7 @@ export interface RegionFacts {
   unit: string | null
   cadence: string | null
   silentAfterHours: number | null
+  gapFilled: number | null
   ruleId: number | null
   definition: RuleDefinition | null
   newestLayerAt: number | null
@@ -42,7 +43,7 @@ type Row = Omit<RegionFacts, 'definition' | 'judged'> & { definition: string | n
 export async function regionFacts(context: Context, regionId?: number): Promise<RegionFacts[]> {
   const rows = await context.db.all<Row>(
     `SELECT r.id AS regionId, r.geometry_id AS geometryId, f.id AS feedId, f.name AS feedName, f.unit, f.cadence,
-       f.silent_after_hours AS silentAfterHours, ru.id AS ruleId, rv.definition,
+       f.silent_after_hours AS silentAfterHours, f.gap_filled AS gapFilled, ru.id AS ruleId, rv.definition,
        (SELECT max(ifnull(l.ends_at, l.observed_at)) FROM layers l WHERE l.feed_id = f.id) AS newestLayerAt,
        a.id AS alertId, a.severity AS alertSeverity, j.done AS jobDone, j.total AS jobTotal,
        CASE WHEN s.rule_id IS NULL THEN NULL ELSE json_object('state', s.state, 'inEvent', s.in_event, 'severity', s.severity, 'day', s.day,

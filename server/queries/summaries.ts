@@ -39,6 +39,7 @@ export async function writeSummaries(
   const picked = columns.map((_, i) => (i === columns.length - 1 ? `unhex(r.value ->> ${i})` : `r.value ->> ${i}`)).join(', ')
   const changed = JSON.stringify([...rows, ...empty].map((row) => [row.geometryId, row.feedId, row.day]))
   const isChanged = `(geometry_id, feed_id, day) IN (SELECT value ->> 0, value ->> 1, value ->> 2 FROM json_each($changed))`
+  await context.db.run(`DELETE FROM summary_reasons WHERE ${isChanged}`, { changed }, tx)
   await context.db.run(`DELETE FROM view_layers WHERE ${isChanged}`, { changed }, tx)
   await context.db.run(`DELETE FROM summaries WHERE ${isChanged}`, { changed }, tx)
   await context.db.run(`INSERT INTO summaries (${columns.join(', ')}) SELECT ${picked} FROM json_each($rows) r`, { rows: JSON.stringify(summaries) }, tx)
@@ -47,6 +48,14 @@ export async function writeSummaries(
     `INSERT INTO view_layers (geometry_id, feed_id, day, layer_id)
      SELECT value ->> 0, value ->> 1, value ->> 2, value ->> 3 FROM json_each($links)`,
     { links: JSON.stringify(links) },
+    tx,
+  )
+  const reasons = rows.flatMap((row) => row.figures.masked.map(({ reason, areaKm2 }) => [row.geometryId, row.feedId, row.day, reason, areaKm2]))
+  if (reasons.length === 0) return
+  await context.db.run(
+    `INSERT INTO summary_reasons (geometry_id, feed_id, day, reason, area_km2)
+     SELECT value ->> 0, value ->> 1, value ->> 2, value ->> 3, value ->> 4 FROM json_each($reasons)`,
+    { reasons: JSON.stringify(reasons) },
     tx,
   )
 }

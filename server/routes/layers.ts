@@ -6,6 +6,7 @@ import type { Context } from '../context'
 import { knownLayer, layerCell, layerTile } from '../pipeline/layer-pictures'
 import { markSuspect } from '../pipeline/mark-suspect'
 import { layerRows } from '../queries/layer-rows'
+import type { PlacedLayer } from '../queries/layers'
 import { cursorId, pageOf } from './paging'
 import { serve } from './serve'
 
@@ -24,7 +25,7 @@ export function layerRoutes(router: Router, context: Context): void {
   serve(router, context, endpoints.layer, ({ params }) => one(params.id))
   serve(router, context, endpoints.layerTile, async ({ params: { id, z, x, y }, query: { theme }, req, res }) => {
     const layer = await knownLayer(context, id)
-    const tag = `"${createHash('sha1').update(`1:${layer.id}:${layer.checksum}:${layer.variable}:${layer.step}:${z}/${x}/${y}:${theme}`).digest('base64url')}"`
+    const tag = `"${createHash('sha1').update(`${shownBy(layer)}:${z}/${x}/${y}:${theme}`).digest('base64url')}"`
     res.set({ ETag: tag, 'Cache-Control': 'private, max-age=86400' })
     if (req.get('If-None-Match') === tag) {
       res.status(304).end()
@@ -42,4 +43,9 @@ export function layerRoutes(router: Router, context: Context): void {
     await markSuspect(context, person, params.id, body)
     return one(params.id)
   })
+}
+
+/** All that the values of a layer hang on: its file or recipe, and how its feed wants it read. */
+function shownBy({ id, checksum, variable, step, recipe, hiddenFlags, storedLog10, fileUnit }: PlacedLayer): string {
+  return JSON.stringify([2, id, checksum, variable, step, recipe, hiddenFlags, storedLog10, fileUnit])
 }

@@ -3,15 +3,22 @@ import type { GridWindow } from '../../shared/science/grid'
 import { packHistogram } from '../../shared/science/histogram'
 import { mergeLayers } from '../../shared/science/merge-views'
 import { windowOf } from '../../shared/science/cell-shares'
-import { readLayer } from './read-layer'
+import { maskedAreas } from './masked-areas'
+import { readMasked, type MaskedValues } from './read-masked'
 import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
 
 type Input = Tasks['summariseViews']['input']
 
-interface Reading {
+interface Reading extends MaskedValues {
   window: GridWindow
-  values: Float64Array
 }
+
+/** One layer's cells of a region, and what was hidden of them. */
+interface RegionLayer extends MaskedValues {
+  processingVersion: string
+}
+
+const outOfRange = 'outside the valid range'
 
 /**
  * Figures of many views. Each layer is read once, over the window of all regions that need it; views are merged cell by
@@ -21,15 +28,15 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
   const wanted = windowsOf(input)
   const figures: ViewFigures[] = new Array(input.views.length)
   const users = viewsOfLayers(input)
-  const cellsOfView = new Map<number, { values: Float64Array; processingVersion: string }[]>()
+  const cellsOfView = new Map<number, RegionLayer[]>()
   for (const [at, layer] of input.layers.entries()) {
     const window = wanted[at]
     if (!window) continue
-    const reading = { window, values: withinRange(await readLayer(layer, window), input) }
+    const reading = { window, ...withinRange(await readMasked(layer, window), input) }
     for (const view of users[at]!) {
       const task = input.views[view]!
       const collected = cellsOfView.get(view) ?? []
-      collected.push({ values: pick(reading, input.weights[task.weights]!), processingVersion: layer.processingVersion })
+      collected.push({ ...ofRegion(reading, input.weights[task.weights]!), processingVersion: layer.processingVersion })
       cellsOfView.set(view, collected)
       if (collected.length < task.layers.length) continue
       figures[view] = figuresOf(collected, input.weights[task.weights]!, input.scale)
@@ -40,7 +47,7 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
 }
 
 function figuresOf(
-  layers: { values: Float64Array; processingVersion: string }[],
+  layers: RegionLayer[],
   weights: RegionCellWeights,
   scale: Input['scale'],
 ): ViewFigures {
@@ -52,6 +59,7 @@ function figuresOf(
     ...rest,
     maxCell: maxIndex === null ? null : weights.index[maxIndex]!,
     histogram: packHistogram(histogram),
+    masked: maskedAreas(layers, values, weights, water),
   }
 }
 
@@ -84,9 +92,14 @@ function union(a: GridWindow | null, b: GridWindow): GridWindow {
   }
 }
 
-function pick({ window, values }: Reading, weights: RegionCellWeights): Float64Array {
-  const { index, columns } = weights
-  const picked = new Float64Array(index.length)
+function ofRegion({ window, values, hidden }: Reading, weights: RegionCellWeights): MaskedValues {
+  return {
+    values: pick(values, new Float64Array(weights.index.length), window, weights),
+    hidden: new Map([...hidden].map(([reason, cells]) => [reason, pick(cells, new Uint8Array(weights.index.length), window, weights)])),
+  }
+}
+
+function pick<T extends Float64Array | Uint8Array>(values: T, picked: T, window: GridWindow, { index, columns }: RegionCellWeights): T {
   for (let i = 0; i < index.length; i++) {
     const row = Math.floor(index[i]! / columns)
     picked[i] = values[(row - window.row) * window.columns + (index[i]! - row * columns) - window.column]!
@@ -95,10 +108,11 @@ function pick({ window, values }: Reading, weights: RegionCellWeights): Float64A
 }
 
 /** The feed's own valid range, in the unit of the feed. */
-function withinRange(values: Float64Array, { validMin, validMax }: Input): Float64Array {
-  if (validMin === null && validMax === null) return values
+function withinRange({ values, hidden }: MaskedValues, { validMin, validMax }: Input): MaskedValues {
+  if (validMin === null && validMax === null) return { values, hidden }
   const low = validMin ?? -Infinity
   const high = validMax ?? Infinity
-  return values.map((value) => (value >= low && value <= high ? value : NaN))
+  const outside = Uint8Array.from(values, (value) => Number(value < low || value > high))
+  return { values: values.map((value) => (value >= low && value <= high ? value : NaN)), hidden: new Map([...hidden, [outOfRange, outside]]) }
 }
 

@@ -12,9 +12,19 @@ export interface StoredValues {
   step: number
 }
 
+/** How a feed wants its numbers read. */
+export interface ValueReading {
+  hiddenFlags: string[]
+  storedLog10: boolean
+  /** The unit of the file's numbers where the file names none, and that of the feed. */
+  fileUnit: string | null
+  unit: string | null
+}
+
 /** Where a layer's values are; with a recipe they are worked out from its bands instead. */
 export interface LayerPlace extends StoredValues {
   processingVersion: string
+  reading: ValueReading
   recipe?: { formula: string; formulaVersion: string; bands: (StoredValues & { wavelengthNm: number })[] }
 }
 
@@ -38,6 +48,8 @@ export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
   /** Cell of the greatest value, its index in the grid. */
   maxCell: number | null
   histogram: Uint8Array
+  /** Water not seen, by the reason it was hidden for; one cell may have several. */
+  masked: { reason: string; areaKm2: number }[]
 }
 
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */

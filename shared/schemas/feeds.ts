@@ -7,6 +7,8 @@ export const cadences = ['daily', '8-day', 'monthly'] as const
 
 const text = (max: number) => z.string().trim().min(1).max(max)
 
+const flagNames = z.array(text(100)).max(200)
+
 export const feedFields = z.object({
   name: text(100),
   quantity: z.enum(quantities),
@@ -25,6 +27,16 @@ export const feedFields = z.object({
   freshnessLimitHours: z.number().min(1).max(24 * 60).default(72),
   /** No layer for this long: the feed is silent. */
   silentAfterHours: z.number().min(1).max(24 * 120).default(72),
+  /** Flag meanings, as the file spells them, that hide a cell. */
+  hiddenFlags: flagNames.default([]),
+  /** All flag meanings found in its files. */
+  flagMeanings: flagNames.default([]),
+  /** Cells may have been filled in, and the files don't say which: such a feed raises no alert. */
+  gapFilled: z.boolean().default(false),
+  /** The numbers are base-10 logarithms; counts where the file does not say so itself. */
+  storedLog10: z.boolean().default(false),
+  /** The unit of the file's numbers; counts where the file names none. */
+  fileUnit: text(50).nullable().default(null),
 })
 
 /** What the formula of a derived feed says by itself. */
@@ -65,6 +77,10 @@ export const feedChange = z.object({
   fileNamePattern: text(200).nullable().optional(),
   freshnessLimitHours: z.number().min(1).max(24 * 60).optional(),
   silentAfterHours: z.number().min(1).max(24 * 120).optional(),
+  hiddenFlags: flagNames.optional(),
+  gapFilled: z.boolean().optional(),
+  storedLog10: z.boolean().optional(),
+  fileUnit: text(50).nullable().optional(),
   retired: z.boolean().optional(),
 })
 

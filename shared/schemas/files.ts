@@ -37,6 +37,12 @@ export const reportVariable = z.object({
   min: z.number().nullable(),
   median: z.number().nullable(),
   max: z.number().nullable(),
+  /** Flag meanings found beside it, with the cells of the first step each applies to (the middle rows of a very large grid). */
+  flags: z.array(z.object({ meaning: z.string(), cells: z.number().int() })).optional(),
+  /** 'marked': the file says which cells were filled in; 'unmarked': it says only that some were. */
+  gapFilled: z.enum(['marked', 'unmarked']).nullable().optional(),
+  /** Of those, what the feeds that read it hide, or the proposal would. */
+  masked: z.array(z.object({ reason: z.string(), cells: z.number().int() })).optional(),
 })
 export type ReportVariable = z.infer<typeof reportVariable>
 

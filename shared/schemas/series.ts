@@ -36,6 +36,8 @@ export const seriesQuery = z.object({
   columns: z.string().max(400).optional(),
   /** The level of areaAboveKm2, in the feed's unit; the rule's absolute floor when left out. */
   above: z.coerce.number().positive().optional(),
+  /** Adds `maskedByReason`. */
+  masked: z.enum(['true', 'false']).optional(),
 })
 
 export const series = z.object({
@@ -43,6 +45,8 @@ export const series = z.object({
   feedId: id,
   unit: z.string().nullable(),
   columns: z.object(seriesColumns).partial(),
+  /** Water hidden in each view for each reason, km2, in the order of the columns; only where asked for. */
+  maskedByReason: z.record(z.string(), z.array(z.number())).optional(),
 })
 export type Series = z.infer<typeof series>
 

@@ -22,6 +22,7 @@ export function aWaitingFile(change: Partial<OffingFile> = {}): OffingFile {
     proposal: {
       name: 'Chlorophyll, daily', quantity: 'chlorophyll', variable: 'chl', unit: 'mg m-3', scale: 'log10', cadence: 'daily', stage: 'near-real-time',
       processingVersion: 'R2026.1', validMin: 0.001, validMax: 30, fileNamePattern: 'west_chl_*', freshnessLimitHours: 72, silentAfterHours: 72,
+      hiddenFlags: [], flagMeanings: [], gapFilled: false, storedLog10: false, fileUnit: null,
     },
     layers: [],
     summaries: [],
