@@ -17,12 +17,16 @@ export function FeedFacts({ feed }: { feed: Feed }) {
     ['Stage', feed.stage],
     ['Processing version', <span className="fig">{feed.processingVersion}</span>],
     ['Valid range', rangeWords(feed)],
+    ['Hidden cells', feed.hiddenFlags.length > 0 ? <span className="fig break-words">{feed.hiddenFlags.join(', ')}</span> : 'none by flags'],
     ['File names', <span className="fig break-all">{feed.fileNamePattern ?? 'any'}</span>],
     ['Told at once', `views up to ${feed.freshnessLimitHours} h old`],
     ['Silent after', `${feed.silentAfterHours} h without a layer`],
     ['Layers', <span className="fig">{grouped(feed.layers)}</span>],
   ]
   if (feed.oldestLayerAt) facts.push(['Since', <span className="fig">{dayWithYear(feed.oldestLayerAt)}</span>])
+  if (feed.gapFilled) facts.push(['Gap-filled', 'raises no alert: its files do not say which cells were seen'])
+  if (feed.storedLog10) facts.push(['Numbers', 'base-10 logarithms, where the file does not say'])
+  if (feed.fileUnit !== null) facts.push(['Unit of files', unitWords(feed.fileUnit)])
   if (feed.formula !== null) {
     const formula = formulaOf(feed.formula, feed.formulaVersion ?? '')
     facts.push(['Worked out by', `${formula?.title ?? feed.formula}, version ${feed.formulaVersion ?? '1'}`])

@@ -15,6 +15,7 @@ import { DeriveFeed } from './derive-feed'
 import { FeedFacts } from './feed-facts'
 import { FeedForm } from './feed-form'
 import { PullPart } from './pull-part'
+import { QualityForm } from './quality-form'
 import { RetireFeed } from './retire-feed'
 
 export function Component() {
@@ -68,6 +69,7 @@ function FeedParts({ feed }: { feed: Feed }) {
           {feed.derivedFrom === null && <PullPart feed={feed} />}
           {mayDerive && <DeriveFeed feed={feed} />}
           {mayEdit && <FeedForm key={feed.version} feed={feed} />}
+          {mayEdit && <QualityForm key={`quality ${feed.version}`} feed={feed} />}
           {mayEdit && !feed.retired && <RetireFeed feed={feed} />}
         </div>
       </div>

@@ -6,6 +6,7 @@ import { useCan } from '../../api/auth'
 import { useCreateFeed } from '../../api/feeds'
 import { Button } from '../../components/ui/button'
 import { Failure } from '../../components/ui/failure'
+import { CheckField } from '../../components/ui/field'
 import { FaultMark } from '../../components/ui/fault-mark'
 import { Message } from '../../components/ui/message'
 import { SectionHead } from '../../components/ui/page'
@@ -51,6 +52,20 @@ export function ConfirmFeed({ file, proposal }: { file: OffingFile; proposal: Fe
         <PleaseSay item="Unit" note={<Note errors={errors} field="unit" text="of the values kept; leave it empty for none" />}>
           <input aria-label="Unit" aria-invalid={Boolean(errors.unit)} className={`${control} fig`} {...form.register('unit')} />
         </PleaseSay>
+        {variable?.fileUnit === null && (
+          <PleaseSay item="Unit of the file" note={<Note errors={errors} field="fileUnit" text="of the numbers as stored, as the file names none; empty for the unit above" />}>
+            <input aria-label="Unit of the file’s numbers" aria-invalid={Boolean(errors.fileUnit)} className={`${control} fig`} {...form.register('fileUnit')} />
+          </PleaseSay>
+        )}
+        {proposal.flagMeanings.length > 0 && (
+          <PleaseSay item="Hidden cells" note="cells with a ticked flag are not seen; a usual mask may hide a bright bloom">
+            <div className="grid gap-x-4 tab:grid-cols-2">
+              {proposal.flagMeanings.map((meaning) => (
+                <CheckField key={meaning} label={<span className="fig">{meaning}</span>} value={meaning} {...form.register('hiddenFlags')} />
+              ))}
+            </div>
+          </PleaseSay>
+        )}
         <PleaseSay
           item="File names"
           note={<Note errors={errors} field="fileNamePattern" text="which later files belong to it: {yyyy} {MM} {dd} are the date, * is anything; empty for any name" />}

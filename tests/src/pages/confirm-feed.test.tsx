@@ -13,9 +13,9 @@ import { show } from '../support/show'
 const analyst: Me = { ...officer, id: 2, name: 'Ana Quill', roles: ['analyst'] }
 const waiting = aWaitingFile()
 
-function open(me: Me) {
+function open(me: Me, file = waiting) {
   const asked = fakeServer({
-    'GET /files/9': () => reply(endpoints.file, waiting),
+    'GET /files/9': () => reply(endpoints.file, file),
     'GET /feeds': () => reply(endpoints.listFeeds, { items: [], nextCursor: null }),
     'POST /feeds': ({ body }) => {
       const feed: Feed = {
@@ -58,4 +58,14 @@ test('who may not confirm a feed is told who can', async () => {
   open(officer)
   expect(await screen.findByText('An analyst has to confirm the feed.')).toBeVisible()
   expect(screen.queryByRole('button', { name: /Confirm/ })).toBeNull()
+})
+
+test('flags found in the file are shown, those that usually hide a cell ticked, and what is ticked is sent', async () => {
+  const proposal = { ...waiting.proposal!, flagMeanings: ['LAND', 'CLDICE', 'COCCOLITH'], hiddenFlags: ['LAND', 'CLDICE'] }
+  const asked = open(analyst, { ...waiting, proposal })
+  expect(await screen.findByRole('checkbox', { name: 'CLDICE' })).toBeChecked()
+  expect(screen.getByRole('checkbox', { name: 'COCCOLITH' })).not.toBeChecked()
+  await userEvent.click(screen.getByRole('checkbox', { name: 'LAND' }))
+  await userEvent.click(screen.getByRole('button', { name: /Confirm the feed/ }))
+  await expect.poll(() => asked.find((one) => one.method === 'POST')?.body).toMatchObject({ hiddenFlags: ['CLDICE'] })
 })
