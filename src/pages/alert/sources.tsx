@@ -3,7 +3,8 @@ import { paths } from '../../../shared/paths'
 import type { Evidence } from '../../../shared/schemas/alerts'
 import { useMe } from '../../api/auth'
 import { dayAndTime, zoneWord } from '../../lib/dates'
-import { shortChecksum, unitWords } from '../../lib/format'
+import { unitWords } from '../../../shared/figure-text'
+import { shortChecksum } from '../../lib/format'
 import { yearsWords } from '../../lib/years-words'
 
 /** Where each figure came from, as it was when it was judged. */
