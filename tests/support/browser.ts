@@ -1,5 +1,6 @@
 import { spawn } from 'node:child_process'
-import { access, constants, readFile } from 'node:fs/promises'
+import { access, constants, mkdir, readFile } from 'node:fs/promises'
+import { tmpdir } from 'node:os'
 import { delimiter, join } from 'node:path'
 import { chromium, type Browser, type BrowserContext, type Page } from 'playwright-core'
 import { chromiumPath } from '../../server/env'
@@ -70,6 +71,8 @@ export const phone: Look = { width: 390, height: 844 }
 export interface Watched {
   /** Somebody at a screen of their own, with nothing kept from anybody else. */
   person(look?: Look): Promise<Person>
+  /** Pictures of every open page, for whoever looks into a failure; answers where they are. */
+  capture(): Promise<string[]>
   /** What no page may do: complain to the console, throw, or ask anybody but this machine. */
   faults: string[]
   close(): Promise<void>
@@ -93,8 +96,18 @@ export async function openBrowser(executablePath: string, baseUrl: string): Prom
       watch(context, baseUrl, faults)
       return { page: await context.newPage(), context }
     },
+    capture: () => capture(browser),
     close: () => browser.close(),
   }
+}
+
+async function capture(browser: Browser): Promise<string[]> {
+  const folder = join(tmpdir(), 'offing-journeys')
+  await mkdir(folder, { recursive: true })
+  const pages = browser.contexts().flatMap((context) => context.pages())
+  const paths = pages.map((_, at) => join(folder, `page-${at + 1}.png`))
+  await Promise.all(pages.map((page, at) => page.screenshot({ path: paths[at], fullPage: true, timeout: 10_000 }).catch(() => undefined)))
+  return pages.map((page, at) => `${page.url()} ${paths[at]}`)
 }
 
 function watch(context: BrowserContext, baseUrl: string, faults: string[]): void {
