@@ -52,7 +52,7 @@ describe('judging a view by the default rule', () => {
 
   it('without a baseline, or one of too few years, it is not ready and never called usual', () => {
     expect(judgeView(view(1, 0.1), null, rule)).toMatchObject({ state: 'not-ready', usual: null, threshold: null })
-    expect(judgeView(view(1, 50), usualDay(1, { years: 2 }), rule)).toMatchObject({ state: 'not-ready', p90: null })
+    expect(judgeView(view(1, 50), usualDay(1, { years: 1 }), rule)).toMatchObject({ state: 'not-ready', p90: null })
     expect(judgeView(view(1, 50), usualDay(1, { p90: null }), rule).state).toBe('not-ready')
     expect(judgeView(view(1, 50), usualDay(1, { p50: 0 }), rule).state).toBe('not-ready')
   })

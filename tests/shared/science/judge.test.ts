@@ -11,14 +11,14 @@ const views = years(2018, 2023, bloom)
 const today = epochDayOf('2023-12-31')
 
 describe('judging a series', () => {
-  it('years without three years before them are not ready, later ones are judged', () => {
+  it('years without two years before them are not ready, later ones are judged', () => {
     const { judged } = judgeSeries({ views, rule, today })
     const statesOf = (from: string, to: string) => {
       const within = judged.filter(({ day }) => day >= epochDayOf(from) && day <= epochDayOf(to))
       return [...new Set(within.map(({ state }) => state))]
     }
-    expect(statesOf('2018-01-01', '2020-12-31')).toEqual(['not-ready'])
-    expect(statesOf('2021-01-01', '2022-12-31')).toEqual(['unflagged'])
+    expect(statesOf('2018-01-01', '2019-12-31')).toEqual(['not-ready'])
+    expect(statesOf('2020-01-01', '2022-12-31')).toEqual(['unflagged'])
   })
 
   it('a bloom becomes one event with its days and its peak', () => {
