@@ -113,7 +113,19 @@ function decodeTag(bytes: Buffer, type: number, length: number, { view, littleEn
   return Array.from({ length }, (_, i) => decode(i))
 }
 
+/** Sizes and counts are whole numbers, whatever type a damaged tag gives them. */
+const wholeTags = [
+  tags.width, tags.height, tags.bits, tags.compression, tags.samples, tags.rowsPerStrip, tags.planar, tags.tileWidth, tags.tileHeight,
+  tags.stripOffsets, tags.stripBytes, tags.tileOffsets, tags.tileBytes, tags.predictor, tags.sampleFormat, tags.photometric,
+]
+
 function checkBlocks(directory: TiffDirectory, fileSize: number): void {
+  for (const tag of wholeTags) {
+    const value = directory.get(tag)
+    if (typeof value === 'string' || value?.some((number) => !Number.isSafeInteger(number) || number < 0)) {
+      throw damaged(`tag ${tag} holds no whole numbers`)
+    }
+  }
   const tiled = directory.has(tags.tileOffsets)
   const offsets = numbersIn(directory, tiled ? tags.tileOffsets : tags.stripOffsets)
   const bytes = numbersIn(directory, tiled ? tags.tileBytes : tags.stripBytes)

@@ -5,6 +5,7 @@ import { join } from 'node:path'
 import { deflateSync, gzipSync } from 'node:zlib'
 import { Dataset } from 'h5wasm/node'
 import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest'
+import { hdf5Library } from '../../../server/grids/hdf5-library'
 import { LayerRefused } from '../../../server/grids/layer-refused'
 import { gunzipBeside } from '../../../server/grids/read/gunzip'
 import { openClassic } from '../../../server/grids/read/netcdf-classic'
@@ -189,7 +190,7 @@ describe('an HDF5 file', () => {
 
   it('whose chunks hold many steps unpacks each chunk once', async () => {
     const path = join(folder, 'steps.nc')
-    const { File } = await import('h5wasm/node')
+    const { File } = await hdf5Library()
     const file = new File(path, 'w')
     const axis = (name: string, values: number[], units: string) => {
       const set = file.create_dataset({ name, data: Float64Array.from(values), shape: [values.length] })

@@ -27,7 +27,7 @@ const value = fc.oneof(
 )
 const gridFile = fc
   .record({
-    rows: fc.integer({ min: 2, max: 7 }), columns: fc.integer({ min: 2, max: 7 }), steps: fc.integer({ min: 1, max: 4 }),
+    rows: fc.integer({ min: 2, max: 7 }), columns: fc.integer({ min: 2, max: 7 }), steps: fc.integer({ min: 1, max: 4 }), composite: fc.boolean(),
     south: fc.integer({ min: -80, max: 70 }), west: fc.integer({ min: -180, max: 179 }), step: fc.constantFrom(0.05, 0.25, 1),
     descending: fc.boolean(), deflate: fc.constantFrom(undefined, 1, 6), dtype: fc.constantFrom('i2' as const, 'f4' as const),
   })
@@ -40,6 +40,7 @@ const gridFile = fc
         longitudes: Array.from({ length: shape.columns }, (_, i) => shape.west + i * shape.step),
         times: Array.from({ length: shape.steps }, (_, i) => Date.UTC(2024, 0, 1 + i)),
         deflate: shape.deflate,
+        ...(shape.composite ? { timeBounds: Array.from({ length: shape.steps }, (_, i) => [Date.UTC(2024, 0, 1 + i), Date.UTC(2024, 0, 9 + i)] as const) } : {}),
         variables: [
           {
             name: 'chlor_a', dtype: shape.dtype, data: Float64Array.from(values),
@@ -60,6 +61,10 @@ describe('any grid that is written', () => {
         const variable = source.variables[0]!
         const [rows, columns] = [file.latitudes.length, file.longitudes.length]
         expect(variable.times.map(({ observedAt, hasClock }) => [observedAt, hasClock])).toEqual(file.times.map((t) => [t, false]))
+        expect(variable.times.map(({ endsAt }) => endsAt)).toEqual(file.times.map((t) => (file.timeBounds ? t + 8 * 86_400_000 : null)))
+        const { grid } = variable
+        const south = Math.min(...Array.from(file.latitudes))
+        expect(grid.kind === 'axes' && Math.min(...grid.latEdges)).toBeCloseTo(south - Math.abs(file.latitudes[1]! - file.latitudes[0]!) / 2, 9)
         for (const step of file.times.keys()) {
           const read = await source.readWindow('chlor_a', step, { row: 0, column: 0, rows, columns })
           const wanted = file.variables[0]!.data.subarray(step * rows * columns, (step + 1) * rows * columns)
@@ -74,18 +79,37 @@ describe('any grid that is written', () => {
     )
   })
 
+  const raster = fc
+    .record({
+      rows: fc.integer({ min: 1, max: 40 }), columns: fc.integer({ min: 1, max: 40 }), south: fc.integer({ min: -80, max: 60 }),
+      west: fc.integer({ min: -180, max: 179 }), latStep: fc.constantFrom(0.05, 0.25, 0.5), lonStep: fc.constantFrom(0.1, 0.25, 1),
+      tile: fc.constantFrom(undefined, 16, 32), deflate: fc.boolean(), noData: fc.constantFrom(undefined, -999, 0),
+    })
+    .chain((shape) => {
+      const cells = shape.rows * shape.columns
+      // Eighths are exact in 32 bits; 0 is left to the files that call it missing.
+      const eighths = fc.oneof({ weight: 1, arbitrary: fc.constant(NaN) }, { weight: 5, arbitrary: fc.integer({ min: 1, max: 4000 }).map((n) => n / 8) })
+      return fc.array(eighths, { minLength: cells, maxLength: cells }).map((values) => ({ ...shape, values: Float64Array.from(values) }))
+    })
+
   it('is the same when read back from GeoTIFF, in tiles and in strips, with and without deflate', async () => {
-    for (const options of [{}, { tile: 16 }, { deflate: true }, { tile: 32, deflate: true, noData: -999 }]) {
-      const path = join(folder, 'any.tif')
-      const values = Float64Array.from({ length: 40 * 50 }, (_, i) => (i % 7 === 3 ? NaN : i / 8))
-      await writeGeotiff(path, {
-        rows: 40, columns: 50, west: -10, north: 60, lonStep: 0.5, latStep: 0.25, values, description: 'chlor_a', unit: 'mg m-3', ...options,
-      })
-      const source = await openGridSource(path, 'any.tif')
-      const read = await source.readWindow('chlor_a', 0, { row: 0, column: 0, rows: 40, columns: 50 })
-      expect(read).toEqual(values)
-      source.close()
-    }
+    await fc.assert(
+      fc.asyncProperty(raster, async ({ south, tile, noData, ...rest }) => {
+        const path = join(folder, 'any.tif')
+        const north = south + rest.rows * rest.latStep
+        await writeGeotiff(path, {
+          ...rest, north, description: 'chlor_a', unit: 'mg m-3', ...(tile ? { tile } : {}), ...(noData === undefined ? {} : { noData }),
+        })
+        const source = await openGridSource(path, 'any.tif')
+        const { grid } = source.variables[0]!
+        const read = await source.readWindow('chlor_a', 0, { row: 0, column: 0, rows: rest.rows, columns: rest.columns })
+        expect(read).toEqual(rest.values)
+        expect(grid.kind === 'axes' && grid.latEdges[0]).toBe(north)
+        expect(grid.kind === 'axes' && grid.lonEdges[rest.columns]).toBeCloseTo(rest.west + rest.columns * rest.lonStep, 9)
+        source.close()
+      }),
+      { numRuns: 40, seed: 11 },
+    )
   })
 
   it('refuses a value that its packed form cannot hold, rather than store another', () => {
