@@ -136,7 +136,7 @@ describe('a region and its files', () => {
         expect(found.standing.state).not.toBe('not ready')
         return found
       },
-      { timeout: 90_000, interval: 500 },
+      { timeout: 150_000, interval: 500 },
     )
     expect(region.geometry).toMatchObject({ type: 'Polygon', coordinates: [{ length: 5 }] })
     expect(region.areaKm2).toBeGreaterThan(50)
