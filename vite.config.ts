@@ -4,6 +4,9 @@ import { defineConfig } from 'vitest/config'
 
 const api = process.env['API_URL'] ?? 'http://127.0.0.1:4100'
 
+/** Pages on a busy machine may miss a wait once; twice in a row is a fault. */
+const retry = process.env['CI'] ? 1 : 0
+
 export default defineConfig({
   plugins: [react(), tailwindcss()],
   build: { outDir: 'dist/client', emptyOutDir: true, sourcemap: false },
@@ -16,11 +19,11 @@ export default defineConfig({
       },
       {
         extends: true,
-        test: { name: 'client', environment: 'jsdom', include: ['tests/src/**/*.test.{ts,tsx}'], setupFiles: ['tests/support/client-setup.ts'] },
+        test: { name: 'client', environment: 'jsdom', include: ['tests/src/**/*.test.{ts,tsx}'], setupFiles: ['tests/support/client-setup.ts'], retry },
       },
       {
         extends: true,
-        test: { name: 'journeys', environment: 'node', include: ['tests/journeys/**/*.test.ts'], globalSetup: ['tests/support/journey-setup.ts'], testTimeout: 180_000, hookTimeout: 180_000, fileParallelism: false },
+        test: { name: 'journeys', environment: 'node', include: ['tests/journeys/**/*.test.ts'], globalSetup: ['tests/support/journey-setup.ts'], testTimeout: 180_000, hookTimeout: 180_000, fileParallelism: false, retry },
       },
     ],
   },
