@@ -9,14 +9,16 @@ const absent = 0
  * bits, deflated. Exact for numbers rounded to a billionth of a degree; a few bytes a corner where a grid is smooth.
  */
 export function packDegrees(values: Float64Array, across: number): string {
-  const bytes: number[] = []
+  // Eight bytes of seven bits hold any difference of places on Earth.
+  const bytes = new Uint8Array(values.length * 8)
+  let length = 0
   const put = (number: number) => {
     let rest = number
     while (rest >= 128) {
-      bytes.push((rest % 128) + 128)
+      bytes[length++] = (rest % 128) + 128
       rest = Math.floor(rest / 128)
     }
-    bytes.push(rest)
+    bytes[length++] = rest
   }
   let [previous, step] = [0, 0]
   for (let i = 0; i < values.length; i++) {
@@ -32,7 +34,7 @@ export function packDegrees(values: Float64Array, across: number): string {
     step = units - previous
     previous = units
   }
-  return deflateRawSync(Uint8Array.from(bytes)).toString('base64')
+  return deflateRawSync(bytes.subarray(0, length), { level: 2 }).toString('base64')
 }
 
 export function unpackDegrees(text: string, count: number, across: number): Float64Array {

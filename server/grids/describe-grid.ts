@@ -1,5 +1,5 @@
 import type { CurvilinearGrid, Grid, TransformGrid } from '../../shared/science/grid'
-import { quadCell, type QuadCell } from '../../shared/science/quad-cell'
+import { quadBox, type QuadBox, quadCell } from '../../shared/science/quad-cell'
 import { unprojectFrom } from './read/project'
 
 export interface GridDescription {
@@ -24,7 +24,7 @@ export function describeGrid(grid: Grid): GridDescription {
     return { kind, rows, columns, ...boxOf(grid), latStep: null, lonStep: null, crs: grid.crs }
   }
   if (grid.kind === 'curvilinear') {
-    return { kind, rows, columns, ...quadBox(grid), latStep: null, lonStep: null, crs: null }
+    return { kind, rows, columns, ...curvedBox(grid), latStep: null, lonStep: null, crs: null }
   }
   const { latEdges, lonEdges } = grid
   const [south, north] = ordered(latEdges[0]!, latEdges[rows]!)
@@ -82,36 +82,33 @@ function boxOf(grid: TransformGrid) {
 const lonBins = 3600
 
 /** The box round cells placed one by one: in longitude all but the widest gap that no cell reaches into. */
-function quadBox(grid: CurvilinearGrid) {
+function curvedBox(grid: CurvilinearGrid): QuadBox {
   const covered = new Uint8Array(lonBins)
   let [south, north] = [Infinity, -Infinity]
-  for (const quad of quadsOf(grid)) {
-    south = Math.min(south, ...quad.lats)
-    north = Math.max(north, ...quad.lats)
-    const last = Math.floor(Math.max(...quad.lons) * 10)
-    for (let bin = Math.floor(Math.min(...quad.lons) * 10); bin <= last; bin++) {
-      covered[((bin % lonBins) + lonBins) % lonBins] = 1
-    }
+  for (const box of boxesOf(grid)) {
+    south = Math.min(south, box.south)
+    north = Math.max(north, box.north)
+    const last = Math.floor(box.east * 10)
+    for (let bin = Math.floor(box.west * 10); bin <= last; bin++) covered[((bin % lonBins) + lonBins) % lonBins] = 1
   }
   const gap = widestGap(covered)
   if (gap === null) return { west: -180, east: 180, south, north }
   // Counted from the middle of the gap, no cell is torn apart.
   const origin = (gap.from + gap.length / 2) / 10
   let [west, east] = [Infinity, -Infinity]
-  for (const { lons } of quadsOf(grid)) {
-    const least = Math.min(...lons)
-    const turn = 360 * Math.floor((least - origin) / 360)
-    west = Math.min(west, least - turn)
-    east = Math.max(east, Math.max(...lons) - turn)
+  for (const box of boxesOf(grid)) {
+    const turn = 360 * Math.floor((box.west - origin) / 360)
+    west = Math.min(west, box.west - turn)
+    east = Math.max(east, box.east - turn)
   }
   const turn = 360 * Math.floor((west + 180) / 360)
   return { west: west - turn, east: east - turn, south, north }
 }
 
-function* quadsOf(grid: CurvilinearGrid): Generator<QuadCell> {
+function* boxesOf(grid: CurvilinearGrid): Generator<QuadBox> {
   for (let cell = 0; cell < grid.rows * grid.columns; cell++) {
     const quad = quadCell(grid, cell)
-    if (quad) yield quad
+    if (quad) yield quadBox(quad)
   }
 }
 

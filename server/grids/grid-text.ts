@@ -45,5 +45,8 @@ export function decodeGrid(text: string): Grid {
 
 /** The same for two grids exactly when their cells are the same. */
 export function gridFingerprint(grid: Grid): string {
-  return createHash('sha256').update(encodeGrid(grid)).digest('hex')
+  const hash = createHash('sha256')
+  if (grid.kind !== 'curvilinear') return hash.update(encodeGrid(grid)).digest('hex')
+  const { rows, columns, cornerLats, cornerLons } = grid
+  return hash.update(`curvilinear ${rows} ${columns}`).update(cornerLats).update(cornerLons).digest('hex')
 }

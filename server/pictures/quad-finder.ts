@@ -1,5 +1,5 @@
 import type { CurvilinearGrid } from '../../shared/science/grid'
-import { quadCell, type QuadCell, trianglesOf } from '../../shared/science/quad-cell'
+import { quadBox, type QuadBox, quadCell, type QuadCell, trianglesOf } from '../../shared/science/quad-cell'
 
 interface Place {
   row: number
@@ -9,8 +9,8 @@ interface Place {
 const finders = new WeakMap<CurvilinearGrid, (lon: number, lat: number) => Place | null>()
 
 /**
- * Answers which cell of a curvilinear grid holds a place, or null. Cells are sorted into boxes of about a cell's size
- * once a grid; the one with the lowest number wins where cells overlap.
+ * Answers which cell of a curvilinear grid holds a place, or null. Blocks of cells are sorted into boxes of about a
+ * block's size once a grid; where cells overlap, the first that is found wins.
  */
 export function quadFinder(grid: CurvilinearGrid): (lon: number, lat: number) => Place | null {
   const known = finders.get(grid)
@@ -20,37 +20,89 @@ export function quadFinder(grid: CurvilinearGrid): (lon: number, lat: number) =>
   return finder
 }
 
+/** Cells are found in blocks of this many a side: a list of blocks is small even where cells are millions. */
+const blockSide = 8
+
 function makeFinder(grid: CurvilinearGrid): (lon: number, lat: number) => Place | null {
-  const count = grid.rows * grid.columns
-  const boxDeg = Math.min(5, Math.max(0.02, typicalSize(grid)))
+  const blocks = blocksOf(grid)
+  const boxDeg = Math.min(10, Math.max(0.05, typicalSize(blocks)))
   const across = Math.ceil(360 / boxDeg)
-  const boxes = new Map<number, number[]>()
-  for (let cell = 0; cell < count; cell++) {
-    const quad = quadCell(grid, cell)
-    if (!quad) continue
-    const [west, east] = [Math.min(...quad.lons), Math.max(...quad.lons)]
-    const [south, north] = [Math.min(...quad.lats), Math.max(...quad.lats)]
+  const boxes = new Map<number, Block[]>()
+  for (const block of blocks) {
+    const { west, east, south, north } = block.box
     for (let y = Math.floor((south + 90) / boxDeg); y <= Math.floor((north + 90) / boxDeg); y++) {
       for (const x of boxesBetween(west, east, boxDeg, across)) {
-        const box = y * across + x
-        const held = boxes.get(box)
-        if (held) held.push(cell)
-        else boxes.set(box, [cell])
+        const held = boxes.get(y * across + x)
+        if (held) held.push(block)
+        else boxes.set(y * across + x, [block])
       }
     }
   }
   return (lon, lat) => {
     const x = Math.floor(withinTurn(lon) / boxDeg)
     const y = Math.floor((lat + 90) / boxDeg)
-    const cell = boxes.get(y * across + x)?.find((candidate) => holds(quadCell(grid, candidate)!, lon, lat))
-    return cell === undefined ? null : { row: Math.floor(cell / grid.columns), column: cell % grid.columns }
+    for (const block of boxes.get(y * across + x) ?? []) {
+      const place = placeIn(grid, block, lon, lat)
+      if (place) return place
+    }
+    return null
   }
+}
+
+interface Block {
+  top: number
+  left: number
+  box: QuadBox
+}
+
+function blocksOf(grid: CurvilinearGrid): Block[] {
+  const blocks: Block[] = []
+  for (let top = 0; top < grid.rows; top += blockSide) {
+    for (let left = 0; left < grid.columns; left += blockSide) {
+      const box = blockBox(grid, top, left)
+      if (box) blocks.push({ top, left, box })
+    }
+  }
+  return blocks
+}
+
+/** The box round the cells of a block, all counted in the turn of the first of them; null when none has a place. */
+function blockBox(grid: CurvilinearGrid, top: number, left: number): QuadBox | null {
+  const box: QuadBox = { west: Infinity, east: -Infinity, south: Infinity, north: -Infinity }
+  for (let row = top; row < Math.min(top + blockSide, grid.rows); row++) {
+    for (let column = left; column < Math.min(left + blockSide, grid.columns); column++) {
+      const quad = quadCell(grid, row * grid.columns + column)
+      if (!quad) continue
+      const cell = quadBox(quad)
+      const turn = box.west === Infinity ? 0 : 360 * Math.round((cell.west - box.west) / 360)
+      box.west = Math.min(box.west, cell.west - turn)
+      box.east = Math.max(box.east, cell.east - turn)
+      box.south = Math.min(box.south, cell.south)
+      box.north = Math.max(box.north, cell.north)
+    }
+  }
+  return box.west === Infinity ? null : box
+}
+
+function placeIn(grid: CurvilinearGrid, { top, left, box }: Block, lon: number, lat: number): Place | null {
+  if (!inBox(box, lon, lat)) return null
+  for (let row = top; row < Math.min(top + blockSide, grid.rows); row++) {
+    for (let column = left; column < Math.min(left + blockSide, grid.columns); column++) {
+      const quad = quadCell(grid, row * grid.columns + column)
+      if (quad && holds(quad, lon, lat)) return { row, column }
+    }
+  }
+  return null
 }
 
 const withinTurn = (lon: number): number => lon - 360 * Math.floor(lon / 360)
 
 /** Boxes along a parallel; the last one before 360 may be narrower than the others. */
 function* boxesBetween(west: number, east: number, boxDeg: number, across: number): Generator<number> {
+  if (east - west >= 360 - boxDeg) {
+    for (let x = 0; x < across; x++) yield x
+    return
+  }
   const first = Math.floor(withinTurn(west) / boxDeg)
   const last = Math.floor(withinTurn(east) / boxDeg)
   for (let x = first; ; x = (x + 1) % across) {
@@ -59,23 +111,21 @@ function* boxesBetween(west: number, east: number, boxDeg: number, across: numbe
   }
 }
 
-/** The median height or width of a sample of cells, whichever is larger. */
-function typicalSize(grid: CurvilinearGrid): number {
-  const count = grid.rows * grid.columns
-  const sizes: number[] = []
-  for (let i = 0; i < 200; i++) {
-    const quad = quadCell(grid, Math.floor((i * count) / 200))
-    if (!quad) continue
-    sizes.push(Math.max(Math.max(...quad.lons) - Math.min(...quad.lons), Math.max(...quad.lats) - Math.min(...quad.lats)))
-  }
-  sizes.sort((a, b) => a - b)
+/** The median height or width of the blocks, whichever is larger. */
+function typicalSize(blocks: readonly Block[]): number {
+  const sizes = blocks.map(({ box }) => Math.max(box.east - box.west, box.north - box.south)).sort((a, b) => a - b)
   return sizes[sizes.length >> 1] ?? 1
 }
 
+function inBox({ west, east, south, north }: QuadBox, lon: number, lat: number): boolean {
+  return lat >= south && lat <= north && lon + 360 * Math.ceil((west - lon) / 360) <= east
+}
+
 function holds(quad: QuadCell, lon: number, lat: number): boolean {
-  const x = lon - 360 * Math.round((lon - quad.lons[0]) / 360)
-  // A cell up to 180 degrees wide may lie on either side of its first corner.
-  return [x, x - 360, x + 360].some((turned) => trianglesOf(quad).some((triangle) => inTriangle(quad, triangle, turned, lat)))
+  const box = quadBox(quad)
+  if (!inBox(box, lon, lat)) return false
+  const turned = lon + 360 * Math.ceil((box.west - lon) / 360)
+  return trianglesOf(quad).some((triangle) => inTriangle(quad, triangle, turned, lat))
 }
 
 function inTriangle({ lons, lats }: QuadCell, corners: readonly [number, number, number], x: number, y: number): boolean {

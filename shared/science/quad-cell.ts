@@ -11,19 +11,33 @@ export interface QuadCell {
  * round a pole (its corners go once round the globe), or one folded over itself.
  */
 export function quadCell(grid: CurvilinearGrid, cell: number): QuadCell | null {
-  const row = Math.floor(cell / grid.columns)
-  const column = cell % grid.columns
-  const across = grid.columns + 1
-  const corner = row * across + column
-  const places = [corner, corner + 1, corner + across + 1, corner + across] as const
-  const [a, b, c, d] = places.map((place) => grid.cornerLons[place]!) as [number, number, number, number]
-  const lats = places.map((place) => grid.cornerLats[place]!) as [number, number, number, number]
-  const lonB = near(b, a)
-  const lonC = near(c, lonB)
-  const lonD = near(d, lonC)
-  if (!Number.isFinite(a + b + c + d + lats[0] + lats[1] + lats[2] + lats[3]) || Math.abs(lonD - a) > 180) return null
-  const quad: QuadCell = { lons: [a, lonB, lonC, lonD], lats }
+  const { cornerLons, cornerLats, columns } = grid
+  // Written out without lists: this runs for every cell of grids with millions of them.
+  const first = cell + Math.floor(cell / columns)
+  const below = first + columns + 1
+  const lonA = cornerLons[first]!
+  const lonB = near(cornerLons[first + 1]!, lonA)
+  const lonC = near(cornerLons[below + 1]!, lonB)
+  const lonD = near(cornerLons[below]!, lonC)
+  const [latA, latB, latC, latD] = [cornerLats[first]!, cornerLats[first + 1]!, cornerLats[below + 1]!, cornerLats[below]!]
+  if (!Number.isFinite(lonA + lonB + lonC + lonD + latA + latB + latC + latD) || Math.abs(lonD - lonA) > 180) return null
+  const quad: QuadCell = { lons: [lonA, lonB, lonC, lonD], lats: [latA, latB, latC, latD] }
   return isSimple(quad) ? quad : null
+}
+
+export interface QuadBox {
+  west: number
+  east: number
+  south: number
+  north: number
+}
+
+/** The box round a cell; east may be beyond 180. */
+export function quadBox({ lons, lats }: QuadCell): QuadBox {
+  return {
+    west: Math.min(lons[0], lons[1], lons[2], lons[3]), east: Math.max(lons[0], lons[1], lons[2], lons[3]),
+    south: Math.min(lats[0], lats[1], lats[2], lats[3]), north: Math.max(lats[0], lats[1], lats[2], lats[3]),
+  }
 }
 
 function near(lon: number, reference: number): number {

@@ -1,25 +1,18 @@
 import { clipRing, flatArea } from './clip-ring'
 import type { PlaneRing } from './coverage-scan'
 import type { CurvilinearGrid } from './grid'
-import { isConvex, quadCell, type QuadCell, trianglesOf } from './quad-cell'
+import { isConvex, quadBox, type QuadBox, quadCell, type QuadCell, trianglesOf } from './quad-cell'
 
 /** Cells are looked at in blocks of this many a side: a ring is cut to the block's box before it is cut to cells. */
 const blockSide = 16
 /** Cutting a ring twice leaves shares of about 1e-12 where there is none, and as much short of 1 inside. */
 const roundingShare = 1e-10
 
-interface Box {
-  west: number
-  east: number
-  south: number
-  north: number
-}
-
 interface Ring {
   points: number[]
   /** +1 for water, -1 for a hole, whichever way it winds. */
   weight: number
-  box: Box
+  box: QuadBox
 }
 
 /**
@@ -50,13 +43,13 @@ function scanBlock(
   left: number,
   emit: (row: number, column: number, share: number) => void,
 ): void {
-  const cells: { row: number; column: number; quad: QuadCell; box: Box }[] = []
-  const block: Box = { west: Infinity, east: -Infinity, south: Infinity, north: -Infinity }
+  const cells: { row: number; column: number; quad: QuadCell; box: QuadBox }[] = []
+  const block: QuadBox = { west: Infinity, east: -Infinity, south: Infinity, north: -Infinity }
   for (let row = top; row < Math.min(top + blockSide, grid.rows); row++) {
     for (let column = left; column < Math.min(left + blockSide, grid.columns); column++) {
       const quad = quadCell(grid, row * grid.columns + column)
       if (!quad) continue
-      const box = { west: least(quad.lons), east: most(quad.lons), south: least(quad.lats), north: most(quad.lats) }
+      const box = quadBox(quad)
       cells.push({ row, column, quad, box })
       block.west = Math.min(block.west, box.west)
       block.east = Math.max(block.east, box.east)
@@ -73,7 +66,7 @@ function scanBlock(
 }
 
 /** A ring moved by whole turns to wherever it meets a block, and cut to the block's box. */
-function copiesNear(ring: Ring, block: Box): Ring[] {
+function copiesNear(ring: Ring, block: QuadBox): Ring[] {
   const { box, points, weight } = ring
   if (box.south > block.north || box.north < block.south) return []
   const copies: Ring[] = []
@@ -85,14 +78,14 @@ function copiesNear(ring: Ring, block: Box): Ring[] {
   return copies
 }
 
-function cutToBox(points: readonly number[], { west, east, south, north }: Box): number[] {
+function cutToBox(points: readonly number[], { west, east, south, north }: QuadBox): number[] {
   let cut = clipRing(points, west, south, east, south)
   cut = clipRing(cut, east, south, east, north)
   cut = clipRing(cut, east, north, west, north)
   return clipRing(cut, west, north, west, south)
 }
 
-function shareOf(quad: QuadCell, box: Box, rings: readonly Ring[]): number {
+function shareOf(quad: QuadCell, box: QuadBox, rings: readonly Ring[]): number {
   const parts = isConvex(quad) ? [[0, 1, 2, 3]] : trianglesOf(quad)
   let [whole, inside] = [0, 0]
   for (const part of parts) {
@@ -121,7 +114,7 @@ function reversed(corners: readonly number[]): number[] {
   return Array.from(corners, (_, i) => corners[corners.length - 2 - i + 2 * (i % 2)]!)
 }
 
-function boxOf(points: readonly number[]): Box {
+function boxOf(points: readonly number[]): QuadBox {
   const box = { west: Infinity, east: -Infinity, south: Infinity, north: -Infinity }
   for (let i = 0; i < points.length; i += 2) {
     box.west = Math.min(box.west, points[i]!)

@@ -27,7 +27,8 @@ export function cornersFromCentres(lats: Float64Array, lons: Float64Array, rows:
   }
   for (let row = 0; row <= rows; row++) {
     for (let column = 0; column <= columns; column++) {
-      const [lon, lat] = middle([
+      const inner = row > 0 && row < rows && column > 0 && column < columns
+      const [lon, lat] = (inner ? between(lats, lons, (row - 1) * columns + column - 1, columns) : null) ?? middle([
         centre(row - 1, column - 1), centre(row - 1, column), centre(row, column), centre(row, column - 1),
       ])
       corners.lons[row * (columns + 1) + column] = lon
@@ -35,6 +36,16 @@ export function cornersFromCentres(lats: Float64Array, lons: Float64Array, rows:
     }
   }
   return corners
+}
+
+/** The usual corner, far from poles and with four known centres, of which `first` is the one before; null for others. */
+function between(lats: Float64Array, lons: Float64Array, first: number, columns: number): Place | null {
+  const below = first + columns
+  const lonA = lons[first]!
+  const [b, c, d] = [near(lons[first + 1]!, lonA) - lonA, near(lons[below + 1]!, lonA) - lonA, near(lons[below]!, lonA) - lonA]
+  const lat = (lats[first]! + lats[first + 1]! + lats[below + 1]! + lats[below]!) / 4
+  if (!Number.isFinite(lat + b + c + d) || Math.max(0, b, c, d) - Math.min(0, b, c, d) > polarSpread) return null
+  return [lonA + (b + c + d) / 4, lat]
 }
 
 function beyond(edge: Place, inner: Place): Place {
@@ -75,5 +86,6 @@ export function near(lon: number, reference: number): number {
 
 /** To a billionth of a degree, a tenth of a millimetre: what a grid as text keeps. */
 export function roundDegrees(degrees: Float64Array): Float64Array {
-  return degrees.map((value) => Math.round(value * 1e9) / 1e9)
+  // Adding 0 makes -0 a plain 0.
+  return degrees.map((value) => Math.round(value * 1e9) / 1e9 + 0)
 }

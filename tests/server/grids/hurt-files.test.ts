@@ -20,6 +20,7 @@ beforeAll(async () => {
 afterAll(async () => {
   await worker?.terminate()
   await rm(folder, { recursive: true })
+  await rm(bundle, { force: true })
 })
 
 /** Reads a file in a worker; a hang and a crash of the worker are outcomes of their own. */

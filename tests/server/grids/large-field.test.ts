@@ -25,7 +25,10 @@ beforeAll(async () => {
     await write(paths[name])
   }
 }, 300_000)
-afterAll(() => rm(folder, { recursive: true }))
+afterAll(async () => {
+  await rm(folder, { recursive: true })
+  await rm(bundle, { force: true })
+})
 
 /** The number stored in a cell: enough of a pattern that a misplaced block shows. */
 const stored = (row: number, column: number): number => ((row >> 4) * 31 + (column >> 4) * 7) % 30_000
@@ -133,6 +136,7 @@ describe('a global field of 4320 by 8640 cells', () => {
     const { cells, last, peakMb } = JSON.parse(stdout) as { cells: number; last: number; peakMb: number }
     expect([cells, last]).toEqual([rows * columns, stored(rows - 1, columns - 1)])
     expect(peakMb).toBeLessThan(mostMb)
+    console.info(`${format}: at most ${Math.round(peakMb)} MB`)
   }, 120_000)
 
   it.each(formats)('gives windows for 20 regions from %s without reading the field', async (format) => {
