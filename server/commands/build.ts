@@ -11,16 +11,6 @@ const landOutline: Plugin = {
   setup: (bundle) => bundle.onResolve({ filter: /^world-atlas\/.*\.json$/ }, ({ path }) => ({ path: inPackages(path) })),
 }
 
-/** geotiff brings a thread pool that we don't use, and whose loading alone throws inside a worker thread: left out. */
-const geotiffWithoutThreads: Plugin = {
-  name: 'geotiff-without-threads',
-  setup: (bundle) => {
-    bundle.onResolve({ filter: /^geotiff$/ }, () => ({ path: inPackages('geotiff/dist-module/geotiff.js') }))
-    bundle.onResolve({ filter: /^web-worker$/ }, () => ({ path: 'web-worker', namespace: 'left-out' }))
-    bundle.onLoad({ filter: /.*/, namespace: 'left-out' }, () => ({ contents: 'export default null' }))
-  },
-}
-
 /** Bundles the server, its commands and the worker into dist/server; other packages stay in node_modules. */
 export async function buildServer(): Promise<void> {
   await build({
@@ -34,7 +24,7 @@ export async function buildServer(): Promise<void> {
     format: 'esm',
     sourcemap: true,
     logLevel: 'warning',
-    plugins: [landOutline, geotiffWithoutThreads],
+    plugins: [landOutline],
   })
 }
 

@@ -12,10 +12,15 @@ export async function ensureBuilt(): Promise<void> {
   const stamp = await stampOf()
   if (existsSync(stampFile) && (await readFile(stampFile, 'utf8')) === stamp) return
   console.error('Building client, server and workers ...')
+  await buildAll(stamp)
+}
+
+/** Builds everything and notes what it was made from. */
+export async function buildAll(stamp?: string): Promise<void> {
   const { build } = await import('vite')
   const { buildServer } = await import('./build')
   await Promise.all([build({ root, logLevel: 'warn' }), buildServer()])
-  await writeFile(stampFile, stamp)
+  await writeFile(stampFile, stamp ?? (await stampOf()))
 }
 
 /** Names, sizes and times of all sources. */

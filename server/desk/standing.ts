@@ -8,8 +8,8 @@ import { regionFacts, seenDays, type RegionFacts, type SeenDay } from '../querie
 const hourMs = 3_600_000
 const dayMs = 24 * hourMs
 const shownDays = 14
-/** A view this old while newer layers came in: those layers did not see the region. */
-const notSeenAfterHours: Record<string, number> = { daily: 36, '8-day': 24 * 12, monthly: 24 * 46 }
+/** A view this old while newer layers came in was not renewed by them. Two days, since a date alone counts from midnight. */
+const notSeenAfterHours: Record<string, number> = { daily: 48, '8-day': 24 * 12, monthly: 24 * 46 }
 
 /** Where every region stands, by region id. */
 export async function standings(context: Context, regionId?: number): Promise<Map<number, RegionStanding>> {
@@ -69,7 +69,7 @@ function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; bec
   if (judged.observedAt === null) return { state: 'not seen', because: 'No view has reached the coverage floor yet.' }
   const viewAge = (now - judged.observedAt) / hourMs
   const newerLayers = facts.newestLayerAt !== null && facts.newestLayerAt > judged.observedAt
-  if (newerLayers && viewAge > (notSeenAfterHours[facts.cadence ?? 'daily'] ?? 36)) return { state: 'not seen', because: `Last seen well enough ${ageText(viewAge)} ago.` }
+  if (newerLayers && viewAge > (notSeenAfterHours[facts.cadence ?? 'daily'] ?? 48)) return { state: 'not seen', because: `Last seen well enough ${ageText(viewAge)} ago.` }
   if (judged.state === 'not-comparable') return { state: 'not comparable', because: 'The processing version changed, and has no earlier years of its own.' }
   if (facts.gapFilled) return { state: 'not ready', because: `${facts.feedName} is gap-filled, and its files do not say which cells were seen: it cannot raise alerts.` }
   if (judged.state === 'not-ready') return { state: 'not ready', because: 'There are too few earlier years to say what is usual.' }

@@ -19,19 +19,21 @@ interface LayerSpan {
   layers: number
   oldest: number
   newest: number
-  newestEnd: number
+  /** Of those observed by now; null when all are dated ahead. */
+  newestEnd: number | null
 }
 
 export async function presentFeeds(context: Context, feeds: readonly FeedRecord[]): Promise<Feed[]> {
   const now = context.clock.now()
   const spans = await context.db.all<LayerSpan>(
     `SELECT feed_id AS feedId, count(*) AS layers, min(observed_at) AS oldest, max(observed_at) AS newest,
-       max(ifnull(ends_at, observed_at)) AS newestEnd FROM layers GROUP BY feed_id`,
+       max(CASE WHEN observed_at <= $now THEN ifnull(ends_at, observed_at) END) AS newestEnd FROM layers GROUP BY feed_id`,
+    { now },
   )
   const byFeed = new Map(spans.map((span) => [span.feedId, span]))
   return feeds.map((feed) => {
     const span = byFeed.get(feed.id)
-    const age = span ? (now - span.newestEnd) / hourMs : null
+    const age = span?.newestEnd == null ? null : (now - span.newestEnd) / hourMs
     const { createdAt, ...fields } = feed.get({ plain: true })
     return {
       ...fields,

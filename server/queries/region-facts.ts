@@ -14,6 +14,7 @@ export interface RegionFacts {
   gapFilled: number | null
   ruleId: number | null
   definition: RuleDefinition | null
+  /** Of the layers observed by now: one dated ahead by mistake must not hide that a feed has gone silent. */
   newestLayerAt: number | null
   alertId: number | null
   alertSeverity: Severity | null
@@ -44,7 +45,7 @@ export async function regionFacts(context: Context, regionId?: number): Promise<
   const rows = await context.db.all<Row>(
     `SELECT r.id AS regionId, r.geometry_id AS geometryId, f.id AS feedId, f.name AS feedName, f.unit, f.cadence,
        f.silent_after_hours AS silentAfterHours, f.gap_filled AS gapFilled, ru.id AS ruleId, rv.definition,
-       (SELECT max(ifnull(l.ends_at, l.observed_at)) FROM layers l WHERE l.feed_id = f.id) AS newestLayerAt,
+       (SELECT max(ifnull(l.ends_at, l.observed_at)) FROM layers l WHERE l.feed_id = f.id AND l.observed_at <= $now) AS newestLayerAt,
        a.id AS alertId, a.severity AS alertSeverity, j.done AS jobDone, j.total AS jobTotal,
        CASE WHEN s.rule_id IS NULL THEN NULL ELSE json_object('state', s.state, 'inEvent', s.in_event, 'severity', s.severity, 'day', s.day,
          'layerId', s.layer_id, 'observedAt', s.observed_at, 'coverage', s.coverage, 'value', s.value, 'usual', s.usual, 'p10', s.p10,
@@ -57,7 +58,7 @@ export async function regionFacts(context: Context, regionId?: number): Promise<
      LEFT JOIN alerts a ON a.region_id = r.id AND a.state <> 'closed'
      LEFT JOIN jobs j ON j.kind = 'backfill-region' AND j.job_key = CAST(r.geometry_id AS TEXT) AND j.state IN ('waiting', 'running', 'paused')
      WHERE r.retired_at IS NULL AND ($regionId IS NULL OR r.id = $regionId) GROUP BY r.id ORDER BY r.id`,
-    { regionId: regionId ?? null },
+    { regionId: regionId ?? null, now: context.clock.now() },
   )
   return rows.map((row) => ({
     ...row,

@@ -182,3 +182,14 @@ describe('over HTTP', () => {
     expect(events).toMatchObject([{ phase: 'running', firstFlagged: '2026-06-10', lastFlagged: '2026-06-11', triggerDay: '2026-06-11', peakValue: 5, severity: 'Severe' }])
   })
 })
+
+describe('a region and its feed', () => {
+  it('a layer dated ahead by mistake does not hide that the feed has gone silent', async () => {
+    await arrive(['2026-06-09', 1])
+    context.clock.moveTo(Date.parse('2026-06-20T15:00:00Z'))
+    await arrive(['2027-06-20', 1])
+    expect((await stateOf()).state).toBe('stale')
+    const { body } = await (await asOfficer()).get(`/api/feeds/${feed.id}`).expect(200)
+    expect(body).toMatchObject({ silent: true })
+  })
+})

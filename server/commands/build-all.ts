@@ -1,0 +1,3 @@
+import { buildAll } from './ensure-built'
+
+await buildAll()
