@@ -1,5 +1,6 @@
-import { binOf, histogramLength, type AreaHistogram } from './histogram'
-import { weightedQuantiles } from './weighted-quantile'
+import { binOfLog10, histogramLength, type AreaHistogram } from './histogram'
+import { sortTogether } from './sort-together'
+import { sortedQuantiles } from './weighted-quantile'
 
 export type Scale = 'log10' | 'linear'
 
@@ -11,6 +12,8 @@ export interface RegionCells {
   share: Float64Array
   /** Area of the full cell in km2. */
   areaKm2: Float64Array
+  /** Share times area, where it is at hand. */
+  weightKm2?: Float64Array
   /** 1 where the mask says water; without a mask every cell is water. */
   water?: Uint8Array
 }
@@ -48,8 +51,15 @@ export interface Figures {
 const wholeShare = 1 - 1e-9
 const percentiles = [0.1, 0.25, 0.5, 0.75, 0.9, 0.95] as const
 
-function count(cells: RegionCells, weights: Float64Array) {
-  const { values, share, water } = cells
+interface Seen {
+  values: Float64Array
+  weights: Float64Array
+  count: number
+  /** Position of the highest value in the lists given. */
+  maxIndex: number | null
+}
+
+function countCells({ values, share, water }: RegionCells, weights: Float64Array) {
   const sums = { cells: 0, valid: 0, wholeCells: 0, wholeValid: 0, validAreaKm2: 0, waterAreaKm2: 0 }
   let seenWaterKm2 = 0
   for (let i = 0; i < values.length; i++) {
@@ -68,32 +78,50 @@ function count(cells: RegionCells, weights: Float64Array) {
   return { ...sums, coverage: sums.waterAreaKm2 > 0 ? seenWaterKm2 / sums.waterAreaKm2 : null }
 }
 
-/** Weighted mean and population standard deviation of f over the cells that `takes` lets in; null without any. */
-function moments(
-  values: Float64Array,
-  weights: Float64Array,
-  takes: (value: number) => boolean,
-  f: (value: number) => number,
-): { mean: number; sd: number } | null {
-  let [total, mean, squares] = [0, 0, 0]
+/** The cells that count, close together. */
+function seenCells(values: Float64Array, weights: Float64Array): Seen {
+  const seen: Seen = { values: new Float64Array(values.length), weights: new Float64Array(values.length), count: 0, maxIndex: null }
   for (let i = 0; i < values.length; i++) {
-    const weight = weights[i]!
-    if (!Number.isFinite(values[i]) || !(weight > 0) || !takes(values[i]!)) continue
-    const value = f(values[i]!)
-    total += weight
-    const away = value - mean
-    mean += (away * weight) / total
-    squares += weight * away * (value - mean)
+    const value = values[i]!
+    if (!Number.isFinite(value) || !(weights[i]! > 0)) continue
+    seen.values[seen.count] = value
+    seen.weights[seen.count++] = weights[i]!
+    if (seen.maxIndex === null || value > values[seen.maxIndex]!) seen.maxIndex = i
   }
-  return total > 0 ? { mean, sd: Math.sqrt(Math.max(0, squares / total)) } : null
+  return seen
 }
 
-function highest(values: Float64Array, weights: Float64Array): number | null {
-  let at: number | null = null
-  for (let i = 0; i < values.length; i++) {
-    if (Number.isFinite(values[i]) && weights[i]! > 0 && (at === null || values[i]! > values[at]!)) at = i
+function meanOf({ values, weights, count }: Seen): number | null {
+  let [total, sum] = [0, 0]
+  for (let i = 0; i < count; i++) {
+    total += weights[i]!
+    sum += weights[i]! * values[i]!
   }
-  return at
+  return total > 0 ? sum / total : null
+}
+
+/** Area by value, and weighted mean and population standard deviation of log10 over the values above 0. */
+function logFigures({ values, weights, count }: Seen) {
+  const histogram = new Float64Array(histogramLength)
+  const logs = new Float64Array(count)
+  let [total, sum, nonPositive] = [0, 0, 0]
+  for (let i = 0; i < count; i++) {
+    const log = values[i]! > 0 ? Math.log10(values[i]!) : NaN
+    logs[i] = log
+    if (Number.isNaN(log)) {
+      nonPositive++
+      histogram[0]! += weights[i]!
+      continue
+    }
+    histogram[binOfLog10(log)]! += weights[i]!
+    total += weights[i]!
+    sum += weights[i]! * log
+  }
+  if (!(total > 0)) return { histogram, nonPositive, log: null }
+  const mean = sum / total
+  let squares = 0
+  for (let i = 0; i < count; i++) if (!Number.isNaN(logs[i])) squares += weights[i]! * (logs[i]! - mean) ** 2
+  return { histogram, nonPositive, log: { mean, sd: Math.sqrt(squares / total) } }
 }
 
 /**
@@ -107,32 +135,27 @@ export function summarise(cells: RegionCells, scale: Scale = 'log10'): Figures {
   if ([share, areaKm2, water ?? values].some((list) => list.length !== values.length)) {
     throw new RangeError('Values, shares, areas and mask of a region have one length.')
   }
-  const weights = share.map((part, i) => part * areaKm2[i]!)
-  const linear = moments(values, weights, () => true, (value) => value)
-  const log = scale === 'log10' ? moments(values, weights, (value) => value > 0, Math.log10) : null
+  const weights = cells.weightKm2 ?? share.map((part, i) => part * areaKm2[i]!)
+  const seen = seenCells(values, weights)
+  const { histogram, nonPositive, log } = logFigures(seen)
+  const mean = meanOf(seen)
+  sortTogether(seen.values, seen.weights, seen.count)
   const [p10 = null, p25 = null, median = null, p75 = null, p90 = null, p95 = null] =
-    weightedQuantiles(values, weights, percentiles)
-  const maxIndex = highest(values, weights)
-  const histogram = new Float64Array(histogramLength)
-  let nonPositive = 0
-  for (let i = 0; i < values.length; i++) {
-    if (!Number.isFinite(values[i]) || !(weights[i]! > 0)) continue
-    histogram[binOf(values[i]!)]! += weights[i]!
-    if (values[i]! <= 0) nonPositive++
-  }
+    sortedQuantiles(seen.values, seen.weights, seen.count, percentiles)
+  const logarithmic = scale === 'log10' ? log : null
   return {
-    ...count(cells, weights),
-    mean: linear && linear.mean,
-    geometricMean: log && 10 ** log.mean,
+    ...countCells(cells, weights),
+    mean,
+    geometricMean: logarithmic && 10 ** logarithmic.mean,
     median,
     p10,
     p25,
     p75,
     p90,
     p95,
-    max: maxIndex === null ? null : values[maxIndex]!,
-    maxIndex,
-    sdLog10: log && log.sd,
+    max: seen.maxIndex === null ? null : values[seen.maxIndex]!,
+    maxIndex: seen.maxIndex,
+    sdLog10: logarithmic && logarithmic.sd,
     nonPositive,
     histogram,
   }

@@ -10,9 +10,9 @@ const highestExponent = 3
 const bins = binsPerDecade * (highestExponent - lowestExponent)
 export const histogramLength = bins + 2
 
-/** Place of a value among the bins, as a fraction: 0 at 0.001, 120 at 1000. */
-function placeOf(value: number): number {
-  const place = (Math.log10(value) - lowestExponent) * binsPerDecade
+/** Place of a value among the bins, as a fraction, by its log10: 0 at 0.001, 120 at 1000. */
+function placeOf(log10: number): number {
+  const place = (log10 - lowestExponent) * binsPerDecade
   const edge = Math.round(place)
   // 0.001 and its like sit on an edge, and the logarithm misses it by its last digit.
   return Math.abs(place - edge) < 1e-9 ? edge : place
@@ -20,8 +20,12 @@ function placeOf(value: number): number {
 
 /** The position of a value in an `AreaHistogram`. */
 export function binOf(value: number): number {
-  if (!(value > 0)) return 0
-  return Math.min(Math.max(Math.floor(placeOf(value)) + 1, 0), bins + 1)
+  return value > 0 ? binOfLog10(Math.log10(value)) : 0
+}
+
+/** The same by the value's log10. */
+export function binOfLog10(log10: number): number {
+  return Math.min(Math.max(Math.floor(placeOf(log10)) + 1, 0), bins + 1)
 }
 
 /**
@@ -30,7 +34,7 @@ export function binOf(value: number): number {
  */
 export function areaAboveKm2(histogram: AreaHistogram, level: number): number | null {
   if (!(level > 0)) return null
-  const place = placeOf(level)
+  const place = placeOf(Math.log10(level))
   if (!(place >= 0 && place <= bins)) return null
   let sum = 0
   for (let bin = Math.floor(place) + 1; bin < histogramLength; bin++) sum += histogram[bin]!

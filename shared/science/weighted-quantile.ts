@@ -1,3 +1,5 @@
+import { sortTogether } from './sort-together'
+
 /** Sums of weights that should meet a share exactly may miss it by rounding; this much of the total is let pass. */
 const rounding = 1e-12
 
@@ -11,22 +13,33 @@ export function weightedQuantiles(
   weights: Float64Array,
   shares: readonly number[],
 ): (number | null)[] {
+  const kept = new Float64Array(values.length)
+  const weightOf = new Float64Array(values.length)
+  let count = 0
+  for (let i = 0; i < values.length; i++) {
+    if (!Number.isFinite(values[i]) || !(weights[i]! > 0)) continue
+    kept[count] = values[i]!
+    weightOf[count++] = weights[i]!
+  }
+  sortTogether(kept, weightOf, count)
+  return sortedQuantiles(kept, weightOf, count, shares)
+}
+
+/** The same of the first `count` values, ascending, all finite and with weights above 0. */
+export function sortedQuantiles(values: Float64Array, weights: Float64Array, count: number, shares: readonly number[]): (number | null)[] {
   if (shares.some((p) => !(p >= 0 && p <= 1))) throw new RangeError('A quantile is asked between 0 and 1.')
-  const order: number[] = []
-  for (let i = 0; i < values.length; i++) if (Number.isFinite(values[i]) && weights[i]! > 0) order.push(i)
-  if (order.length === 0) return shares.map(() => null)
-  order.sort((a, b) => values[a]! - values[b]!)
-  const cumulated = new Float64Array(order.length)
+  if (count === 0) return shares.map(() => null)
+  const cumulated = new Float64Array(count)
   let total = 0
-  for (let i = 0; i < order.length; i++) cumulated[i] = total += weights[order[i]!]!
+  for (let i = 0; i < count; i++) cumulated[i] = total += weights[i]!
   return shares.map((p) => {
     const needed = (p - rounding) * total
-    let [low, high] = [0, order.length - 1]
+    let [low, high] = [0, count - 1]
     while (low < high) {
       const middle = (low + high) >> 1
       if (cumulated[middle]! >= needed) high = middle
       else low = middle + 1
     }
-    return values[order[low]!]!
+    return values[low]!
   })
 }
