@@ -1,8 +1,10 @@
 import type { GridWindow } from '../../shared/science/grid'
+import type { ValidRange } from './picture-tasks'
 import { readMasked } from './read-masked'
 import type { LayerPlace } from './tasks'
+import { withinRange } from './valid-range'
 
-/** The values of a layer in a window, NaN for missing and for what its feed hides. */
-export async function readLayer(layer: LayerPlace, window: GridWindow): Promise<Float64Array> {
-  return (await readMasked(layer, window)).values
+/** The values of a layer in a window; NaN for missing, for what its feed hides and for what lies outside its valid range. */
+export async function readLayer(layer: LayerPlace, range: ValidRange, window: GridWindow): Promise<Float64Array> {
+  return withinRange(await readMasked(layer, window), range).values
 }

@@ -6,6 +6,7 @@ import { windowOf } from '../../shared/science/cell-shares'
 import { maskedAreas } from './masked-areas'
 import { readMasked, type MaskedValues } from './read-masked'
 import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
+import { withinRange } from './valid-range'
 
 type Input = Tasks['summariseViews']['input']
 
@@ -17,8 +18,6 @@ interface Reading extends MaskedValues {
 interface RegionLayer extends MaskedValues {
   processingVersion: string
 }
-
-const outOfRange = 'outside the valid range'
 
 /**
  * Figures of many views. Each layer is read once, over the window of all regions that need it; views are merged cell by
@@ -106,13 +105,3 @@ function pick<T extends Float64Array | Uint8Array>(values: T, picked: T, window:
   }
   return picked
 }
-
-/** The feed's own valid range, in the unit of the feed. */
-function withinRange({ values, hidden }: MaskedValues, { validMin, validMax }: Input): MaskedValues {
-  if (validMin === null && validMax === null) return { values, hidden }
-  const low = validMin ?? -Infinity
-  const high = validMax ?? Infinity
-  const outside = Uint8Array.from(values, (value) => Number(value < low || value > high))
-  return { values: values.map((value) => (value >= low && value <= high ? value : NaN)), hidden: new Map([...hidden, [outOfRange, outside]]) }
-}
-

@@ -3,6 +3,7 @@ import type { Figures } from '../../shared/science/figures'
 import type { Judgement, JudgeInput } from '../../shared/science/judge'
 import type { DemoFile } from '../seeders/demo/files'
 import type { Seen } from './inspect-file'
+import type { PictureTasks } from './picture-tasks'
 
 /** One variable of a stored file, at one step. */
 export interface StoredValues {
@@ -53,7 +54,7 @@ export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
 }
 
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */
-export interface Tasks {
+export interface Tasks extends PictureTasks {
   hashPassword: { input: { password: string; cost?: number }; output: string }
   comparePassword: { input: { password: string; hash: string }; output: boolean }
   inspectFile: { input: { path: string; fileName: string }; output: Seen }
@@ -73,12 +74,7 @@ export interface Tasks {
     output: ViewFigures[]
   }
   judgeRegion: { input: JudgeRegionInput; output: RegionJudgement }
-  drawTile: {
-    input: { layer: LayerPlace; grid: string; z: number; x: number; y: number; theme: 'light' | 'night' }
-    output: Uint8Array | null
-  }
   writeDemoFile: { input: { file: DemoFile; directory: string }; output: string }
-  readCell: { input: { layer: LayerPlace; row: number; column: number }; output: number | null }
 }
 
 export type JudgeRegionInput = Omit<JudgeInput, 'views'> & {

@@ -5,8 +5,9 @@ import { inspectFile } from './inspect-file'
 import { judgeRegion } from './judge-region'
 import { writeDemoFile } from '../seeders/demo/write-file'
 import { comparePassword, hashPassword } from './password'
-import { readCell } from './read-cell'
+import { readCells } from './read-cells'
 import { summariseViews } from './summarise-views'
+import { surveyLayer } from './survey-layer'
 import type { Tasks } from './tasks'
 import { weighCells } from './weigh-cells'
 
@@ -20,7 +21,8 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   summariseViews,
   judgeRegion,
   drawTile,
-  readCell,
+  readCells,
+  surveyLayer,
   writeDemoFile: ({ file, directory }) => writeDemoFile(file, directory),
 }
 

@@ -6,6 +6,7 @@ import * as duty from './duty'
 import { endpoint } from './endpoint'
 import * as feeds from './feeds'
 import * as files from './files'
+import { layerLegend } from './layer-legend'
 import * as layers from './layers'
 import * as pulls from './pulls'
 import * as regions from './regions'
@@ -15,12 +16,9 @@ import * as series from './series'
 import { today } from './today'
 import * as users from './users'
 
-const tileParams = z.object({
-  id: z.coerce.number().int().positive(),
-  z: z.coerce.number().int().min(0).max(16),
-  x: z.coerce.number().int().min(0),
-  y: z.coerce.number().int().min(0),
-})
+/** Where a tile lies is read by its own route, whose answers say what a tile's address is. */
+const tileParams = z.object({ id: z.coerce.number().int().positive(), z: z.string(), x: z.string(), y: z.string() })
+const place = z.object({ lat: z.coerce.number().min(-90).max(90), lon: z.coerce.number().min(-540).max(540) })
 
 /** Every call of the HTTP interface. Server, client, description and tests read this one list. */
 export const endpoints = {
@@ -47,6 +45,7 @@ export const endpoints = {
   createFeed: endpoint({ method: 'POST', path: '/feeds', may: 'feed:confirm', summary: 'Make a feed; a proposal is a valid body', body: feeds.newFeed, reply: feeds.feed, status: 201 }),
   feed: endpoint({ method: 'GET', path: '/feeds/:id', may: 'read', summary: 'One feed', params: idParam, reply: feeds.feed }),
   changeFeed: endpoint({ method: 'PATCH', path: '/feeds/:id', may: 'feed:edit', summary: 'Change or retire a feed', params: idParam, body: feeds.feedChange, reply: feeds.feed }),
+  feedDays: endpoint({ method: 'GET', path: '/feeds/:id/days', may: 'read', summary: 'Which days a feed has layers of', params: idParam, query: z.object({ from: day.optional(), to: day.optional() }), reply: layers.feedDays }),
   feedPull: endpoint({ method: 'GET', path: '/feeds/:id/pull', may: 'read', summary: 'What a feed fetches for itself, and how that goes', params: idParam, reply: pulls.feedPull }),
   keepPull: endpoint({ method: 'PUT', path: '/feeds/:id/pull', may: 'feed:edit', summary: 'Let a feed fetch for itself; credentials are taken and never given out', params: idParam, body: pulls.pullSettings, reply: pulls.feedPull }),
   dropPull: endpoint({ method: 'DELETE', path: '/feeds/:id/pull', may: 'feed:edit', summary: 'Fetch nothing any more', params: idParam, status: 204 }),
@@ -59,8 +58,9 @@ export const endpoints = {
 
   listLayers: endpoint({ method: 'GET', path: '/layers', may: 'read', summary: 'Layers, newest first', query: page.extend({ feedId: z.coerce.number().int().positive().optional(), from: day.optional(), to: day.optional() }), reply: list(layers.layer) }),
   layer: endpoint({ method: 'GET', path: '/layers/:id', may: 'read', summary: 'One layer', params: idParam, reply: layers.layer }),
-  layerTile: endpoint({ method: 'GET', path: '/layers/:id/tiles/:z/:x/:y.png', may: 'read', summary: 'A map tile of a layer', params: tileParams, query: z.object({ theme: z.enum(['light', 'night']).default('light') }), contentType: 'image/png' }),
-  layerPoint: endpoint({ method: 'GET', path: '/layers/:id/point', may: 'read', summary: 'One cell of a layer', params: idParam, query: z.object({ lat: z.coerce.number().min(-90).max(90), lon: z.coerce.number().min(-540).max(540) }), reply: layers.layerPoint }),
+  layerTile: endpoint({ method: 'GET', path: '/layers/:id/tiles/:z/:x/:y.png', may: 'read', summary: 'A map tile of a layer (Web Mercator, 256 pixels)', params: tileParams, query: z.object({ theme: z.enum(['light', 'night']).default('light'), show: z.enum(['value', 'departure']).default('value') }), contentType: 'image/png' }),
+  layerLegend: endpoint({ method: 'GET', path: '/layers/:id/legend', may: 'read', summary: 'What the colours of a layer mean, its values, and why cells are missing', params: idParam, reply: layerLegend }),
+  layerPoint: endpoint({ method: 'GET', path: '/layers/:id/point', may: 'read', summary: 'One cell of a layer, and if asked what is usual there', params: idParam, query: place.extend({ usual: z.enum(['true', 'false']).default('false') }), reply: layers.layerPoint }),
   markLayerSuspect: endpoint({ method: 'POST', path: '/layers/:id/suspect', may: 'layer:suspect', summary: 'Mark a layer suspect, or take that back; its days are judged again', params: idParam, body: z.object({ suspect: z.boolean().default(true), note: z.string().trim().max(1000).default('') }), reply: layers.layer }),
 
   listRegions: endpoint({ method: 'GET', path: '/regions', may: 'read', summary: 'Regions, by worry', query: page, reply: list(regions.region) }),

@@ -23,6 +23,28 @@ export const layerQuery = (id: number) =>
     queryFn: ({ signal }) => call(endpoints.layer, { params: { id }, signal }),
   })
 
+export const layerLegendQuery = (id: number) =>
+  queryOptions({
+    queryKey: ['layers', 'legend', id],
+    queryFn: ({ signal }) => call(endpoints.layerLegend, { params: { id }, signal }),
+    staleTime: 60_000,
+  })
+
+/** One cell of a layer; with what is usual there when asked, which takes longer. */
+export const layerPointQuery = (id: number, place: { latitude: number; longitude: number }, usual: boolean) =>
+  queryOptions({
+    queryKey: ['layers', 'point', id, place.latitude, place.longitude, usual],
+    queryFn: ({ signal }) =>
+      call(endpoints.layerPoint, { params: { id }, query: { lat: place.latitude, lon: place.longitude, usual: usual ? 'true' : 'false' }, signal }),
+    staleTime: 60_000,
+  })
+
+export const feedDaysQuery = (feedId: number, from: string, to: string) =>
+  queryOptions({
+    queryKey: ['layers', 'days', feedId, from, to],
+    queryFn: ({ signal }) => call(endpoints.feedDays, { params: { id: feedId }, query: { from, to }, signal }),
+  })
+
 export function useMarkSuspect(id: number) {
   const client = useQueryClient()
   return useMutation({

@@ -1,5 +1,4 @@
 import { useMemo } from 'react'
-import type { Alert } from '../../../shared/schemas/alerts'
 import type { Region } from '../../../shared/schemas/regions'
 import { boundsAround } from '../../components/map/bounds'
 import { LayerTiles } from '../../components/map/layer-tiles'
@@ -8,7 +7,7 @@ import { RangeRings } from '../../components/map/range-rings'
 import { RegionOutlines } from '../../components/map/region-outlines'
 import { SeaMap } from '../../components/map/sea-map'
 
-export default function MapPiece({ alert, region, layerId }: { alert: Alert; region: Region; layerId: number }) {
+export default function MapPiece({ region, layerId }: { region: Region; layerId: number }) {
   const { geometry, site } = region
   const bounds = useMemo(() => {
     const spot = site && ([site.longitude, site.latitude] as [number, number])
@@ -22,7 +21,7 @@ export default function MapPiece({ alert, region, layerId }: { alert: Alert; reg
         <RegionOutlines regions={[{ id: region.id, name: region.name, geometry, state: region.standing.state }]} />
         {site && <RangeRings site={site} />}
       </SeaMap>
-      <Legend quantity="Chlorophyll" unit={alert.evidence.unit}>
+      <Legend layerId={layerId}>
         {site && 'Rings: distance from the site.'}
       </Legend>
     </>

@@ -33,7 +33,7 @@ export function Where({ alert }: { alert: Alert }) {
       {error && !region && <Failure error={error} onRetry={() => void refetch()} />}
       {region && (
         <Suspense fallback={<div className="hatch aspect-[1.27] border border-rule2" role="status" aria-label="Map on its way" />}>
-          <MapPiece alert={alert} region={region} layerId={Number(layerId)} />
+          <MapPiece region={region} layerId={Number(layerId)} />
         </Suspense>
       )}
     </section>

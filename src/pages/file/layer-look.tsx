@@ -22,7 +22,7 @@ export default function LayerLook({ layerId }: { layerId: number }) {
   const [marking, setMarking] = useState(false)
   if (layer.error) return <Failure error={layer.error} />
   if (!layer.data) return <div className="hatch aspect-[1.2] opacity-60" />
-  const { grid, suspect, unit, variable } = layer.data
+  const { grid, suspect } = layer.data
   const bounds: MapBounds = [
     [Math.max(-84, grid.south), grid.west],
     [Math.min(84, grid.north), grid.east],
@@ -36,7 +36,7 @@ export default function LayerLook({ layerId }: { layerId: number }) {
         <LayerTiles layerId={layerId} />
         <RegionOutlines regions={regions.map(({ id, name, geometry, standing }) => ({ id, name, geometry, state: standing.state }))} />
       </SeaMap>
-      <Legend quantity={variable} unit={unit} />
+      <Legend layerId={layerId} />
       {suspect && (
         <Message title={`Marked suspect by ${suspect.by}.`}>
           {suspect.note} Its days are judged without it.

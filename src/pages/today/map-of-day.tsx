@@ -10,7 +10,6 @@ import { Plates, type PlateRegion } from '../../components/map/plates'
 import { RegionOutlines } from '../../components/map/region-outlines'
 import { SeaMap, type MapBounds } from '../../components/map/sea-map'
 import { useWide } from '../../hooks/use-wide'
-import { quantityWord } from '../../lib/quantity'
 import { standingWord } from '../../lib/standing'
 
 const world: MapBounds = [
@@ -46,7 +45,7 @@ export default function MapOfDay({ layerId, regions = [], feed }: Props) {
         <RegionOutlines regions={shown} onSelect={(id) => void navigate(paths.region.to({ id }))} />
         <Plates regions={shown} compact={!wide} />
       </SeaMap>
-      <Legend quantity={feed ? quantityWord(feed) : 'Chlorophyll'} unit={feed?.unit ?? 'mg m-3'}>
+      <Legend layerId={layerId} feed={feed}>
         {layerId === null && 'No layer on this day.'}
       </Legend>
     </>
