@@ -1,3 +1,4 @@
+import type { FoundAxis } from '../../shared/schemas/found'
 import type { Grid, GridWindow } from '../../shared/science/grid'
 import type { FlagCells, FlagVariable } from './flags'
 
@@ -34,6 +35,8 @@ export interface GridVariable {
   times: LayerTime[]
   attributes: Record<string, string | number | number[]>
   dimensions: { name: string; size: number }[]
+  /** What the file says of these dimensions; left out by formats whose grid says it all. */
+  axes?: FoundAxis[]
   /** The variable that says why a cell may not be trusted, where the file has one for this variable. */
   flags?: FlagVariable
   /**
@@ -59,5 +62,10 @@ export interface GridSource {
    * names. RangeError for a variable without flags; LayerRefused as for `readWindow`.
    */
   readFlags(variable: string, step: number, window: GridWindow, flagVariable?: string): Promise<FlagCells>
+  /**
+   * 1 where the file holds a number that its own valid range leaves out, for formats that have such ranges;
+   * errors as for `readWindow`.
+   */
+  readOutside?(variable: string, step: number, window: GridWindow): Promise<Uint8Array>
   close(): void
 }

@@ -5,15 +5,13 @@ import { endpoints } from '../../shared/schemas/endpoints'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import { feedOf, knownLayer, layerCell, layerTile, pictureKey, surveyOf, tileKey } from '../pipeline/layer-pictures'
+import { emptyTile } from '../pictures/empty-tile'
 import { markSuspect } from '../pipeline/mark-suspect'
 import { usualHere } from '../pipeline/usual-here'
 import { layerRows } from '../queries/layer-rows'
 import { cursorId, pageOf } from './paging'
 import { serve } from './serve'
 import { tilePlace } from './tile-place'
-
-/** A picture of nothing: one see-through pixel. */
-const emptyTile = Buffer.from('iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAYAAAAfFcSJAAAACXBIWXMAAAPoAAAD6AG1e1JrAAAADUlEQVQImWNgYGBgAAAABQABh6FO1AAAAABJRU5ErkJggg==', 'base64')
 
 export function layerRoutes(router: Router, context: Context): void {
   const one = async (id: number) => {

@@ -99,3 +99,11 @@ export function unpackInPlace(values: Float64Array, packing: Packing): void {
     values[i] = valid ? value * scale + offset : NaN
   }
 }
+
+/** 1 where a stored number is neither missing nor within the valid range. */
+export function outsideRange(stored: Float64Array, { missing, lowest, highest, unsignedModulus }: Packing): Uint8Array {
+  return Uint8Array.from(stored, (number) => {
+    const value = unsignedModulus && number < 0 ? number + unsignedModulus : number
+    return Number(Number.isFinite(value) && !missing.includes(value) && (value < lowest || value > highest))
+  })
+}

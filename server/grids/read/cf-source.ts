@@ -2,7 +2,8 @@ import type { GridWindow } from '../../../shared/science/grid'
 import type { GridSource, GridVariable } from '../grid-source'
 import { LayerRefused } from '../layer-refused'
 import { attachFlags, readFlags } from './cf-attach-flags'
-import { packingOf, unpackInPlace } from './cf-packing'
+import { CfAxes } from './cf-found-axes'
+import { outsideRange, packingOf, unpackInPlace } from './cf-packing'
 import { type Axis, type CellPlace, CellPlaces } from './cf-place'
 import { coordinateOf, lookUp, roleOf } from './cf-roles'
 import { isClimatological, layerTimes } from './cf-time'
@@ -18,6 +19,7 @@ import { checkWindow } from './window'
 export function cfSource(file: RawNetcdf, fileName: string): GridSource {
   const warnings = [...file.warnings]
   const places = new CellPlaces(file)
+  const found = new CfAxes(file)
   const helpers = helperNames(file)
   const placed: PlacedVariable[] = []
   let climatological: string | null = null
@@ -36,7 +38,9 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
       warnings.push(`${raw.name} was left out: it is a climatology (several years folded into one).`)
       continue
     }
-    placed.push(place(file, raw, cells, { start: surface.start, stepAxis: stepAxis < 0 ? null : stepAxis, time }, warnings))
+    const one = place(file, raw, cells, { start: surface.start, stepAxis: stepAxis < 0 ? null : stepAxis, time }, warnings)
+    one.variable.axes = found.of(raw, axes)
+    placed.push(one)
   }
   if (placed.length === 0) throw nothingPlaced(file, fileName, climatological)
   attachFlags(file, placed, warnings)
@@ -49,6 +53,7 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
     readWindow: async (name, step, window) => readWindow(file, find(placed, name), step, window),
     readFlags: async (name, step, window, flagVariable) =>
       readFlags(file, placed, find(placed, name), step, window, flagVariable),
+    readOutside: async (name, step, window) => readOutside(file, find(placed, name), step, window),
     close: () => file.close(),
   }
 }
@@ -152,6 +157,12 @@ function readWindow(file: RawNetcdf, placed: PlacedVariable, step: number, windo
   unpackInPlace(block, placed.packing)
   convertInPlace(block, placed.meaning)
   return upright(placed, block, window)
+}
+
+function readOutside(file: RawNetcdf, placed: PlacedVariable, step: number, window: GridWindow): Uint8Array {
+  checkWindow(placed.variable, step, window)
+  const { start, count } = blockOf(placed, step, window)
+  return upright(placed, outsideRange(file.read(placed.raw, start, count), placed.packing), window)
 }
 
 function nothingPlaced(file: RawNetcdf, fileName: string, climatological: string | null): LayerRefused {

@@ -31,6 +31,11 @@ const secondary = new Set([
   'flags', 'quality', 'qc', 'qa', 'mask', 'anomaly', 'anom', 'anomalies', 'difference', 'diff', 'ratio', 'trend', 'gradient',
   'confidence', 'status', 'weight', 'weights', 'climatology', 'clim', 'percentile', 'index', 'interpolated', 'min', 'max',
 ])
+/** Of these, the ones that may as well belong to a quantity of its own: an index, a ratio, a greatest value. */
+const ownQuantities = new Set([
+  'anomaly', 'anom', 'anomalies', 'difference', 'diff', 'ratio', 'trend', 'gradient', 'climatology', 'clim', 'percentile', 'index',
+  'interpolated', 'min', 'max',
+])
 
 /** Works out chlorophyll and reflectance; anything else stays 'other' in the file's own unit. */
 export function meaningOf(variable: Named): Meaning {
@@ -47,13 +52,24 @@ export function meaningOf(variable: Named): Meaning {
   return { ...other, quantity: 'reflectance', wavelengthNm, unit: 'sr-1' }
 }
 
-function isSecondary({ name, longName, standardName }: Named): boolean {
-  // A standard name may carry a modifier behind a blank, such as "standard_error" or "status_flag".
-  if (standardName?.includes(' ')) return true
-  const words = [baseName(name), longName ?? ''].flatMap((text) =>
+type Names = Pick<Named, 'name' | 'longName' | 'standardName'>
+
+function isSecondary(named: Names): boolean {
+  return hasModifier(named) || wordsOf(named).some((word) => secondary.has(word))
+}
+
+/** True for the error, bias, uncertainty, count or flags of another variable, whatever that one measures. */
+export function tellsOfAnother({ attributes, ...named }: Names & { attributes: Readonly<Record<string, unknown>> }): boolean {
+  return 'flag_meanings' in attributes || hasModifier(named) || wordsOf(named).some((word) => secondary.has(word) && !ownQuantities.has(word))
+}
+
+/** A standard name may carry a modifier behind a blank, such as "standard_error" or "status_flag". */
+const hasModifier = ({ standardName }: Names): boolean => standardName?.trim().includes(' ') ?? false
+
+function wordsOf({ name, longName }: Names): string[] {
+  return [baseName(name), longName ?? ''].flatMap((text) =>
     text.replace(/([a-z])([A-Z])/g, '$1 $2').toLowerCase().split(/[^a-z]+/),
   )
-  return words.some((word) => secondary.has(word))
 }
 
 function isChlorophyll({ name, standardName }: Named): boolean {
