@@ -1,5 +1,6 @@
 import { describeGrid, type GridDescription } from './describe-grid'
 import type { GridFormat, GridSource, GridVariable } from './grid-source'
+import { producedAt } from './produced-at'
 import { openGridSource } from './read/open'
 
 /** What was understood of a file, safe to keep as JSON. */
@@ -7,6 +8,8 @@ export interface InspectReport {
   format: GridFormat
   variables: InspectedVariable[]
   warnings: string[]
+  /** ISO 8601, UTC; null when the file does not say when it was made. */
+  producedAt: string | null
 }
 
 export interface InspectedVariable
@@ -47,7 +50,8 @@ export async function inspectGrid(path: string, fileName: string): Promise<Inspe
 export async function inspectSource(source: GridSource): Promise<InspectReport> {
   const variables: InspectedVariable[] = []
   for (const variable of source.variables) variables.push(await inspectVariable(source, variable))
-  return { format: source.format, variables, warnings: source.warnings }
+  const made = producedAt(source.globalAttributes)
+  return { format: source.format, variables, warnings: source.warnings, producedAt: made === null ? null : new Date(made).toISOString() }
 }
 
 async function inspectVariable(source: GridSource, variable: GridVariable): Promise<InspectedVariable> {

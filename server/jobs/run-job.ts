@@ -3,8 +3,10 @@ import type { Context } from '../context'
 import type { JobRecord } from '../models/job'
 import { backfillFeed } from '../pipeline/backfill-feed'
 import { backfillRegion } from '../pipeline/backfill-region'
+import { LayerRefused } from '../grids/layer-refused'
 import { judgeRegionJob } from '../pipeline/judge-region'
 import { processFile } from '../pipeline/process-file'
+import { refuseStored } from '../pipeline/refuse-file'
 import { rereadViews } from '../pipeline/reread-views'
 import { pullFeed } from '../pull/pull-feed'
 import { takeJob, type JobKind, type JobLane } from './queue'
@@ -32,6 +34,7 @@ export async function runNextJob(context: Context, lane: JobLane = 'road'): Prom
     const outcome = await handlers[job.kind as JobKind](context, job)
     if (outcome === 'done') await finish(context, job, { state: 'done', leaseOwner: null, leaseUntil: null })
   } catch (error) {
+    if (error instanceof LayerRefused) await refuseStored(context, error)
     await fail(context, job, error)
   }
   context.news.tell({ topic: 'jobs', id: job.id })

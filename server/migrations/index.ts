@@ -4,12 +4,14 @@ import { sql as firstSchema } from './001-first-schema'
 import { sql as derivedFeeds } from './002-derived-feeds'
 import { sql as feedPulls } from './003-feed-pulls'
 import { sql as quality } from './004-quality'
+import { sql as madeAndReplaced } from './005-made-and-replaced'
 
 const migrations = [
   { name: '001-first-schema', sql: firstSchema },
   { name: '002-derived-feeds', sql: derivedFeeds },
   { name: '003-feed-pulls', sql: feedPulls },
   { name: '004-quality', sql: quality },
+  { name: '005-made-and-replaced', sql: madeAndReplaced },
 ]
 
 /** Brings the database to the newest schema; answers the names of what was applied. */

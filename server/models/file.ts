@@ -21,9 +21,14 @@ export interface FileRow {
   proposal: FeedProposal | null
   waitingFor: string | null
   refusal: Refusal | null
+  /** When its server says it was last changed. */
+  modifiedAt: number | null
+  /** The older file whose place it takes: wholly, or only at the instants both hold. */
+  replaces: number | null
+  replacesWholly: boolean
 }
 
-export interface FileRecord extends Model<FileRow, Optional<FileRow, 'id' | 'uploadedBy' | 'processedAt' | 'feedId' | 'observedAt' | 'report' | 'proposal' | 'waitingFor' | 'refusal'>>, FileRow {}
+export interface FileRecord extends Model<FileRow, Optional<FileRow, 'id' | 'uploadedBy' | 'processedAt' | 'feedId' | 'observedAt' | 'report' | 'proposal' | 'waitingFor' | 'refusal' | 'modifiedAt' | 'replaces' | 'replacesWholly'>>, FileRow {}
 
 export function defineFile(sequelize: Sequelize) {
   return sequelize.define<FileRecord>(
@@ -44,6 +49,9 @@ export function defineFile(sequelize: Sequelize) {
       proposal: jsonColumn('proposal', true),
       waitingFor: { type: DataTypes.TEXT, allowNull: true },
       refusal: jsonColumn('refusal', true),
+      modifiedAt: { type: DataTypes.INTEGER, allowNull: true },
+      replaces: { type: DataTypes.INTEGER, allowNull: true },
+      replacesWholly: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
     },
     { tableName: 'files', underscored: true, timestamps: false },
   )

@@ -17,9 +17,14 @@ export interface LayerRow {
   suspectAt: number | null
   suspectBy: number | null
   suspectNote: string | null
+  /** When its file was made; null where nobody says. */
+  producedAt: number | null
+  /** The newer file that took its place. */
+  replacedBy: number | null
+  replacedAt: number | null
 }
 
-export interface LayerRecord extends Model<LayerRow, Optional<LayerRow, 'id' | 'endsAt' | 'suspectAt' | 'suspectBy' | 'suspectNote'>>, LayerRow {}
+export interface LayerRecord extends Model<LayerRow, Optional<LayerRow, 'id' | 'endsAt' | 'suspectAt' | 'suspectBy' | 'suspectNote' | 'producedAt' | 'replacedBy' | 'replacedAt'>>, LayerRow {}
 
 export function defineLayer(sequelize: Sequelize) {
   return sequelize.define<LayerRecord>(
@@ -41,6 +46,9 @@ export function defineLayer(sequelize: Sequelize) {
       suspectAt: { type: DataTypes.INTEGER, allowNull: true },
       suspectBy: { type: DataTypes.INTEGER, allowNull: true },
       suspectNote: { type: DataTypes.TEXT, allowNull: true },
+      producedAt: { type: DataTypes.INTEGER, allowNull: true },
+      replacedBy: { type: DataTypes.INTEGER, allowNull: true },
+      replacedAt: { type: DataTypes.INTEGER, allowNull: true },
     },
     { tableName: 'layers', underscored: true, timestamps: false },
   )

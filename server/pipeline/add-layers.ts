@@ -29,10 +29,12 @@ export interface LayerBatch {
   gridId: number
   /** As the file says; the feed's own where it says nothing. */
   processingVersion: string | null
+  /** When the file was made, as far as anybody says. */
+  producedAt: number | null
 }
 
 /** One layer a step, once however often it is run; answers the ids in the order of the steps. */
-export async function addLayers(context: Context, { file, match, steps, gridId, processingVersion }: LayerBatch): Promise<number[]> {
+export async function addLayers(context: Context, { file, match, steps, gridId, processingVersion, producedAt }: LayerBatch): Promise<number[]> {
   const rows = steps.map(({ step, time }) => ({
     step,
     observedAt: time.observedAt,
@@ -41,11 +43,11 @@ export async function addLayers(context: Context, { file, match, steps, gridId, 
   }))
   return context.db.write(async (tx) => {
     await context.db.run(
-      `INSERT INTO layers (feed_id, file_id, grid_id, variable, step, observed_at, ends_at, has_clock, checksum, processing_version, stage, received_at)
+      `INSERT INTO layers (feed_id, file_id, grid_id, variable, step, observed_at, ends_at, has_clock, checksum, processing_version, stage, received_at, produced_at)
        SELECT $feedId, $fileId, $gridId, $variable, r.value ->> 'step', r.value ->> 'observedAt', r.value ->> 'endsAt', r.value ->> 'hasClock',
-         $checksum, $processingVersion, $stage, $receivedAt
+         $checksum, $processingVersion, $stage, $receivedAt, $producedAt
        FROM json_each($rows) r WHERE true
-       ON CONFLICT (feed_id, observed_at, checksum, step) DO NOTHING`,
+       ON CONFLICT (feed_id, observed_at, checksum, step) DO UPDATE SET produced_at = ifnull(produced_at, excluded.produced_at)`,
       {
         feedId: match.feed.id,
         fileId: file.id,
@@ -55,6 +57,7 @@ export async function addLayers(context: Context, { file, match, steps, gridId, 
         processingVersion: processingVersion ?? match.feed.processingVersion,
         stage: match.feed.stage,
         receivedAt: file.receivedAt,
+        producedAt,
         rows: JSON.stringify(rows),
       },
       tx,

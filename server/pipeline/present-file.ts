@@ -2,6 +2,7 @@ import { dateOf } from '../../shared/science/local-day'
 import type { FileItem, OffingFile, ReportVariable } from '../../shared/schemas/files'
 import type { Context } from '../context'
 import type { FileRecord } from '../models/file'
+import { replacersOf } from '../queries/replacements'
 
 const iso = (instant: number | null) => (instant === null ? null : new Date(instant).toISOString())
 
@@ -34,8 +35,8 @@ export async function presentFiles(context: Context, files: readonly FileRecord[
 /** One file with what was understood, its layers in time order and the figures it gave. */
 export async function presentFile(context: Context, file: FileRecord): Promise<OffingFile> {
   const [item] = await presentFiles(context, [file])
-  const layers = await context.db.all<{ id: number; feedId: number; observedAt: number }>(
-    `SELECT l.id, l.feed_id AS feedId, l.observed_at AS observedAt FROM layers l JOIN feeds f ON f.id = l.feed_id
+  const layers = await context.db.all<{ id: number; feedId: number; observedAt: number; replaced: number }>(
+    `SELECT l.id, l.feed_id AS feedId, l.observed_at AS observedAt, l.replaced_by IS NOT NULL AS replaced FROM layers l JOIN feeds f ON f.id = l.feed_id
      WHERE l.file_id = $id OR (l.checksum = $checksum AND l.feed_id = $feedId AND l.observed_at = $observedAt)
      ORDER BY l.observed_at, f.derived_from IS NOT NULL, l.id`,
     { id: file.id, checksum: file.checksum, feedId: file.feedId ?? -1, observedAt: file.observedAt ?? -1 },
@@ -60,7 +61,9 @@ export async function presentFile(context: Context, file: FileRecord): Promise<O
     ...item!,
     report: file.report && { ...file.report, variables: await withMasked(context, file) },
     proposal: file.proposal,
-    layers: layers.map((layer) => ({ ...layer, observedAt: iso(layer.observedAt)! })),
+    layers: layers.map((layer) => ({ ...layer, observedAt: iso(layer.observedAt)!, replaced: layer.replaced === 1 })),
+    replaces: file.replaces === null ? null : ((await context.models.files.findByPk(file.replaces, { attributes: ['id', 'name'] }))?.get({ plain: true }) ?? null),
+    replacedBy: (await replacersOf(context, file.id)).map((newer) => ({ ...newer, at: iso(newer.at)! })),
     summaries: summaries.map((row) => ({ ...row, day: dateOf(row.day) })),
   }
 }

@@ -11,6 +11,8 @@ import { ensureFirstRule, regionsWithoutRule } from './first-rule'
 import { matchFeeds, type FeedMatch } from './match-feeds'
 import { proposeFeed } from './propose-feed'
 import { queueJudging } from './queue-judging'
+import { refuseFile } from './refuse-file'
+import { queueAfterReplacement, settleReplacement } from './replace-file'
 import { storedPath } from './stored-files'
 import { summariseLayers } from './summarise-layers'
 
@@ -31,8 +33,10 @@ export async function processFile(context: Context, job: JobRecord): Promise<'do
     if ('waitingFor' in matching) await letWait(context, file, seen, matching.waitingFor, feeds.map((feed) => feed.name))
     else await takeIn(context, job, file, seen, matching.matches)
   } catch (error) {
-    if (!(error instanceof LayerRefused)) throw error
-    await refuse(context, file, error)
+    // What another file's bytes are refused for is no fault of this one.
+    const others = error instanceof LayerRefused && (error.facts['checksum'] ?? file.checksum) !== file.checksum
+    if (!(error instanceof LayerRefused) || others) throw error
+    await refuseFile(context, file, error)
   }
   return 'done'
 }
@@ -40,6 +44,7 @@ export async function processFile(context: Context, job: JobRecord): Promise<'do
 async function takeIn(context: Context, job: JobRecord, file: FileRecord, seen: Seen, matches: FeedMatch[]): Promise<void> {
   // Recipes of derived layers name bands by what was understood of the file.
   await setStatus(context, file, { report: { ...seen.report, feeds: [] } })
+  const producedAt = seen.report.producedAt === null ? file.modifiedAt : Date.parse(seen.report.producedAt)
   const gridIds = await keepGrids(context, seen.grids)
   const total = matches.reduce((sum, match) => sum + match.steps.length, 0)
   const taken: number[] = []
@@ -48,7 +53,8 @@ async function takeIn(context: Context, job: JobRecord, file: FileRecord, seen: 
     for (let from = 0; from < match.steps.length; from += stepsAtOnce) {
       const steps = match.steps.slice(from, from + stepsAtOnce)
       const gridId = gridIds[match.variable.grid]!
-      const layerIds = await addLayers(context, { file, match, steps, gridId, processingVersion: seen.processingVersion })
+      const layerIds = await addLayers(context, { file, match, steps, gridId, processingVersion: seen.processingVersion, producedAt })
+      await context.db.write((tx) => settleReplacement(context, tx, file))
       done += steps.length
       taken.push(...layerIds)
       await summariseLayers(context, match.feed.id, layerIds, (tx) => markProgress(context, tx, job, done, total))
@@ -69,6 +75,7 @@ async function finish(context: Context, file: FileRecord, seen: Seen, matches: F
       { status: 'processed', processedAt: context.clock.now(), report: { ...seen.report, feeds }, proposal: null, waitingFor: null, refusal: null },
       { transaction: tx },
     )
+    await queueAfterReplacement(context, tx, file)
     await noteQuality(context, tx, matches)
     for (const region of await regionsWithoutRule(context, tx)) await ensureFirstRule(context, tx, region)
     for (const { feed } of [...matches, ...derived]) await queueJudging(context, tx, { feedId: feed.id })
@@ -83,11 +90,6 @@ async function letWait(context: Context, file: FileRecord, seen: Seen, waitingFo
     report: { ...seen.report, feeds: [] },
     proposal: file.feedId === null ? proposeFeed(seen, file.name, names) : null,
   })
-}
-
-async function refuse(context: Context, file: FileRecord, refused: LayerRefused): Promise<void> {
-  const refusal = { code: refused.code, message: refused.message, details: refused.facts }
-  await setStatus(context, file, { status: 'refused', refusal, processedAt: context.clock.now() })
 }
 
 async function setStatus(context: Context, file: FileRecord, change: Parameters<FileRecord['update']>[0]): Promise<void> {

@@ -11,6 +11,10 @@ export interface Arrival {
   userId: number | null
   feedId: number | null
   observedAt: number | null
+  /** When its server says it was last changed. */
+  modifiedAt?: number | null
+  /** The file that the same address gave before: wholly replaced, or only at the instants both hold. */
+  replaces?: { fileId: number; wholly: boolean } | null
 }
 
 /**
@@ -21,9 +25,11 @@ export async function receiveFile(context: Context, arrival: Arrival): Promise<F
   await keepFile(context.env, arrival.arrived)
   const file = await context.db.write(async (tx) => {
     const known = await sameFile(context, arrival, tx)
-    if (known && known.status !== 'waiting' && known.status !== 'refused') return known
+    const correction = arrival.replaces && arrival.replaces.fileId !== known?.id ? arrival.replaces : null
+    if (known && known.status !== 'waiting' && known.status !== 'refused' && !correction) return known
     const record = known ?? (await newFile(context, arrival, tx))
     if (known) await known.update({ ...fieldsOf(arrival, known), name: arrival.name }, { transaction: tx })
+    if (correction) await takePlace(context, record, correction, tx)
     await queueFile(context, record, tx)
     return record
   })
@@ -44,10 +50,17 @@ export async function queueFile(context: Context, file: FileRecord, tx: Transact
   })
 }
 
+/** An address may go back to bytes it gave before: they are the newest again, and replaced by nothing. */
+async function takePlace(context: Context, file: FileRecord, { fileId, wholly }: { fileId: number; wholly: boolean }, tx: Transaction): Promise<void> {
+  await context.models.files.update({ replaces: null }, { where: { replaces: file.id }, transaction: tx })
+  await file.update({ replaces: fileId, replacesWholly: wholly }, { transaction: tx })
+}
+
 function fieldsOf(arrival: Arrival, known?: FileRecord) {
   return {
     feedId: arrival.feedId ?? known?.feedId ?? null,
     observedAt: arrival.observedAt ?? known?.observedAt ?? null,
+    modifiedAt: arrival.modifiedAt ?? known?.modifiedAt ?? null,
   }
 }
 

@@ -2,7 +2,7 @@ import { namesItsDay, type Slot } from '../../shared/address-pattern'
 import type { Context } from '../context'
 import { receiveFile } from '../pipeline/receive-file'
 import { dropFile } from '../pipeline/stored-files'
-import { feedHasBytes, hostRestsUntil, keepPulledAddress, pulledAddress, type PullRow } from '../queries/pulls'
+import { feedHasBytes, givenElsewhere, hostRestsUntil, keepPulledAddress, pulledAddress, type PullRow } from '../queries/pulls'
 import { fetchFile } from './fetch-file'
 import { fileNameOf } from './file-name-of'
 import { networkOf } from './network'
@@ -36,13 +36,23 @@ export async function pullAddress(context: Context, pull: PullRow, slot: Slot, {
   })
   if (fetched.kind !== 'fetched') return fetched.kind === 'unchanged' ? 'unchanged' : 'notThere'
   const { arrived, validators } = fetched
-  const known = before?.checksum === arrived.checksum || (await feedHasBytes(db, pull.feedId, arrived.checksum))
-  const file = known ? null : await receiveFile(context, { name: fileNameOf(url), arrived, origin: 'pull', userId: null, feedId: pull.feedId, observedAt: observedAt(pull, slot) })
+  // New bytes under a name that has its day correct what it gave before; under another name they may be of another day.
+  const changed = before !== null && before.fileId !== null && before.checksum !== arrived.checksum && !(await givenElsewhere(db, pull.feedId, slot.address, before.checksum))
+  const replaces = changed ? { fileId: before.fileId!, wholly: namesItsDay(pull.address) } : null
+  const known = before?.checksum === arrived.checksum || (replaces === null && (await feedHasBytes(db, pull.feedId, arrived.checksum)))
+  const modifiedAt = validators.lastModified === null ? null : instantOf(validators.lastModified)
+  const arrival = { name: fileNameOf(url), arrived, origin: 'pull' as const, userId: null, feedId: pull.feedId, observedAt: observedAt(pull, slot), modifiedAt, replaces }
+  const file = known ? null : await receiveFile(context, arrival)
   await dropFile(arrived)
   await db.write((tx) =>
     keepPulledAddress(db, tx, { feedId: pull.feedId, address: slot.address, ...validators, checksum: arrived.checksum, fileId: file?.id ?? null, askedAt: clock.now() }),
   )
   return known ? 'unchanged' : 'fetched'
+}
+
+function instantOf(httpDate: string): number | null {
+  const ms = Date.parse(httpDate)
+  return Number.isNaN(ms) ? null : ms
 }
 
 /** For a file without a time of its own: the day its address names. Where it names an hour, the feed's file-name pattern has to say it. */

@@ -30,8 +30,8 @@ export async function neighbourLayers(
   const rows = await context.db.all<{ layerId: number; fileId: number; variable: string; step: number }>(
     `SELECT l.id AS layerId, n.file_id AS fileId, n.variable, n.step FROM json_each($layerIds) w JOIN layers l ON l.id = w.value
      JOIN json_each($feedIds) f JOIN layers n ON n.feed_id = f.value AND n.observed_at = l.observed_at AND n.ends_at IS l.ends_at
-       AND n.grid_id = l.grid_id AND n.processing_version = l.processing_version AND n.suspect_at IS NULL
-     ORDER BY n.id DESC`,
+       AND n.grid_id = l.grid_id AND n.processing_version = l.processing_version AND n.suspect_at IS NULL AND n.replaced_by IS NULL
+     ORDER BY n.produced_at DESC NULLS LAST, n.id DESC`,
     { layerIds: JSON.stringify(layerIds), feedIds: JSON.stringify(feedIds) },
   )
   const bands = await bandsOfFiles(context, rows.map((row) => row.fileId), bandsOf)

@@ -21,8 +21,8 @@ export async function writeDerivedLayers(context: Context, of: { feedId: number;
   const sourceIds = JSON.stringify(layers.map((layer) => layer.sourceId))
   return context.db.write(async (tx) => {
     await context.db.run(
-      `INSERT INTO layers (feed_id, file_id, grid_id, variable, step, observed_at, ends_at, has_clock, checksum, processing_version, stage, received_at)
-       SELECT $feedId, file_id, grid_id, $variable, step, observed_at, ends_at, has_clock, checksum, processing_version, stage, received_at
+      `INSERT INTO layers (feed_id, file_id, grid_id, variable, step, observed_at, ends_at, has_clock, checksum, processing_version, stage, received_at, produced_at)
+       SELECT $feedId, file_id, grid_id, $variable, step, observed_at, ends_at, has_clock, checksum, processing_version, stage, received_at, produced_at
        FROM layers WHERE id IN (SELECT value FROM json_each($sourceIds)) ORDER BY id
        ON CONFLICT (feed_id, observed_at, checksum, step) DO NOTHING`,
       { ...of, sourceIds },

@@ -14,6 +14,7 @@ export interface PlacedLayer {
   endsAt: number | null
   hasClock: number
   processingVersion: string
+  producedAt: number | null
   west: number
   south: number
   east: number
@@ -37,16 +38,17 @@ type Row = Omit<PlacedLayer, 'recipe' | 'hiddenFlags' | 'storedLog10'> & { hidde
 
 const placed = `SELECT l.id, l.feed_id AS feedId, l.file_id AS fileId, l.grid_id AS gridId, f.name AS fileName, l.checksum, l.variable, l.step,
   l.observed_at AS observedAt, l.ends_at AS endsAt, l.has_clock AS hasClock, l.processing_version AS processingVersion,
-  g.west, g.south, g.east, g.north, g.column_count AS columns, fe.formula, fe.formula_version AS formulaVersion,
+  l.produced_at AS producedAt, g.west, g.south, g.east, g.north, g.column_count AS columns, fe.formula, fe.formula_version AS formulaVersion,
   fe.hidden_flags AS hiddenFlags, fe.stored_log10 AS storedLog10, fe.file_unit AS fileUnit, fe.unit,
   CASE WHEN fe.formula IS NULL THEN NULL ELSE (
     SELECT json_group_array(json_object('checksum', b.checksum, 'fileName', b.name, 'variable', s.variable, 'step', s.step, 'wavelengthNm', s.wavelength_nm))
     FROM (SELECT * FROM layer_sources WHERE layer_id = l.id ORDER BY slot) s JOIN files b ON b.id = s.file_id) END AS bands
   FROM layers l JOIN files f ON f.id = l.file_id JOIN grids g ON g.id = l.grid_id JOIN feeds fe ON fe.id = l.feed_id`
 
-/** A layer is trusted unless somebody marked it suspect, or one that it is worked out from. */
-const isTrusted = `l.suspect_at IS NULL AND NOT EXISTS (
-  SELECT 1 FROM layer_sources s JOIN layers b ON b.file_id = s.file_id AND b.step = s.step AND b.variable = s.variable AND b.suspect_at IS NOT NULL
+/** A layer is trusted unless somebody marked it suspect or a newer file replaced it, or one that it is worked out from. */
+const isTrusted = `l.suspect_at IS NULL AND l.replaced_by IS NULL AND NOT EXISTS (
+  SELECT 1 FROM layer_sources s JOIN layers b ON b.file_id = s.file_id AND b.step = s.step AND b.variable = s.variable
+    AND (b.suspect_at IS NOT NULL OR b.replaced_by IS NOT NULL)
   WHERE s.layer_id = l.id)`
 
 function placedLayer({ formula, formulaVersion, bands, hiddenFlags, storedLog10, ...layer }: Row): PlacedLayer {

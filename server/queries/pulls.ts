@@ -21,6 +21,8 @@ export interface PulledAddress {
   etag: string | null
   lastModified: string | null
   checksum: string
+  /** The file it gave; null when that has been deleted, or was there before. */
+  fileId: number | null
 }
 
 const pullColumns = `p.feed_id AS feedId, p.address, p.every_hours AS everyHours, p.at_minute AS atMinute, p.look_back_days AS lookBackDays,
@@ -106,7 +108,7 @@ export async function pullIsQueued(db: Database, feedId: number): Promise<boolea
 
 export async function pulledAddress(db: Database, feedId: number, address: string): Promise<PulledAddress | null> {
   const row = await db.first<PulledAddress>(
-    'SELECT etag, last_modified AS lastModified, checksum FROM pulled_addresses WHERE feed_id = $feedId AND address = $address',
+    'SELECT etag, last_modified AS lastModified, checksum, file_id AS fileId FROM pulled_addresses WHERE feed_id = $feedId AND address = $address',
     { feedId, address },
   )
   return row ?? null
@@ -115,7 +117,7 @@ export async function pulledAddress(db: Database, feedId: number, address: strin
 export async function keepPulledAddress(
   db: Database,
   tx: Transaction,
-  row: PulledAddress & { feedId: number; address: string; fileId: number | null; askedAt: number },
+  row: PulledAddress & { feedId: number; address: string; askedAt: number },
 ): Promise<void> {
   await db.run(
     `INSERT INTO pulled_addresses (feed_id, address, etag, last_modified, checksum, file_id, asked_at)
@@ -125,6 +127,15 @@ export async function keepPulledAddress(
     { ...row },
     tx,
   )
+}
+
+/** Whether another address of the feed gave these bytes last: then they are of that one too, and no correction touches them. */
+export async function givenElsewhere(db: Database, feedId: number, address: string, checksum: string): Promise<boolean> {
+  const row = await db.first<{ count: number }>(
+    'SELECT count(*) AS count FROM pulled_addresses WHERE feed_id = $feedId AND address <> $address AND checksum = $checksum',
+    { feedId, address, checksum },
+  )
+  return (row?.count ?? 0) > 0
 }
 
 /** Whether the feed has these bytes already, in a file that is neither waiting nor refused. */

@@ -1,7 +1,9 @@
+import { basename } from 'node:path'
 import type { GridWindow } from '../../shared/science/grid'
 import { formulaOf } from '../../shared/science/optics/formulas'
 import { cellsWith, type FlagMeaning } from '../grids/flags'
 import type { GridSource, GridVariable } from '../grids/grid-source'
+import { LayerRefused } from '../grids/layer-refused'
 import { unitFactor } from '../grids/unit-factor'
 import { forgetSource, sourceOf } from './open-sources'
 import type { LayerPlace, StoredValues, ValueReading } from './tasks'
@@ -35,8 +37,8 @@ async function derivedValues({ formula: name, formulaVersion, bands }: NonNullab
 }
 
 async function storedValues(layer: StoredValues, reading: ValueReading, window: GridWindow): Promise<MaskedValues> {
-  const source = await sourceOf(layer.path, layer.fileName)
   try {
+    const source = await sourceOf(layer.path, layer.fileName)
     const variable = source.variables.find((one) => one.name === layer.variable)
     const values = await source.readWindow(layer.variable, layer.step, window)
     if (!variable) return { values, hidden: new Map() }
@@ -46,7 +48,8 @@ async function storedValues(layer: StoredValues, reading: ValueReading, window: 
     return { values, hidden }
   } catch (error) {
     await forgetSource(layer.path)
-    throw error
+    // A view is read from several files: the refusal says which of them it is about.
+    throw error instanceof LayerRefused ? new LayerRefused(error.code, error.message, { ...error.facts, checksum: basename(layer.path) }, { cause: error.cause }) : error
   }
 }
 

@@ -1,7 +1,7 @@
 import { summarise } from '../../shared/science/figures'
 import type { GridWindow } from '../../shared/science/grid'
 import { packHistogram } from '../../shared/science/histogram'
-import { mergeLayers } from '../../shared/science/merge-views'
+import { mergeLayers, type LayerValues } from '../../shared/science/merge-views'
 import { windowOf } from '../../shared/science/cell-shares'
 import { maskedAreas } from './masked-areas'
 import { readMasked, type MaskedValues } from './read-masked'
@@ -15,9 +15,7 @@ interface Reading extends MaskedValues {
 }
 
 /** One layer's cells of a region, and what was hidden of them. */
-interface RegionLayer extends MaskedValues {
-  processingVersion: string
-}
+interface RegionLayer extends MaskedValues, Omit<LayerValues, 'values'> {}
 
 /**
  * Figures of many views. Each layer is read once, over the window of all regions that need it; views are merged cell by
@@ -35,7 +33,8 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
     for (const view of users[at]!) {
       const task = input.views[view]!
       const collected = cellsOfView.get(view) ?? []
-      collected.push({ ...ofRegion(reading, input.weights[task.weights]!), processingVersion: layer.processingVersion })
+      const { processingVersion, observedAt, endsAt, producedAt } = layer
+      collected.push({ ...ofRegion(reading, input.weights[task.weights]!), processingVersion, observedAt, endsAt, producedAt })
       cellsOfView.set(view, collected)
       if (collected.length < task.layers.length) continue
       figures[view] = figuresOf(collected, input.weights[task.weights]!, input.scale)

@@ -25,6 +25,10 @@ export interface ValueReading {
 /** Where a layer's values are; with a recipe they are worked out from its bands instead. */
 export interface LayerPlace extends StoredValues {
   processingVersion: string
+  /** Which instant it shows and when it was made, for merging: of two of one instant the last made wins. */
+  observedAt: number
+  endsAt: number | null
+  producedAt: number | null
   reading: ValueReading
   recipe?: { formula: string; formulaVersion: string; bands: (StoredValues & { wavelengthNm: number })[] }
 }

@@ -50,6 +50,8 @@ export const fileReport = z.object({
   format: z.string(),
   variables: z.array(reportVariable),
   warnings: z.array(z.string()),
+  /** When the file says it was made. */
+  producedAt: instant.nullable().optional(),
   /** Which feed took which variable, and in how many layers. */
   feeds: z.array(z.object({ feedId: id, variable: z.string(), layers: z.number() })).default([]),
 })
@@ -83,7 +85,10 @@ export type FileItem = z.infer<typeof fileItem>
 export const file = fileItem.extend({
   report: fileReport.nullable(),
   proposal: feedProposal.nullable(),
-  layers: z.array(z.object({ id, feedId: id, observedAt: instant })),
+  layers: z.array(z.object({ id, feedId: id, observedAt: instant, replaced: z.boolean().optional() })),
+  /** The older file whose place this one took; and the newer ones that took the place of this one's layers, when, and of how many. */
+  replaces: z.object({ id, name: z.string() }).nullable().optional(),
+  replacedBy: z.array(z.object({ id, name: z.string(), at: instant, layers: z.number().int() })).optional(),
   /** The figures this file gave, newest first: one row a region, feed and day (at most 200). */
   summaries: z.array(
     z.object({

@@ -4,6 +4,10 @@ export interface LayerValues {
   /** One value a cell, NaN missing; every layer of a view is on one grid. */
   values: Float64Array
   processingVersion: string
+  /** Start and end of what the layer shows, and when it was made; epoch milliseconds, null where not said. */
+  observedAt?: number | null
+  endsAt?: number | null
+  producedAt?: number | null
 }
 
 /** Natural order of processing versions: numbers inside them compare as numbers, so 9 comes before 10. */
@@ -28,8 +32,17 @@ function together(values: number[], scale: Scale): number {
 }
 
 /**
- * Merges the layers of one view cell by cell: the latest processing version that saw the cell wins; several layers of
- * that version give the mean of log10 ('log10': chlorophyll and its like) or the mean ('linear'). NaN and infinities
+ * Whether one layer corrects another: same start and end, both say when they were made, and it was made later. Where
+ * either does not say, nobody knows which corrects which.
+ */
+function corrects(later: LayerValues, earlier: LayerValues): boolean {
+  if (later.producedAt == null || earlier.producedAt == null || later.observedAt == null) return false
+  return later.producedAt > earlier.producedAt && later.observedAt === earlier.observedAt && (later.endsAt ?? null) === (earlier.endsAt ?? null)
+}
+
+/**
+ * Merges the layers of one view cell by cell: the latest processing version that saw the cell wins; of layers of one
+ * instant in that version the one made last; several layers left give the mean of log10 ('log10': chlorophyll and its like) or the mean ('linear'). NaN and infinities
  * are missing; a cell nobody saw is NaN. The order of layers does not matter beyond rounding.
  * RangeError for no layers or layers of different lengths.
  */
@@ -40,15 +53,18 @@ export function mergeLayers(layers: readonly LayerValues[], scale: Scale): Float
   if (layers.some((layer) => layer.values.length !== first.values.length)) {
     throw new RangeError('Layers of one view have the same cells.')
   }
+  const correctedBy = new Map(latestFirst.map((layer) => [layer, latestFirst.filter((other) => corrects(other, layer))]))
+  const someCorrected = [...correctedBy.values()].some((others) => others.length > 0)
   return Float64Array.from(first.values, (_, cell) => {
-    const seen: number[] = []
+    const seen: LayerValues[] = []
     let version: string | null = null
-    for (const { values, processingVersion } of latestFirst) {
-      if (version !== null && compareVersions(version, processingVersion) !== 0) break
-      if (!Number.isFinite(values[cell])) continue
-      version = processingVersion
-      seen.push(values[cell]!)
+    for (const layer of latestFirst) {
+      if (version !== null && compareVersions(version, layer.processingVersion) !== 0) break
+      if (!Number.isFinite(layer.values[cell])) continue
+      version = layer.processingVersion
+      seen.push(layer)
     }
-    return seen.length === 0 ? NaN : together(seen, scale)
+    const counted = someCorrected ? seen.filter((layer) => !correctedBy.get(layer)!.some((other) => seen.includes(other))) : seen
+    return counted.length === 0 ? NaN : together(counted.map((layer) => layer.values[cell]!), scale)
   })
 }

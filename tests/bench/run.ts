@@ -23,7 +23,7 @@ try {
   const weights: RegionCellWeights[] = []
   for (const region of regions) weights.push({ columns: grid.columns, ...(await workers.heavy('weighCells', { geometry: region.geometry, grid: grid.definition })) })
   const reading = { hiddenFlags: [], storedLog10: false, fileUnit: null, unit: 'mg m-3' }
-  const layers = file.days.map((_, step) => ({ path, fileName: file.name, variable: 'chlor_a', step, processingVersion: '1', reading }))
+  const layers = file.days.map((_, step) => ({ path, fileName: file.name, variable: 'chlor_a', step, processingVersion: '1', observedAt: step, endsAt: null, producedAt: null, reading }))
   const views = layers.flatMap((_, layer) => weights.map((_, region) => ({ layers: [layer], weights: region })))
   const input = { layers, weights, views, scale: 'log10' as const, validMin: null, validMax: null }
   await workers.heavy('summariseViews', { ...input, layers: layers.slice(0, 20), views: views.filter((view) => view.layers[0]! < 20) })

@@ -37,7 +37,7 @@ export interface SeaStep {
 }
 
 /** A chlorophyll file of the sea; its path lies in a folder that `cleanSea` removes. */
-export async function seaFile(steps: readonly SeaStep[], { name = 'sea.nc', processingVersion = 'R1' } = {}): Promise<string> {
+export async function seaFile(steps: readonly SeaStep[], { name = 'sea.nc', processingVersion = 'R1', madeAt }: { name?: string; processingVersion?: string; madeAt?: string } = {}): Promise<string> {
   const folder = await seaFolder()
   const data = new Float64Array(steps.length * sea.cells)
   for (const [s, step] of steps.entries()) {
@@ -53,7 +53,7 @@ export async function seaFile(steps: readonly SeaStep[], { name = 'sea.nc', proc
     longitudes: sea.longitudes,
     times: steps.map((step) => Date.parse(step.at)),
     variables: [{ name: 'chlor_a', dtype: 'f4', data, attributes }],
-    globalAttributes: { processing_version: processingVersion },
+    globalAttributes: { processing_version: processingVersion, ...(madeAt ? { date_created: madeAt } : {}) },
     deflate: 1,
   })
   return path

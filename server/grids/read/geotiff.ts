@@ -45,7 +45,8 @@ export async function openGeotiff(path: string, fileName: string, fileSize: numb
     return {
       format: 'geotiff',
       variables: bands.map(({ variable }) => variable),
-      globalAttributes: dataset,
+      // Under the name that other formats say it by, unless the producer's own metadata says it.
+      globalAttributes: { ...dateMade(directory), ...dataset },
       warnings,
       readWindow: async (name, step, window) => readWindow(raster, valid, bands, name, step, window),
       readFlags: async (name) => {
@@ -57,6 +58,11 @@ export async function openGeotiff(path: string, fileName: string, fileSize: numb
     closeSync(descriptor)
     throw error
   }
+}
+
+function dateMade(directory: TiffDirectory): { date_created?: string } {
+  const made = directory.get(tags.dateTime)
+  return typeof made === 'string' && made.trim() !== '' ? { date_created: made.trim() } : {}
 }
 
 const kindOf = (directory: TiffDirectory) =>

@@ -8,7 +8,7 @@ export const tags = {
   subfileType: 254, width: 256, height: 257, bits: 258, compression: 259, photometric: 262, stripOffsets: 273,
   samples: 277, rowsPerStrip: 278, stripBytes: 279, planar: 284, tileWidth: 322, tileHeight: 323, tileOffsets: 324,
   tileBytes: 325, extraSamples: 338, sampleFormat: 339, pixelScale: 33550, tiepoint: 33922, transformation: 34264,
-  geoKeys: 34735, geoDoubles: 34736, geoText: 34737, metadata: 42112, noData: 42113, fillOrder: 266, predictor: 317,
+  geoKeys: 34735, geoDoubles: 34736, geoText: 34737, metadata: 42112, noData: 42113, fillOrder: 266, dateTime: 306, predictor: 317,
 } as const
 
 const typeWidths: Record<number, number> = {

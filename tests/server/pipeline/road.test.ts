@@ -1,12 +1,14 @@
-import { writeFile } from 'node:fs/promises'
+import { readFile, writeFile } from 'node:fs/promises'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import type { Person } from '../../../server/accounts/person'
 import { regionSeries } from '../../../server/desk/region-series'
 import { deleteFile } from '../../../server/pipeline/delete-file'
 import { createFeed } from '../../../server/pipeline/feeds'
 import { markSuspect } from '../../../server/pipeline/mark-suspect'
+import { storedPath } from '../../../server/pipeline/stored-files'
+import { forgetSource } from '../../../server/workers/open-sources'
 import { feedFields, newFeed } from '../../../shared/schemas/feeds'
-import { aFeed, aPerson, aRegion, cleanSea, runJobs, seaFile, send } from '../../support/sea'
+import { aFeed, aPerson, aRegion, cleanSea, runJobs, seaFile, send, type SeaStep } from '../../support/sea'
 import { createTestContext, type TestContext } from '../../support/test-context'
 
 let context: TestContext
@@ -143,6 +145,66 @@ describe('the road of a layer', () => {
     await send(context, await seaFile([day('2026-06-10', 1)], { processingVersion: 'R9' }))
     await runJobs(context)
     expect((await medians(region.id, feed.id)).median).toEqual([5])
+  })
+
+  it('lets the file made last win where two show the same instant, in whatever order they arrive', async () => {
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person)
+    const made = (value: SeaStep['value'], madeAt: string) => seaFile([day('2026-06-10', value)], { madeAt })
+    const paths = [await made(5, '2026-06-10T20:00:00Z'), await made((row) => (row < 4 ? 3 : NaN), '2026-06-11T09:00:00Z'), await made(100, '2026-06-10T18:00:00Z')]
+    for (const order of [[0, 1, 2], [2, 1, 0], [1, 2, 0]]) {
+      for (const i of order) {
+        await send(context, paths[i]!)
+        await runJobs(context)
+      }
+      const { columns } = await regionSeries(context, region.id, { feedId: feed.id })
+      // Where the last made sees nothing, the one before it serves.
+      expect(columns).toMatchObject({ day: ['2026-06-10'], valid: [16], max: [5], p10: [3] })
+      for (const file of await context.models.files.findAll()) await deleteFile(context, person, file.id)
+      await runJobs(context)
+      expect(await context.models.layers.count()).toBe(0)
+    }
+  })
+
+  it('takes out what a file gave before it turned out damaged, so that no other file is refused for it', async () => {
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person)
+    const path = await seaFile([day('2026-06-09', 3), day('2026-06-10', (row, column) => 1 + ((row * 7 + column * 3) % 10) / 10)])
+    const bytes = await readFile(path)
+    // The second step's chunk is the last zlib stream of the values.
+    const starts = [...bytes.keys()].filter((at) => bytes[at] === 0x78 && bytes[at + 1] === 0x01)
+    bytes.fill(0xa5, starts.at(-1)! + 4, starts.at(-1)! + 30)
+    const hurt = path.replace('sea.nc', 'hurt.nc')
+    await writeFile(hurt, bytes)
+    const refused = await send(context, hurt)
+    await runJobs(context)
+    await refused.reload()
+    expect(refused).toMatchObject({ status: 'refused', refusal: { code: 'damaged', message: 'The file is damaged: chlor_a cannot be read back whole.' } })
+    expect(await context.models.layers.count()).toBe(0)
+    const good = await send(context, await seaFile([day('2026-06-10', 2)]))
+    await runJobs(context)
+    await good.reload()
+    expect(good.status).toBe('processed')
+    expect(await medians(region.id, feed.id)).toMatchObject({ day: ['2026-06-10'], median: [2] })
+  })
+
+  it('refuses a stored file whose bytes went bad since, and not the one that shares its day', async () => {
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person)
+    const rotten = await send(context, await seaFile([day('2026-06-10', (row, column) => 1 + ((row * 7 + column * 3) % 10) / 10, '11:00')]))
+    await runJobs(context)
+    const stored = storedPath(context.env, rotten.checksum)
+    await forgetSource(stored)
+    await writeFile(stored, (await readFile(stored)).subarray(0, 2000))
+    const good = await send(context, await seaFile([day('2026-06-10', 2, '12:30')]))
+    await runJobs(context)
+    await rotten.reload()
+    expect(rotten.status).toBe('refused')
+    context.clock.pass(5_000)
+    await runJobs(context)
+    await good.reload()
+    expect(good.status).toBe('processed')
+    expect(await medians(region.id, feed.id)).toMatchObject({ day: ['2026-06-10'], median: [2] })
   })
 
   it('reads the history of a newly drawn region', async () => {

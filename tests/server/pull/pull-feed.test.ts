@@ -14,7 +14,9 @@ import { keepPull, pullNow } from '../../../server/pull/keep-pull'
 import { networkOf, useNetwork } from '../../../server/pull/network'
 import { presentPull } from '../../../server/pull/present-pull'
 import { queueDuePulls } from '../../../server/pull/queue-pulls'
+import { deleteFile } from '../../../server/pipeline/delete-file'
 import { changeFeed } from '../../../server/pipeline/feeds'
+import { presentFile } from '../../../server/pipeline/present-file'
 import { pullSettings } from '../../../shared/schemas/pulls'
 import { aUser, bearer } from '../../support/people'
 import { startProvider, type Provider } from '../../support/provider'
@@ -98,6 +100,67 @@ describe('a feed that fetches for itself', () => {
     await runJobs(context)
     expect((await regionSeries(context, region.id, { feedId: feed.id })).columns.median).toEqual([1])
     expect(await names()).toEqual(['chl-20260610.nc', 'chl-20260610.nc'])
+  })
+
+  it('lets new bytes under a dated name replace the old file wholly, whatever they say of themselves, and remembers it', async () => {
+    const region = await aRegion(context, person)
+    await letPull()
+    provider.put(pathOf('10'), await dayFile('10', 100))
+    await pull()
+    await runJobs(context)
+    // The correction blanks most of the day, and holds another day no more.
+    provider.put(pathOf('10'), await readFile(await seaFile([{ at: '2026-06-10T12:00:00Z', value: (row) => (row < 4 ? 1 : NaN) }])))
+    await pull()
+    await runJobs(context)
+    const { columns } = await regionSeries(context, region.id, { feedId: feed.id })
+    expect(columns).toMatchObject({ day: ['2026-06-10'], max: [1], valid: [8] })
+    const [older, newer] = await context.models.files.findAll({ order: [['id', 'ASC']] })
+    const shown = await presentFile(context, older!)
+    expect(shown.layers).toMatchObject([{ feedId: feed.id, replaced: true }])
+    expect(shown.replacedBy).toEqual([{ id: newer!.id, name: 'chl-20260610.nc', at: expect.stringMatching(/^2026-06-11T15/), layers: 1 }])
+    expect((await presentFile(context, newer!)).replaces).toEqual({ id: older!.id, name: 'chl-20260610.nc' })
+    // Without the correction the older file is what there is.
+    await deleteFile(context, person, newer!.id)
+    await runJobs(context)
+    expect((await regionSeries(context, region.id, { feedId: feed.id })).columns).toMatchObject({ max: [100], valid: [16] })
+    expect((await presentFile(context, older!)).replacedBy).toEqual([])
+  })
+
+  it('keeps the old file where its correction cannot be read, and takes old bytes back where an address returns to them', async () => {
+    const region = await aRegion(context, person)
+    const median = async () => (await regionSeries(context, region.id, { feedId: feed.id })).columns.median
+    await letPull()
+    const [first, second] = [await dayFile('10', 5), await dayFile('10', 2)]
+    for (const [bytes, wanted] of [[first, 5], [second, 2], [first, 5], [second.subarray(0, 3000), 5], [second, 2]] as const) {
+      provider.put(pathOf('10'), bytes)
+      await pull()
+      await runJobs(context)
+      expect(await median()).toEqual([wanted])
+    }
+    expect(await context.models.layers.count()).toBe(2)
+  })
+
+  it('replaces nothing but the instants both hold where the name does not say its day', async () => {
+    const region = await aRegion(context, person)
+    await letPull({ address: `${provider.url}/latest.nc` })
+    const days = (...values: [string, number][]) => seaFile(values.map(([day, value]) => ({ at: `2026-06-${day}T12:00:00Z`, value })))
+    provider.put('/latest.nc', await readFile(await days(['08', 8], ['09', 9])))
+    await pull()
+    await runJobs(context)
+    provider.put('/latest.nc', await readFile(await days(['09', 3], ['10', 4])))
+    await pull()
+    await runJobs(context)
+    expect((await regionSeries(context, region.id, { feedId: feed.id })).columns).toMatchObject({ day: ['2026-06-08', '2026-06-09', '2026-06-10'], median: [8, 3, 4] })
+  })
+
+  it('takes the time its server says for the time a file was made', async () => {
+    await letPull()
+    const bytes = await dayFile('10', 5)
+    provider.put(pathOf('10'), (response) => void response.writeHead(200, { 'last-modified': 'Thu, 11 Jun 2026 03:04:05 GMT' }).end(bytes))
+    await pull()
+    await runJobs(context)
+    const layer = await context.models.layers.findOne({ rejectOnEmpty: true })
+    expect(new Date(layer.producedAt!).toISOString()).toBe('2026-06-11T03:04:05.000Z')
   })
 
   it('dates a file without a time by its address', async () => {

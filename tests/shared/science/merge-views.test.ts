@@ -30,6 +30,32 @@ describe('layers of one view', () => {
     expect(mergeLayers(layers, 'linear')).toEqual(Float64Array.of(1.5, -2))
   })
 
+  const made = (producedAt: number | null, values: ReturnType<typeof grid>, endsAt: number | null = null) => ({ ...layer(values), observedAt: 7, endsAt, producedAt })
+
+  it('of one instant and version the later made wins the cell, and the earlier serves what it lacks, in any order', () => {
+    const layers = [made(1, grid`1 1 1 ·`), made(3, grid`9 · · ·`), made(2, grid`4 4 · ·`)]
+    for (const order of [[0, 1, 2], [0, 2, 1], [1, 0, 2], [1, 2, 0], [2, 0, 1], [2, 1, 0]]) {
+      expect(mergeLayers(order.map((i) => layers[i]!), 'log10')).toEqual(grid`9 4 1 ·`.values)
+    }
+  })
+
+  it('takes the mean as before where a layer does not say when it was made, or both say the same', () => {
+    expect(mergeLayers([made(1, grid`1`), made(null, grid`3`)], 'linear')).toEqual(Float64Array.of(2))
+    expect(mergeLayers([made(5, grid`1`), made(5, grid`3`)], 'linear')).toEqual(Float64Array.of(2))
+    // The corrected one is out; the one nobody knows the age of stays.
+    expect(mergeLayers([made(1, grid`100`), made(null, grid`3`), made(2, grid`1`)], 'linear')).toEqual(Float64Array.of(2))
+  })
+
+  it('of two instants, or of periods that end differently, neither corrects the other', () => {
+    expect(mergeLayers([made(1, grid`1`), { ...made(2, grid`3`), observedAt: 8 }], 'linear')).toEqual(Float64Array.of(2))
+    expect(mergeLayers([made(1, grid`1`, 9), made(2, grid`3`, 10)], 'linear')).toEqual(Float64Array.of(2))
+  })
+
+  it('a later version counts before a later making', () => {
+    const layers = [{ ...made(9, grid`1 5`), processingVersion: '1' }, { ...made(2, grid`7 ·`), processingVersion: '2' }]
+    expect(mergeLayers(layers, 'log10')).toEqual(grid`7 5`.values)
+  })
+
   it('no layer, or layers of different grids, are refused', () => {
     expect(() => mergeLayers([], 'log10')).toThrow(RangeError)
     expect(() => mergeLayers([layer(grid`1 2`), layer(grid`1`)], 'log10')).toThrow(RangeError)
