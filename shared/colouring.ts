@@ -4,13 +4,16 @@ import { rampColour, ramps, screenShares, type RampName, type Theme } from './ra
 /** Changes whenever the same value may get another colour: pictures made before are made again. */
 export const colouringVersion = 2
 
-/** How the values of a quantity become colours. Map, legend and quick look all read this. */
-export interface Colouring {
-  ramp: RampName
+export interface Scale {
   /** `screen`: 0 or 1, told by two colours. */
   scale: 'log' | 'linear' | 'screen'
   from: number
   to: number
+}
+
+/** How the values of a quantity become colours. Map, legend and quick look all read this. */
+export interface Colouring extends Scale {
+  ramp: RampName
   /** What the range was taken from. */
   rangeFrom: 'quantity' | 'valid range' | 'layer'
 }
@@ -82,7 +85,7 @@ function rounded(value: number, round: (value: number) => number): number {
 }
 
 /** Where a value stands between the ends of its scale, 0..1; beyond them it stays at the end. NaN for NaN. */
-export function shareOf({ scale, from, to }: Pick<Colouring, 'scale' | 'from' | 'to'>, value: number): number {
+export function shareOf({ scale, from, to }: Scale, value: number): number {
   if (Number.isNaN(value)) return NaN
   if (scale === 'screen') return value > 0.5 ? 1 : 0
   const share = scale === 'log' ? (value > 0 ? Math.log(value / from) / Math.log(to / from) : 0) : (value - from) / (to - from)
@@ -90,7 +93,7 @@ export function shareOf({ scale, from, to }: Pick<Colouring, 'scale' | 'from' | 
 }
 
 /** The value at a share of the way. */
-export function valueAt({ scale, from, to }: Pick<Colouring, 'scale' | 'from' | 'to'>, share: number): number {
+export function valueAt({ scale, from, to }: Scale, share: number): number {
   return scale === 'log' ? from * (to / from) ** share : from + (to - from) * share
 }
 
