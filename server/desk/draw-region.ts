@@ -7,11 +7,11 @@ import type { Context } from '../context'
 import type { Transaction } from '../db'
 import type { RegionRecord } from '../models/region'
 import { queueBackfill } from '../pipeline/backfill-region'
-import { checkedGeometry, type CheckedGeometry } from './checked-geometry'
+import { checkedGeometry, type CheckedOutline } from './checked-geometry'
 
 /** A new region: its outline checked, then kept with its first geometry version, and its history queued. */
 export async function drawRegion(context: Context, person: Person, drawn: z.infer<typeof newRegion>): Promise<RegionRecord> {
-  const checked = checkedGeometry(drawn.geometry)
+  const checked = await checkedGeometry(context, drawn.geometry, drawn.inland)
   const region = await context.db.write(async (tx) => {
     if (drawn.feedId !== undefined) await knownFeed(context, tx, drawn.feedId)
     const { name, timeZone, site, contacts, shoreBufferKm, opticallyComplex } = drawn
@@ -30,8 +30,8 @@ export async function drawRegion(context: Context, person: Person, drawn: z.infe
 
 /** Changes a region; another outline is a new version, whose history is read anew behind it. */
 export async function changeRegion(context: Context, person: Person, id: number, change: z.infer<typeof regionChange>): Promise<RegionRecord> {
-  const { version, geometry, ...fields } = change
-  const checked = geometry === undefined ? null : checkedGeometry(geometry)
+  const { version, geometry, inland, ...fields } = change
+  const checked = geometry === undefined ? null : await checkedGeometry(context, geometry, inland)
   const region = await context.db.write(async (tx) => {
     const record = await liveRegion(context, tx, id)
     if (record.version !== version) throw new ApiError('stale-version', 'Somebody else changed this region meanwhile. Look at it again.', { version: record.version })
@@ -59,7 +59,7 @@ export async function retireRegion(context: Context, person: Person, id: number)
   context.news.tell({ topic: 'regions', id })
 }
 
-async function keepGeometry(context: Context, tx: Transaction, region: RegionRecord, checked: CheckedGeometry, version: number, person: Person): Promise<void> {
+async function keepGeometry(context: Context, tx: Transaction, region: RegionRecord, checked: CheckedOutline, version: number, person: Person): Promise<void> {
   const geometry = await context.models.geometries.create(
     {
       regionId: region.id,

@@ -21,7 +21,8 @@ function edgeBands(): Edge[][] {
   return bands
 }
 
-function landRings(): number[][][] {
+/** Closed rings of the bundled land outline, longitude first; a ring that crosses the 180th meridian jumps there. */
+export function landRings(): number[][][] {
   const topology = landTopology as unknown as Topology<{ land: GeometryCollection }>
   return feature(topology, topology.objects.land).features.flatMap(({ geometry }) => {
     if (geometry.type === 'Polygon') return geometry.coordinates

@@ -3,6 +3,7 @@ import type { Figures } from '../../shared/science/figures'
 import type { Judgement, JudgeInput } from '../../shared/science/judge'
 import type { DemoFile } from '../seeders/demo/files'
 import type { Seen } from './inspect-file'
+import type { OutlineTasks } from './outline-tasks'
 import type { PictureTasks } from './picture-tasks'
 
 /** One variable of a stored file, at one step. */
@@ -58,7 +59,7 @@ export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
 }
 
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */
-export interface Tasks extends PictureTasks {
+export interface Tasks extends PictureTasks, OutlineTasks {
   hashPassword: { input: { password: string; cost?: number }; output: string }
   comparePassword: { input: { password: string; hash: string }; output: boolean }
   inspectFile: { input: { path: string; fileName: string }; output: Seen }

@@ -1,5 +1,6 @@
 import type { RefusalCode } from '../../shared/errors'
 import { LayerRefused } from '../grids/layer-refused'
+import { checkOutline } from './check-outline'
 import { drawTile } from './draw-tile'
 import { inspectFile } from './inspect-file'
 import { judgeRegion } from './judge-region'
@@ -18,6 +19,7 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   comparePassword,
   inspectFile,
   weighCells,
+  checkOutline,
   summariseViews,
   judgeRegion,
   drawTile,

@@ -29,9 +29,13 @@ const regionSettings = {
   opticallyComplex: z.boolean(),
 }
 
+/** A lake or narrow inlet that the bundled coastline does not know: an outline with no water in it is kept. */
+const inland = z.boolean().default(false)
+
 export const newRegion = z.object({
   name: regionSettings.name,
   geometry: z.unknown(),
+  inland: inland,
   timeZone: regionSettings.timeZone.default('UTC'),
   site: regionSettings.site.default(null),
   contacts: regionSettings.contacts.default([]),
@@ -45,6 +49,7 @@ export const regionChange = z.object({
   version,
   name: regionSettings.name.optional(),
   geometry: z.unknown().optional(),
+  inland: inland,
   timeZone: regionSettings.timeZone.optional(),
   site: regionSettings.site.optional(),
   contacts: regionSettings.contacts.optional(),
