@@ -55,6 +55,21 @@ export async function takeJob(context: Context, owner: string, lane: JobLane): P
   })
 }
 
+/** Takes every waiting job of the same kind that is due, to be done along with this one. */
+export async function joinJobs(context: Context, lead: JobRecord): Promise<JobRecord[]> {
+  const due = { kind: lead.kind, now: context.clock.system() }
+  const sql = `SELECT id FROM jobs WHERE state = 'waiting' AND kind = $kind AND (run_after IS NULL OR run_after <= $now) ORDER BY priority, id`
+  if (!(await context.db.first<{ id: number }>(sql, due))) return []
+  return context.db.write(async (tx) => {
+    const joined: JobRecord[] = []
+    for (const { id } of await context.db.all<{ id: number }>(sql, due, tx)) {
+      const job = await context.models.jobs.findByPk(id, { transaction: tx, rejectOnEmpty: true })
+      joined.push(await job.update({ state: 'running', leaseOwner: lead.leaseOwner, leaseUntil: due.now + leaseMs, updatedAt: context.clock.now(), lastError: null }, { transaction: tx }))
+    }
+    return joined
+  })
+}
+
 /** Notes how far a job has come, in the transaction that did the work, and renews its lease. */
 export async function markProgress(context: Context, tx: Transaction, job: JobRecord, done: number, total: number): Promise<void> {
   await job.update({ done, total, leaseUntil: context.clock.system() + leaseMs, updatedAt: context.clock.now() }, { transaction: tx })

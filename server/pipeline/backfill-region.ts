@@ -1,25 +1,24 @@
 import type { Context } from '../context'
 import type { Transaction } from '../db'
 import { giveWay, moreUrgent } from '../jobs/give-way'
-import { enqueueJob, markProgress } from '../jobs/queue'
+import { enqueueJob, joinJobs, markProgress } from '../jobs/queue'
 import type { JobRecord } from '../models/job'
+import type { RegionRecord } from '../models/region'
+import { trustedLayerTimes } from '../queries/layers'
+import { nextViews, type Share } from './backfill-order'
 import { ensureFirstRule } from './first-rule'
 import { queueJudging } from './queue-judging'
 import { boxesMeet } from './summarise-layers'
-import { summariseViews, type ViewKey } from './summarise-views'
+import { keepViews, makeViews, type ViewKey } from './summarise-views'
 import { viewDay } from './view-day'
 
-const viewsAtOnce = 120
+/** Days of a feed read between two marks of progress. */
+const daysAtOnce = 128
 
-interface KnownLayer {
-  feedId: number
-  observedAt: number
-  endsAt: number | null
-  hasClock: number
-  west: number
-  south: number
-  east: number
-  north: number
+/** One region's part in a pass over the history. */
+interface Part extends Share {
+  job: JobRecord
+  region: RegionRecord
 }
 
 export async function queueBackfill(context: Context, tx: Transaction, region: { id: number; name: string; geometryId: number }): Promise<void> {
@@ -33,37 +32,107 @@ export async function queueBackfill(context: Context, tx: Transaction, region: {
 }
 
 /**
- * Reads the history of a newly drawn outline, newest day first, in small committed batches; the mark of progress is
- * how many views are done, so a restart goes on from there.
+ * Reads the history of newly drawn outlines, newest day first, in small committed batches; the mark of progress is how
+ * many views are done, so a restart goes on from there. Regions that wait for the same join in: each layer is read once
+ * for all of them. While one batch is written the next is read.
  */
 export async function backfillRegion(context: Context, job: JobRecord): Promise<'done' | 'paused'> {
-  const geometry = await context.models.geometries.findByPk(Number(job.payload['geometryId']))
-  const region = geometry && (await context.models.regions.findByPk(geometry.regionId))
-  if (!geometry || !region || region.geometryId !== geometry.id || region.retiredAt !== null) return 'done'
-  const keys = await viewsToRead(context, geometry.id, geometry)
-  for (let done = Math.min(job.done, keys.length); done < keys.length; done += viewsAtOnce) {
-    await job.reload()
-    if (job.state !== 'running') return 'paused'
-    const batch = keys.slice(done, done + viewsAtOnce)
-    await summariseViews(context, batch, (tx) => markProgress(context, tx, job, done + batch.length, keys.length))
-    context.news.tell({ topic: 'regions', id: region.id }, { topic: 'jobs', id: job.id })
-    if (await moreUrgent(context, job)) return giveWay(context, job)
+  const own = await partOf(context, job)
+  if (!own) return 'done'
+  const parts = [own]
+  let writing: Promise<unknown> = Promise.resolve()
+  try {
+    while (own.done < own.keys.length) {
+      await joinIn(context, parts)
+      if (!(await stillRunning(parts))) return await leave(context, parts, writing)
+      const views = nextViews(parts, daysAtOnce)
+      const made = await makeViews(context, [...views.values()].flat())
+      await writing
+      for (const [part, keys] of views) part.done += keys.length
+      const marks = [...views.keys()].map((part) => ({ part, done: part.done }))
+      writing = keepViews(context, made, async (tx) => {
+        for (const { part, done } of marks) await markProgress(context, tx, part.job, done, part.keys.length)
+      }).then(() => told(context, parts))
+      writing.catch(() => undefined)
+      await endOthers(context, parts, writing)
+      if (await moreUrgent(context, job)) {
+        await writing
+        for (const part of parts) await giveWay(context, part.job)
+        return 'paused'
+      }
+    }
+    await writing
+  } catch (error) {
+    await leave(context, parts.slice(1), Promise.resolve())
+    throw error
   }
+  await leave(context, parts.slice(1), writing)
+  await judgeNext(context, own.region)
+  return 'done'
+}
+
+/** Those that still run go back to waiting, to be taken up again at once; the paused and cancelled stay as they are. */
+async function leave(context: Context, parts: readonly Part[], writing: Promise<unknown>): Promise<'paused'> {
+  await writing
+  for (const part of parts) {
+    await part.job.reload()
+    if (part.job.state === 'running') await giveWay(context, part.job)
+  }
+  return 'paused'
+}
+
+async function joinIn(context: Context, parts: Part[]): Promise<void> {
+  const [lead] = parts
+  for (const job of await joinJobs(context, lead!.job)) {
+    const part = await partOf(context, job)
+    if (part) parts.push(part)
+    else await context.db.write((tx) => job.update({ state: 'done', leaseOwner: null, leaseUntil: null }, { transaction: tx }))
+  }
+}
+
+/** Drops those that somebody paused or cancelled; false when that is the one this pass was begun for. */
+async function stillRunning(parts: Part[]): Promise<boolean> {
+  for (const part of [...parts]) {
+    await part.job.reload()
+    if (part.job.state !== 'running' && part !== parts[0]) parts.splice(parts.indexOf(part), 1)
+  }
+  return parts[0]!.job.state === 'running'
+}
+
+async function endOthers(context: Context, parts: Part[], writing: Promise<unknown>): Promise<void> {
+  for (const part of parts.slice(1).filter(({ done, keys }) => done >= keys.length)) {
+    await writing
+    await context.db.write((tx) => part.job.update({ state: 'done', leaseOwner: null, leaseUntil: null, updatedAt: context.clock.now() }, { transaction: tx }))
+    await judgeNext(context, part.region)
+    context.news.tell({ topic: 'jobs', id: part.job.id })
+    parts.splice(parts.indexOf(part), 1)
+  }
+}
+
+async function judgeNext(context: Context, region: RegionRecord): Promise<void> {
   await context.db.write(async (tx) => {
     await ensureFirstRule(context, tx, region)
     await queueJudging(context, tx, { regionId: region.id })
   })
   context.news.tell({ topic: 'regions', id: region.id })
-  return 'done'
+}
+
+function told(context: Context, parts: readonly Part[]): void {
+  context.news.tell(...parts.flatMap(({ region, job }) => [{ topic: 'regions' as const, id: region.id }, { topic: 'jobs' as const, id: job.id }]))
+}
+
+/** Null when the outline is no longer the one to read for. */
+async function partOf(context: Context, job: JobRecord): Promise<Part | null> {
+  const geometry = await context.models.geometries.findByPk(Number(job.payload['geometryId']))
+  const region = geometry && (await context.models.regions.findByPk(geometry.regionId))
+  if (!geometry || !region || region.geometryId !== geometry.id || region.retiredAt !== null) return null
+  const keys = await viewsToRead(context, geometry.id, geometry)
+  return { job, region, keys, done: Math.min(job.done, keys.length) }
 }
 
 async function viewsToRead(context: Context, geometryId: number, box: { west: number; south: number; east: number; north: number; centreLongitude: number }): Promise<ViewKey[]> {
-  const layers = await context.db.all<KnownLayer>(
-    `SELECT l.feed_id AS feedId, l.observed_at AS observedAt, l.ends_at AS endsAt, l.has_clock AS hasClock, g.west, g.south, g.east, g.north
-     FROM layers l JOIN grids g ON g.id = l.grid_id WHERE l.suspect_at IS NULL`,
-  )
   const keys = new Map<string, ViewKey>()
-  for (const layer of layers) {
+  for (const layer of await trustedLayerTimes(context)) {
     if (!boxesMeet(box, layer)) continue
     const day = viewDay(layer, box.centreLongitude)
     keys.set(`${layer.feedId}:${day}`, { geometryId, feedId: layer.feedId, day })

@@ -1,5 +1,8 @@
+import { wholeWaterCells } from '../../shared/science/whole-water'
 import type { Context } from '../context'
 import type { RegionCellWeights } from '../workers/tasks'
+
+type GridSize = Pick<RegionCellWeights, 'rows' | 'columns'>
 
 interface Kept {
   cellIndex: Buffer
@@ -8,8 +11,8 @@ interface Kept {
   outlineWater: Buffer
 }
 
-/** The weights of a region's cells on a grid: made once, then kept. `columns` is the grid's. */
-export async function cellWeights(context: Context, geometryId: number, gridId: number, columns: number): Promise<RegionCellWeights> {
+/** The weights of a region's cells on a grid: made once, then kept. */
+export async function cellWeights(context: Context, geometryId: number, gridId: number, { rows, columns }: GridSize): Promise<RegionCellWeights> {
   const kept = await context.db.first<Kept>(
     `SELECT cell_index AS cellIndex, share, area_km2 AS areaKm2, outline_water AS outlineWater FROM cell_weights
      WHERE geometry_id = $geometryId AND grid_id = $gridId`,
@@ -17,6 +20,7 @@ export async function cellWeights(context: Context, geometryId: number, gridId: 
   )
   if (kept) {
     return {
+      rows,
       columns,
       index: new Uint32Array(copyOf(kept.cellIndex)),
       share: new Float64Array(copyOf(kept.share)),
@@ -24,23 +28,32 @@ export async function cellWeights(context: Context, geometryId: number, gridId: 
       water: new Uint8Array(copyOf(kept.outlineWater)),
     }
   }
-  return makeWeights(context, geometryId, gridId, columns)
+  return makeWeights(context, geometryId, gridId, { rows, columns })
 }
 
-async function makeWeights(context: Context, geometryId: number, gridId: number, columns: number): Promise<RegionCellWeights> {
+async function makeWeights(context: Context, geometryId: number, gridId: number, size: GridSize): Promise<RegionCellWeights> {
   const geometry = await context.models.geometries.findByPk(geometryId, { rejectOnEmpty: true })
   const grid = await context.db.first<{ definition: string }>('SELECT definition FROM grids WHERE id = $gridId', { gridId })
-  const weights = await context.workers.heavy('weighCells', { geometry: geometry.geometry, grid: grid!.definition })
+  const weights = await context.workers.heavy('weighCells', { geometry: geometry.geometry, shoreBufferKm: geometry.shoreBufferKm, grid: grid!.definition })
   const { index, share, areaKm2, water } = weights
   await context.db.write((tx) =>
     context.db.run(
-      `INSERT INTO cell_weights (geometry_id, grid_id, cells, cell_index, share, area_km2, outline_water)
-       VALUES ($geometryId, $gridId, $cells, $index, $share, $areaKm2, $water) ON CONFLICT DO NOTHING`,
-      { geometryId, gridId, cells: index.length, index: bytesOf(index), share: bytesOf(share), areaKm2: bytesOf(areaKm2), water: bytesOf(water) },
+      `INSERT INTO cell_weights (geometry_id, grid_id, cells, cell_index, share, area_km2, outline_water, whole_water)
+       VALUES ($geometryId, $gridId, $cells, $index, $share, $areaKm2, $water, $wholeWater) ON CONFLICT DO NOTHING`,
+      {
+        geometryId,
+        gridId,
+        cells: index.length,
+        index: bytesOf(index),
+        share: bytesOf(share),
+        areaKm2: bytesOf(areaKm2),
+        water: bytesOf(water),
+        wholeWater: wholeWaterCells(weights),
+      },
       tx,
     ),
   )
-  return { columns, ...weights }
+  return { ...size, ...weights }
 }
 
 function bytesOf(array: Uint32Array | Float64Array | Uint8Array): Buffer {

@@ -32,7 +32,7 @@ interface Box {
 }
 
 /** Boxes on the globe, in whatever turn their longitudes are written. */
-export function boxesMeet(region: Box, grid: Box | PlacedLayer): boolean {
+export function boxesMeet(region: Box, grid: Box): boolean {
   if (region.north < grid.south || region.south > grid.north) return false
   return [-720, -360, 0, 360, 720].some((turn) => region.west + turn <= grid.east && region.east + turn >= grid.west)
 }

@@ -25,6 +25,13 @@ interface View extends ViewKey {
 
 const dayMs = 86_400_000
 
+/** Figures that are worked out and wait to be written. */
+export interface MadeViews {
+  rows: SummaryRow[]
+  /** Views that have lost all their layers, and go. */
+  empty: ViewKey[]
+}
+
 /**
  * Makes the named views anew from the trusted layers they hold now, and writes their figures in one transaction,
  * together with whatever `alongside` writes. A view that has lost all its layers is removed.
@@ -34,26 +41,33 @@ export async function summariseViews(
   keys: readonly ViewKey[],
   alongside: (tx: Transaction) => Promise<void> = async () => undefined,
 ): Promise<void> {
-  const rows: SummaryRow[] = []
-  const empty: ViewKey[] = []
+  await keepViews(context, await makeViews(context, keys), alongside)
+}
+
+export async function makeViews(context: Context, keys: readonly ViewKey[]): Promise<MadeViews> {
+  const made: MadeViews = { rows: [], empty: [] }
   for (const [feedId, ofFeed] of groupBy(keys, (key) => key.feedId)) {
     const feed = await context.models.feeds.findByPk(feedId, { rejectOnEmpty: true })
     const views = await viewsOf(context, feedId, ofFeed)
-    empty.push(...views.filter((view) => view.layers.length === 0))
-    rows.push(...(await figuresOf(context, feed, views.filter((view) => view.layers.length > 0))))
+    made.empty.push(...views.filter((view) => view.layers.length === 0))
+    made.rows.push(...(await figuresOf(context, feed, views.filter((view) => view.layers.length > 0))))
   }
+  return made
+}
+
+export async function keepViews(context: Context, { rows, empty }: MadeViews, alongside: (tx: Transaction) => Promise<void>): Promise<void> {
   await context.db.write(async (tx) => {
     await writeSummaries(context, tx, rows, empty)
     await alongside(tx)
   })
 }
 
-/** The figures of one view read anew from its stored layers, nothing written; null when no trusted layer is left. */
+/** The figures of one view read anew from its stored files, nothing written; null when no trusted layer is left. */
 export async function freshFigures(context: Context, key: ViewKey): Promise<(ViewFigures & { checksum: string }) | null> {
   const feed = await context.models.feeds.findByPk(key.feedId, { rejectOnEmpty: true })
   const [view] = await viewsOf(context, key.feedId, [key])
   if (!view || view.layers.length === 0) return null
-  const [row] = await figuresOf(context, feed, [view])
+  const [row] = await figuresOf(context, feed, [view], 'the original')
   return row ? { ...row.figures, checksum: view.layers[0]!.checksum } : null
 }
 
@@ -79,7 +93,7 @@ async function viewsOf(context: Context, feedId: number, keys: readonly ViewKey[
   })
 }
 
-async function figuresOf(context: Context, feed: FeedRecord, views: readonly View[]): Promise<SummaryRow[]> {
+async function figuresOf(context: Context, feed: FeedRecord, views: readonly View[], from: 'anywhere' | 'the original' = 'anywhere'): Promise<SummaryRow[]> {
   if (views.length === 0) return []
   const layers = [...new Map(views.flatMap((view) => view.layers).map((layer) => [layer.id, layer])).values()]
   const places = new Map(layers.map((layer, at) => [layer.id, at]))
@@ -90,14 +104,14 @@ async function figuresOf(context: Context, feed: FeedRecord, views: readonly Vie
     const name = `${view.geometryId}:${view.gridId}`
     if (!weightsAt.has(name)) {
       weightsAt.set(name, weights.length)
-      weights.push(await cellWeights(context, view.geometryId, view.gridId, view.layers[0]!.columns))
+      weights.push(await cellWeights(context, view.geometryId, view.gridId, view.layers[0]!))
     }
     tasks.push({ layers: view.layers.map((layer) => places.get(layer.id)!), weights: weightsAt.get(name)! })
   }
   const touched = views.map((view) => weights[weightsAt.get(`${view.geometryId}:${view.gridId}`)!]!.index.length > 0)
   const kept = views.filter((_, i) => touched[i])
   const figures = await context.workers.heavy('summariseViews', {
-    layers: layers.map((layer) => placeOf(context, layer)),
+    layers: layers.map((layer) => placeOf(context, layer, from)),
     weights,
     views: tasks.filter((_, i) => touched[i]),
     scale: feed.scale,

@@ -19,6 +19,7 @@ export interface PlacedLayer {
   south: number
   east: number
   north: number
+  rows: number
   columns: number
   hiddenFlags: string[]
   storedLog10: boolean
@@ -38,7 +39,7 @@ type Row = Omit<PlacedLayer, 'recipe' | 'hiddenFlags' | 'storedLog10'> & { hidde
 
 const placed = `SELECT l.id, l.feed_id AS feedId, l.file_id AS fileId, l.grid_id AS gridId, f.name AS fileName, l.checksum, l.variable, l.step,
   l.observed_at AS observedAt, l.ends_at AS endsAt, l.has_clock AS hasClock, l.processing_version AS processingVersion,
-  l.produced_at AS producedAt, g.west, g.south, g.east, g.north, g.column_count AS columns, fe.formula, fe.formula_version AS formulaVersion,
+  l.produced_at AS producedAt, g.west, g.south, g.east, g.north, g.row_count AS rows, g.column_count AS columns, fe.formula, fe.formula_version AS formulaVersion,
   fe.hidden_flags AS hiddenFlags, fe.stored_log10 AS storedLog10, fe.file_unit AS fileUnit, fe.unit,
   CASE WHEN fe.formula IS NULL THEN NULL ELSE (
     SELECT json_group_array(json_object('checksum', b.checksum, 'fileName', b.name, 'variable', s.variable, 'step', s.step, 'wavelengthNm', s.wavelength_nm))
@@ -74,4 +75,23 @@ export async function trustedLayers(context: Context, feedId: number, from: numb
 export async function layerIdsFromNewest(context: Context, feedId: number): Promise<number[]> {
   const rows = await context.db.all<{ id: number }>('SELECT id FROM layers WHERE feed_id = $feedId ORDER BY observed_at DESC, id DESC', { feedId })
   return rows.map((row) => row.id)
+}
+
+export interface LayerTimes {
+  feedId: number
+  observedAt: number
+  endsAt: number | null
+  hasClock: number
+  west: number
+  south: number
+  east: number
+  north: number
+}
+
+/** When every layer that people trust was observed, and the box of its grid. */
+export async function trustedLayerTimes(context: Context): Promise<LayerTimes[]> {
+  return context.db.all<LayerTimes>(
+    `SELECT l.feed_id AS feedId, l.observed_at AS observedAt, l.ends_at AS endsAt, l.has_clock AS hasClock, g.west, g.south, g.east, g.north
+     FROM layers l JOIN grids g ON g.id = l.grid_id WHERE l.suspect_at IS NULL AND l.replaced_by IS NULL`,
+  )
 }

@@ -1,7 +1,7 @@
 import { colouringOf, colouringOfSpread, shareOf, type ColouredFeed, type Colouring, type Spread } from '../../shared/colouring'
 import { quantileOfSorted } from '../../shared/science/quantile'
 import type { LayerSurvey, PictureTasks } from './picture-tasks'
-import { readMasked } from './read-masked'
+import { readWindow } from './read-window'
 import { withinRange } from './valid-range'
 
 const mostCells = 4_000_000
@@ -15,7 +15,7 @@ export async function surveyLayer({ layer, feed, rows, columns }: PictureTasks['
   const seen: Float64Array[] = []
   let cells = 0
   for (const strip of strips) {
-    const read = withinRange(await readMasked(layer, { ...strip, column: 0, columns }), feed)
+    const read = withinRange(await readWindow(layer, { ...strip, column: 0, columns }), feed)
     for (const [reason, where] of read.hidden) hidden.set(reason, (hidden.get(reason) ?? 0) + counted(where))
     seen.push(read.values.filter((value) => !Number.isNaN(value)))
     cells += read.values.length

@@ -30,12 +30,18 @@ export interface LayerPlace extends StoredValues {
   observedAt: number
   endsAt: number | null
   producedAt: number | null
+  /** Size of its grid. */
+  rows: number
+  columns: number
+  /** Where its decoded tiles are kept; null reads the original. */
+  pack: string | null
   reading: ValueReading
   recipe?: { formula: string; formulaVersion: string; bands: (StoredValues & { wavelengthNm: number })[] }
 }
 
 /** The cells of one region on one grid, as kept by the database. `water` is 1 where the mask says water. */
 export interface RegionCellWeights {
+  rows: number
   columns: number
   index: Uint32Array
   share: Float64Array
@@ -64,8 +70,8 @@ export interface Tasks extends PictureTasks, OutlineTasks {
   comparePassword: { input: { password: string; hash: string }; output: boolean }
   inspectFile: { input: { path: string; fileName: string }; output: Seen }
   weighCells: {
-    input: { geometry: Polygon | MultiPolygon; grid: string }
-    output: Omit<RegionCellWeights, 'columns'>
+    input: { geometry: Polygon | MultiPolygon; shoreBufferKm: number; grid: string }
+    output: Omit<RegionCellWeights, 'rows' | 'columns'>
   }
   summariseViews: {
     input: {

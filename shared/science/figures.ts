@@ -105,6 +105,8 @@ function logFigures({ values, weights, count }: Seen) {
   const histogram = new Float64Array(histogramLength)
   const logs = new Float64Array(count)
   let [total, sum, nonPositive] = [0, 0, 0]
+  // Sums run over what is above the first log, so that equal values have no spread from rounding.
+  let first = NaN
   for (let i = 0; i < count; i++) {
     const log = values[i]! > 0 ? Math.log10(values[i]!) : NaN
     logs[i] = log
@@ -114,11 +116,12 @@ function logFigures({ values, weights, count }: Seen) {
       continue
     }
     histogram[binOfLog10(log)]! += weights[i]!
+    if (Number.isNaN(first)) first = log
     total += weights[i]!
-    sum += weights[i]! * log
+    sum += weights[i]! * (log - first)
   }
   if (!(total > 0)) return { histogram, nonPositive, log: null }
-  const mean = sum / total
+  const mean = first + sum / total
   let squares = 0
   for (let i = 0; i < count; i++) if (!Number.isNaN(logs[i])) squares += weights[i]! * (logs[i]! - mean) ** 2
   return { histogram, nonPositive, log: { mean, sd: Math.sqrt(squares / total) } }

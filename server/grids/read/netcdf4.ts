@@ -1,6 +1,7 @@
 import type { Dataset, File, Group } from 'h5wasm'
 import { guarded, hdf5Library, quietly } from '../hdf5-library'
 import { LayerRefused } from '../layer-refused'
+import { openChunkReader, type ChunkReader } from './hdf5-chunks'
 import { checkHdf5Size } from './hdf5-superblock'
 import { maxChunkBytes, maxVariables } from './limits'
 import { numberType, readAttributes } from './netcdf4-attributes'
@@ -32,14 +33,19 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
       reading(name, () => describe(name, dataset)) ?? [],
     )
     const kept = new StepCache(mostKeptCells)
+    // Addresses count from where the file begins; behind a user block the library reads alone.
+    const chunks = start === 0 ? openChunkReader(path, library.Module, file) : null
     return {
       format: 'netcdf4',
       variables,
       attributes,
       warnings: [],
-      read: (variable, from, count) => readBlock(variable, datasets.get(variable.name)!, kept, from, count),
+      read: (variable, from, count) => readBlock(variable, datasets.get(variable.name)!, { kept, chunks }, from, count),
       readWords: (variable, from, count) => readWords(variable, datasets.get(variable.name)!, from, count),
-      close: () => void file.close(),
+      close: () => {
+        chunks?.close()
+        file.close()
+      },
     }
   } catch (error) {
     file.close()
@@ -85,7 +91,7 @@ function describe(name: string, dataset: Dataset): RawVariable | null {
 function readBlock(
   variable: RawVariable,
   dataset: Dataset,
-  kept: StepCache,
+  { kept, chunks }: { kept: StepCache; chunks: ChunkReader | null },
   start: number[],
   count: number[],
 ): Float64Array {
@@ -93,6 +99,8 @@ function readBlock(
   const total = count.reduce((product, n) => product * n, 1)
   if (total === 0) return new Float64Array(0)
   if (count.length === 0) return Float64Array.of(Number(reading(variable.name, () => dataset.value)))
+  const own = variable.type && chunks?.read(variable.name, variable.type, dataset, start, count)
+  if (own) return own
   const wider = stepsTogether(dataset, start, count, total)
   if (!wider) return readBlocks(variable, dataset, start, count, total)
   const key = `${variable.name}\0${wider.start.join()}\0${wider.count.join()}`

@@ -1,7 +1,8 @@
-import { readFile, writeFile } from 'node:fs/promises'
+import { readFile, rm, writeFile } from 'node:fs/promises'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import type { Person } from '../../../server/accounts/person'
 import { regionSeries } from '../../../server/desk/region-series'
+import { decodedFolder } from '../../../server/pipeline/decoded-layers'
 import { deleteFile } from '../../../server/pipeline/delete-file'
 import { createFeed } from '../../../server/pipeline/feeds'
 import { markSuspect } from '../../../server/pipeline/mark-suspect'
@@ -196,6 +197,7 @@ describe('the road of a layer', () => {
     const stored = storedPath(context.env, rotten.checksum)
     await forgetSource(stored)
     await writeFile(stored, (await readFile(stored)).subarray(0, 2000))
+    await rm(decodedFolder(context.env), { recursive: true })
     const good = await send(context, await seaFile([day('2026-06-10', 2, '12:30')]))
     await runJobs(context)
     await rotten.reload()
