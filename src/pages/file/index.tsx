@@ -17,6 +17,7 @@ import { fileSentence } from './file-sentence'
 import { LayersPart } from './layers-part'
 import { mayDeleteFile } from './may-delete-file'
 import { RefusedPart } from './refused-part'
+import { ReplacedPart } from './replaced-part'
 import { UnderstoodPart } from './understood-part'
 import { formatWords } from './understood-rows'
 
@@ -42,6 +43,7 @@ function FileParts({ file }: { file: OffingFile }) {
       </Statement>
       {file.progress && file.status === 'processing' && <Progress done={file.progress.done} total={file.progress.total} label="Reading" unit="layers" />}
       {file.refusal && <RefusedPart refusal={file.refusal} />}
+      <ReplacedPart file={file} />
       {file.report?.warnings.map((warning) => (
         <Message key={warning}>{warning}</Message>
       ))}
