@@ -5,6 +5,7 @@ type Library = typeof hdf5
 
 let loading: Promise<Library> | null = null
 let loaded: Library | null = null
+let failures = 0
 
 /** The HDF5 library with its compression plugins, loaded once and only when a NetCDF-4 file turns up. */
 export function hdf5Library(): Promise<Library> {
@@ -28,9 +29,17 @@ export function guarded<T>(work: () => T): T {
   loaded.Module.activate_throwing_error_handler()
   try {
     return work()
+  } catch (error) {
+    failures += 1
+    throw error
   } finally {
     loaded.Module.deactivate_throwing_error_handler()
   }
+}
+
+/** How often the library has failed in this thread. Each failure leaves a file descriptor behind that only the thread's end gives back. */
+export function hdf5Failures(): number {
+  return failures
 }
 
 /**

@@ -1,4 +1,5 @@
 import type { RefusalCode } from '../../shared/errors'
+import { hdf5Failures } from '../grids/hdf5-library'
 import { LayerRefused } from '../grids/layer-refused'
 import { checkOutline } from './check-outline'
 import { drawTile } from './draw-tile'
@@ -12,7 +13,8 @@ import { surveyLayer } from './survey-layer'
 import type { Tasks } from './tasks'
 import { weighCells } from './weigh-cells'
 
-export type Outcome<T> = { value: T } | { refused: { code: RefusalCode; message: string; facts: Record<string, unknown> } }
+/** Errors lose their class between threads: a refusal crosses as data. `spent`: this thread should do no further task. */
+export type Outcome<T> = ({ value: T } | { refused: { code: RefusalCode; message: string; facts: Record<string, unknown> } } | { fault: unknown }) & { spent: boolean }
 
 const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Tasks[K]['output']> | Tasks[K]['output'] } = {
   hashPassword,
@@ -28,15 +30,18 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   writeDemoFile: ({ file, directory }) => writeDemoFile(file, directory),
 }
 
-/** One task of a worker thread. Faults other than refusals cross as they are. */
+/** One task of a worker thread. Faults other than refusals are answered as they are, and leave the thread in doubt. */
 export default async function work<K extends keyof Tasks>(call: {
   task: K
   input: Tasks[K]['input']
 }): Promise<Outcome<Tasks[K]['output']>> {
+  const before = hdf5Failures()
+  const spent = () => hdf5Failures() > before
   try {
-    return { value: await handlers[call.task](call.input) }
+    const value = await handlers[call.task](call.input)
+    return { value, spent: spent() }
   } catch (error) {
-    if (!(error instanceof LayerRefused)) throw error
-    return { refused: { code: error.code, message: error.message, facts: error.facts } }
+    if (!(error instanceof LayerRefused)) return { fault: error, spent: true }
+    return { refused: { code: error.code, message: error.message, facts: error.facts }, spent: spent() }
   }
 }

@@ -1,6 +1,6 @@
 import { existsSync } from 'node:fs'
-import { Piscina } from 'piscina'
 import { LayerRefused } from '../grids/layer-refused'
+import { createLane, type Lane, ThreadEnded, TookTooLong } from './lane'
 import type { Tasks } from './tasks'
 import type { Outcome } from './worker'
 
@@ -17,27 +17,53 @@ export interface Workers {
   close(): Promise<void>
 }
 
-/** Starts the pools on the bundled worker (`npm run build:server` makes it). */
-export function startWorkers(bundle: string): Workers {
+/** After these a task is given up and its thread ended. */
+const secondsFor: Partial<Record<keyof Tasks, number>> = { inspectFile: 300, drawTile: 60, readCells: 120, surveyLayer: 120 }
+const secondsForOthers = 900
+
+/** Tasks that read what somebody sent: what ends their thread is the file's doing until shown otherwise. */
+const readsFiles: ReadonlySet<keyof Tasks> = new Set(['inspectFile', 'summariseViews', 'drawTile', 'readCells', 'surveyLayer'])
+
+/** Starts the threads on the bundled worker (`npm run build:server` makes it). */
+export function startWorkers(bundle: string, seconds: Partial<Record<keyof Tasks, number>> = {}): Workers {
   if (!existsSync(bundle)) throw new Error(`The worker has not been built: ${bundle} is missing. Run: npm run build`)
-  const light = new Piscina({ filename: bundle, minThreads: 1, maxThreads: 1, idleTimeout: Infinity })
-  const heavy = new Piscina({ filename: bundle, minThreads: 1, maxThreads: 1, idleTimeout: Infinity })
+  const start = () => createLane<Outcome<unknown>>(bundle, (outcome) => outcome.spent)
+  const [light, heavy] = [start(), start()]
+  const limits = { ...secondsFor, ...seconds }
   return {
-    light: runIn(light),
-    heavy: runIn(heavy),
+    light: runIn(light, limits),
+    heavy: runIn(heavy, limits),
     close: async () => {
-      await Promise.all([light.destroy(), heavy.destroy()])
+      await Promise.all([light.close(), heavy.close()])
     },
   }
 }
 
-function runIn(pool: Piscina): Run {
-  return async (task, input, options = {}) =>
-    outcomeOf(await pool.run({ task, input }, options.signal ? { signal: options.signal } : {}))
+function runIn(lane: Lane<Outcome<unknown>>, limits: Partial<Record<keyof Tasks, number>>): Run {
+  return async <K extends keyof Tasks>(task: K, input: Tasks[K]['input'], options: { signal?: AbortSignal } = {}) => {
+    try {
+      const outcome = await lane.run({ task, input }, { signal: options.signal, seconds: limits[task] ?? secondsForOthers })
+      return outcomeOf(outcome as Outcome<Tasks[K]['output']>)
+    } catch (error) {
+      throw readsFiles.has(task) ? givenUp(task, error) : error
+    }
+  }
+}
+
+function givenUp(task: keyof Tasks, error: unknown): unknown {
+  if (error instanceof TookTooLong) {
+    const { seconds } = error
+    return new LayerRefused('reading-failed', `Reading this file took longer than ${seconds} s, so it was given up.`, { task, seconds }, { cause: error })
+  }
+  if (error instanceof ThreadEnded) {
+    return new LayerRefused('reading-failed', 'Reading this file ended the reader itself, so it was given up.', { task, reason: error.message.slice(0, 300) }, { cause: error })
+  }
+  return error
 }
 
 /** Errors lose their class between threads; a refusal is carried as data and thrown again here. */
 export function outcomeOf<T>(outcome: Outcome<T>): T {
+  if ('fault' in outcome) throw outcome.fault
   if ('refused' in outcome) {
     const { code, message, facts } = outcome.refused
     throw new LayerRefused(code, message, facts)
