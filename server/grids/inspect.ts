@@ -1,13 +1,20 @@
+import type { FoundAttributes, FoundAxis } from '../../shared/schemas/found'
 import { describeGrid, type GridDescription } from './describe-grid'
+import { type FirstStep, lookAtFirstStep } from './first-step'
+import { AttributeKeeper } from './found-attributes'
+import { foundAxes } from './found-axes'
 import type { GridFormat, GridSource, GridVariable } from './grid-source'
 import { producedAt } from './produced-at'
 import { openGridSource } from './read/open'
+import { tellsOfAnother } from './read/quantity'
 
 /** What was understood of a file, safe to keep as JSON. */
 export interface InspectReport {
   format: GridFormat
   variables: InspectedVariable[]
   warnings: string[]
+  /** Of the whole file. */
+  attributes: FoundAttributes
   /** ISO 8601, UTC; null when the file does not say when it was made. */
   producedAt: string | null
 }
@@ -17,7 +24,7 @@ export interface InspectedVariable
     GridVariable,
     | 'name' | 'longName' | 'standardName' | 'unit' | 'fileUnit' | 'conversion' | 'quantity' | 'wavelengthNm'
     | 'validMin' | 'validMax' | 'dimensions'
-  > {
+  >, FirstStep {
   grid: GridDescription
   times: {
     count: number
@@ -29,12 +36,10 @@ export interface InspectedVariable
     /** Steps that stand for a period rather than an instant. */
     composites: number
   }
-  /** Cells looked at in the first step (very large grids are looked at in bands), and those with a value. */
-  cells: number
-  valid: number
-  min: number | null
-  median: number | null
-  max: number | null
+  /** It is the error, bias, uncertainty, count or flags of another variable: no feed is proposed for it. */
+  tellsOfAnother: boolean
+  axes: FoundAxis[]
+  attributes: FoundAttributes
 }
 
 /** Opens a file, says what was understood and closes it. Throws LayerRefused like `openGridSource`. */
@@ -48,20 +53,25 @@ export async function inspectGrid(path: string, fileName: string): Promise<Inspe
 }
 
 export async function inspectSource(source: GridSource): Promise<InspectReport> {
+  const keeper = new AttributeKeeper()
+  const attributes = keeper.keep(source.globalAttributes)
   const variables: InspectedVariable[] = []
-  for (const variable of source.variables) variables.push(await inspectVariable(source, variable))
+  for (const variable of source.variables) variables.push(await inspectVariable(source, variable, keeper))
   const made = producedAt(source.globalAttributes)
-  return { format: source.format, variables, warnings: source.warnings, producedAt: made === null ? null : new Date(made).toISOString() }
+  return { format: source.format, variables, warnings: source.warnings, attributes, producedAt: made === null ? null : new Date(made).toISOString() }
 }
 
-async function inspectVariable(source: GridSource, variable: GridVariable): Promise<InspectedVariable> {
+async function inspectVariable(source: GridSource, variable: GridVariable, keeper: AttributeKeeper): Promise<InspectedVariable> {
   const { name, longName, standardName, unit, fileUnit, conversion, quantity, wavelengthNm } = variable
   const { validMin, validMax, dimensions } = variable
   return {
     name, longName, standardName, unit, fileUnit, conversion, quantity, wavelengthNm, validMin, validMax, dimensions,
     grid: describeGrid(variable.grid),
     times: describeTimes(variable),
-    ...(await firstStep(source, variable)),
+    tellsOfAnother: tellsOfAnother(variable),
+    axes: foundAxes(variable),
+    attributes: keeper.keep(variable.attributes),
+    ...(await lookAtFirstStep(source, variable)),
   }
 }
 
@@ -76,36 +86,4 @@ function describeTimes({ times }: GridVariable): InspectedVariable['times'] {
     from: times[0]?.from ?? 'none',
     composites: times.filter(({ endsAt }) => endsAt !== null).length,
   }
-}
-
-const mostCells = 4_000_000
-const bands = 16
-
-async function firstStep(source: GridSource, variable: GridVariable) {
-  const { rows, columns } = variable.grid
-  const none = { cells: 0, valid: 0, min: null, median: null, max: null }
-  if (variable.times.length === 0) return none
-  const seen: Float64Array[] = []
-  let cells = 0
-  for (const band of bandsOf(rows, columns)) {
-    const values = await source.readWindow(variable.name, 0, { row: band.row, column: 0, rows: band.rows, columns })
-    cells += values.length
-    seen.push(values.filter((value) => !Number.isNaN(value)))
-  }
-  const valid = seen.reduce((sum, { length }) => sum + length, 0)
-  if (valid === 0) return { ...none, cells }
-  const sorted = new Float64Array(valid)
-  let filled = 0
-  for (const values of seen) {
-    sorted.set(values, filled)
-    filled += values.length
-  }
-  sorted.sort()
-  return { cells, valid, min: sorted[0]!, median: sorted[Math.ceil(valid / 2) - 1]!, max: sorted[valid - 1]! }
-}
-
-function bandsOf(rows: number, columns: number): { row: number; rows: number }[] {
-  if (rows * columns <= mostCells) return [{ row: 0, rows }]
-  const height = Math.max(1, Math.floor(mostCells / bands / columns))
-  return Array.from({ length: bands }, (_, i) => ({ row: Math.floor(((rows - height) * i) / (bands - 1)), rows: height }))
 }

@@ -1,5 +1,5 @@
 import type { z } from 'zod'
-import { feedFields, type Feed, type feedChange, type NewFeed } from '../../shared/schemas/feeds'
+import { feedFields, type Feed, type feedChange, type FeedProposal, type NewFeed } from '../../shared/schemas/feeds'
 import { audit } from '../accounts/audit'
 import type { Person } from '../accounts/person'
 import { ApiError } from '../api-error'
@@ -50,19 +50,43 @@ export async function presentFeeds(context: Context, feeds: readonly FeedRecord[
 /** A confirmed feed: the file it was proposed from, and every other waiting one, goes back into the queue at once. */
 export async function createFeed(context: Context, person: Person, { fileId, ...fields }: NewFeed): Promise<FeedRecord> {
   const feed = await context.db.write(async (tx) => {
-    await freeName(context, tx, fields.name)
-    const known = fields.derivedFrom === undefined ? feedFields.parse(fields) : await derivedFields(context, tx, { ...fields, derivedFrom: fields.derivedFrom })
-    checkReading(known)
-    const record = await context.models.feeds.create({ ...known, retired: false, createdAt: context.clock.now() }, { transaction: tx })
-    if (record.derivedFrom !== null && record.derivedFrom !== undefined) await queueFeedBackfill(context, tx, record)
-    if (fileId !== undefined) await requeueNamed(context, tx, fileId)
-    for (const file of await context.models.files.findAll({ where: { status: 'waiting' }, transaction: tx })) await queueFile(context, file, tx)
-    await audit(context, tx, { userId: person.id, action: 'feed:create', subject: `feed ${record.id}`, details: { name: fields.name, fileId: fileId ?? null } })
+    const record = await addFeed(context, tx, person, fields, fileId ?? null)
+    await requeueWaiting(context, tx, fileId)
     return record
   })
   context.news.tell({ topic: 'feeds', id: feed.id }, { topic: 'files' })
   context.wake()
   return feed
+}
+
+/** Feeds confirmed together from one file, all or none; it goes back into the queue once. */
+export async function createFeedsOfFile(context: Context, person: Person, fileId: number, feeds: readonly FeedProposal[]): Promise<FeedRecord[]> {
+  const file = await context.models.files.findByPk(fileId)
+  if (!file) throw new ApiError('not-found', 'There is no such file.')
+  const records = await context.db.write(async (tx) => {
+    const made: FeedRecord[] = []
+    for (const fields of feeds) made.push(await addFeed(context, tx, person, fields, fileId))
+    await requeueWaiting(context, tx, fileId)
+    return made
+  })
+  context.news.tell(...records.map((record) => ({ topic: 'feeds' as const, id: record.id })), { topic: 'files' })
+  context.wake()
+  return records
+}
+
+async function addFeed(context: Context, tx: Transaction, person: Person, fields: Omit<NewFeed, 'fileId'>, fileId: number | null): Promise<FeedRecord> {
+  await freeName(context, tx, fields.name)
+  const known = fields.derivedFrom === undefined ? feedFields.parse(fields) : await derivedFields(context, tx, { ...fields, derivedFrom: fields.derivedFrom })
+  checkReading(known)
+  const record = await context.models.feeds.create({ ...known, retired: false, createdAt: context.clock.now() }, { transaction: tx })
+  if (record.derivedFrom !== null && record.derivedFrom !== undefined) await queueFeedBackfill(context, tx, record)
+  await audit(context, tx, { userId: person.id, action: 'feed:create', subject: `feed ${record.id}`, details: { name: fields.name, fileId } })
+  return record
+}
+
+async function requeueWaiting(context: Context, tx: Transaction, fileId?: number): Promise<void> {
+  if (fileId !== undefined) await requeueNamed(context, tx, fileId)
+  for (const file of await context.models.files.findAll({ where: { status: 'waiting' }, transaction: tx })) await queueFile(context, file, tx)
 }
 
 export async function changeFeed(context: Context, person: Person, id: number, { version, ...change }: z.infer<typeof feedChange>): Promise<FeedRecord> {

@@ -12,9 +12,19 @@ export interface FeedMatch {
   steps: { step: number; time: LayerTime & { observedAt: number } }[]
 }
 
-export type Matching = { matches: FeedMatch[] } | { waitingFor: string }
+/** What a feed would have needed of a file that fits none: a sentence that goes on from the feed's name. */
+export interface Miss {
+  feedId: number
+  feed: string
+  why: string
+}
 
-type Asked = Pick<FileRow, 'name' | 'feedId' | 'observedAt'>
+/** `missed` only where the file fits none of the feeds. */
+export type Matching = { matches: FeedMatch[] } | { waitingFor: string; missed: Miss[] | null }
+
+const mostMissed = 50
+
+type Asked = Pick<FileRow, 'name' | 'feedId' | 'observedAt' | 'origin'>
 
 /** Which feeds a file serves. A file said to belong to a feed serves that one, or is refused with the reason. */
 export function matchFeeds(seen: Seen, feeds: readonly FeedRow[], file: Asked): Matching {
@@ -26,11 +36,14 @@ export function matchFeeds(seen: Seen, feeds: readonly FeedRow[], file: Asked): 
     const variable = variableFor(feed, seen, byPattern.length > 0)
     return variable ? [{ feed, variable }] : []
   })
-  if (pairs.length === 0) return { waitingFor: 'It fits no feed yet. Confirm the proposal, or say which feed it belongs to.' }
+  if (pairs.length === 0) {
+    const missed = active.slice(0, mostMissed).map((feed) => missOf(feed, seen, file, byPattern))
+    return { waitingFor: 'It fits no feed yet. Confirm the proposal, or say which feed it belongs to.', missed }
+  }
   const twice = pairs.find((pair) => pairs.some((other) => other !== pair && other.variable === pair.variable))
   if (twice) {
     const names = pairs.filter((pair) => pair.variable === twice.variable).map((pair) => pair.feed.name)
-    return { waitingFor: `${twice.variable.name} fits more than one feed: ${names.join(', ')}. Say which one it belongs to.` }
+    return { waitingFor: `${twice.variable.name} fits more than one feed: ${names.join(', ')}. Say which one it belongs to.`, missed: null }
   }
   return timed(pairs, file)
 }
@@ -50,6 +63,31 @@ function matchNamed(seen: Seen, feeds: readonly FeedRow[], file: Asked): Matchin
   return timed([{ feed, variable }], file)
 }
 
+function missOf(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly FeedRow[]): Miss {
+  return { feedId: feed.id, feed: feed.name, why: whyMissed(feed, seen, file, byPattern) }
+}
+
+function whyMissed(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly FeedRow[]): string {
+  const { fileNamePattern, unit, variable } = feed
+  if (fileNamePattern !== null && !byPattern.includes(feed)) return `takes files named ${fileNamePattern}; this one is named ${file.name}.`
+  const reads = `reads ${inUnit(variable, unit)}`
+  const found = seen.variables.find((one) => one.name === variable)
+  if (found && variableFor(feed, seen, byPattern.length > 0)) return `${reads}, but the name of this file fits the pattern of another feed.`
+  if (found) return `${reads}; this file has ${inUnit(found.name, found.unit)}.`
+  return `${reads}; this file has ${heldWords(feed, seen)}.`
+}
+
+/** The variables that measure the same, else all that are no error or flags of another. */
+function heldWords(feed: FeedRow, { variables }: Seen): string {
+  const own = variables.filter((one) => !one.tellsOfAnother)
+  const alike = own.filter((one) => one.quantity === feed.quantity)
+  const named = alike.length > 0 ? alike : own.length > 0 ? own : variables
+  const words = named.slice(0, 5).map((one) => inUnit(one.name, one.unit))
+  return named.length > 5 ? `${words.join(', ')} and ${named.length - 5} more` : words.join(', ')
+}
+
+const inUnit = (name: string, unit: string | null): string => (unit === null ? `${name} without a unit` : `${name} in ${unit}`)
+
 /** The variable of a feed; where the name says nothing (a band of a picture) a lone variable of a fitting unit serves. */
 function variableFor(feed: FeedRow, seen: Seen, lone: boolean): SeenVariable | null {
   const sameUnit = (variable: SeenVariable) => variable.unit === feed.unit || variable.unit === null
@@ -64,7 +102,7 @@ function timed(pairs: { feed: FeedRow; variable: SeenVariable }[], file: Asked):
   for (const { feed, variable } of pairs) {
     const steps = variable.times.map((time, step) => ({ step, time: withTime(time, feed, file, variable.times.length) }))
     const known = steps.flatMap(({ step, time }) => (time === null ? [] : [{ step, time }]))
-    if (known.length < steps.length) return { waitingFor: 'It says nowhere when it was observed. Send it again with the time (observedAt), or give its feed a file-name pattern.' }
+    if (known.length < steps.length) return { waitingFor: 'It says nowhere when it was observed. Send it again with the time (observedAt), or give its feed a file-name pattern.', missed: null }
     matches.push({ feed, variable, steps: known })
   }
   return { matches }
@@ -73,7 +111,7 @@ function timed(pairs: { feed: FeedRow; variable: SeenVariable }[], file: Asked):
 function withTime(time: LayerTime, feed: FeedRow, file: Asked, count: number): (LayerTime & { observedAt: number }) | null {
   if (time.observedAt !== null) return { ...time, observedAt: time.observedAt }
   if (count > 1) return null
-  if (file.observedAt !== null) return { ...time, observedAt: file.observedAt, hasClock: file.observedAt % 86_400_000 !== 0, from: 'the form' }
+  if (file.observedAt !== null) return { ...time, observedAt: file.observedAt, hasClock: file.observedAt % 86_400_000 !== 0, from: file.origin === 'pull' ? 'the address' : 'the form' }
   const named = feed.fileNamePattern === null ? null : dateInName(feed.fileNamePattern, file.name)
   return named && { ...time, observedAt: named.instant, hasClock: named.hasClock, from: 'the file name' }
 }

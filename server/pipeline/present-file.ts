@@ -2,6 +2,8 @@ import { dateOf } from '../../shared/science/local-day'
 import type { FileItem, OffingFile, ReportVariable } from '../../shared/schemas/files'
 import type { Context } from '../context'
 import type { FileRecord } from '../models/file'
+import { activeGeometries } from '../queries/geometries'
+import { boxesMeet } from './summarise-layers'
 import { replacersOf } from '../queries/replacements'
 
 const iso = (instant: number | null) => (instant === null ? null : new Date(instant).toISOString())
@@ -61,11 +63,23 @@ export async function presentFile(context: Context, file: FileRecord): Promise<O
     ...item!,
     report: file.report && { ...file.report, variables: await withMasked(context, file) },
     proposal: file.proposal,
+    others: file.proposal === null ? [] : (file.report?.others ?? []),
+    wouldGive: await wouldGive(context, file),
     layers: layers.map((layer) => ({ ...layer, observedAt: iso(layer.observedAt)!, replaced: layer.replaced === 1 })),
     replaces: file.replaces === null ? null : ((await context.models.files.findByPk(file.replaces, { attributes: ['id', 'name'] }))?.get({ plain: true }) ?? null),
     replacedBy: (await replacersOf(context, file.id)).map((newer) => ({ ...newer, at: iso(newer.at)! })),
     summaries: summaries.map((row) => ({ ...row, day: dateOf(row.day) })),
   }
+}
+
+/** The regions that the proposed variable's grid meets, by their boxes as a layer would be. */
+async function wouldGive(context: Context, { proposal, report }: FileRecord): Promise<OffingFile['wouldGive']> {
+  const variable = proposal && report?.variables.find((one) => one.name === proposal.variable)
+  if (!variable) return null
+  const outlines = await activeGeometries(context)
+  const met = outlines.filter((outline) => boxesMeet(outline, variable.grid)).map((outline) => outline.regionId)
+  const regions = await context.models.regions.findAll({ attributes: ['id', 'name'], where: { id: met }, order: [['name', 'ASC']] })
+  return { regions: regions.map(({ id, name }) => ({ id, name })), ofRegions: outlines.length }
 }
 
 /** Which flagged cells are hidden: by the feeds that read the variable, or by the proposal while the file waits for one. */
@@ -75,7 +89,8 @@ async function withMasked(context: Context, file: FileRecord): Promise<ReportVar
   return variables.map((variable) => {
     const own = feeds.filter((one) => one.variable === variable.name).map((one) => one.feedId)
     const byFeeds = records.filter((record) => own.includes(record.id)).flatMap((record) => record.hiddenFlags)
-    const hidden = new Set(file.proposal?.variable === variable.name ? [...byFeeds, ...(file.proposal.hiddenFlags ?? [])] : byFeeds)
+    const proposed = [...(file.proposal ? [file.proposal] : []), ...(file.report?.others ?? [])].filter((one) => file.proposal !== null && one.variable === variable.name)
+    const hidden = new Set([...byFeeds, ...proposed.flatMap((one) => one.hiddenFlags)])
     const masked = (variable.flags ?? []).filter((flag) => hidden.has(flag.meaning)).map(({ meaning, cells }) => ({ reason: meaning, cells }))
     return { ...variable, masked }
   })

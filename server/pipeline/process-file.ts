@@ -8,8 +8,8 @@ import { addLayers, keepGrids } from './add-layers'
 import { deriveFrom, type DerivedShare } from './derive-from'
 import { noteQuality } from './feed-reading'
 import { ensureFirstRule, regionsWithoutRule } from './first-rule'
-import { matchFeeds, type FeedMatch } from './match-feeds'
-import { proposeFeed } from './propose-feed'
+import { matchFeeds, type FeedMatch, type Matching } from './match-feeds'
+import { proposeFeeds } from './propose-feed'
 import { queueJudging } from './queue-judging'
 import { refuseFile } from './refuse-file'
 import { queueAfterReplacement, settleReplacement } from './replace-file'
@@ -30,7 +30,7 @@ export async function processFile(context: Context, job: JobRecord): Promise<'do
     const seen = await context.workers.heavy('inspectFile', { path: storedPath(context.env, file.checksum), fileName: file.name })
     const feeds = await context.models.feeds.findAll({ order: [['id', 'ASC']] })
     const matching = matchFeeds(seen, feeds, file)
-    if ('waitingFor' in matching) await letWait(context, file, seen, matching.waitingFor, feeds.map((feed) => feed.name))
+    if ('waitingFor' in matching) await letWait(context, file, seen, matching, feeds.map((feed) => feed.name))
     else await takeIn(context, job, file, seen, matching.matches)
   } catch (error) {
     // What another file's bytes are refused for is no fault of this one.
@@ -67,7 +67,7 @@ async function takeIn(context: Context, job: JobRecord, file: FileRecord, seen: 
 
 async function finish(context: Context, file: FileRecord, seen: Seen, matches: FeedMatch[], derived: readonly DerivedShare[]): Promise<void> {
   const feeds = [
-    ...matches.map(({ feed, variable, steps }) => ({ feedId: feed.id, variable: variable.name, layers: steps.length })),
+    ...matches.map(({ feed, variable, steps }) => ({ feedId: feed.id, variable: variable.name, layers: steps.length, ...timeSource(variable, steps) })),
     ...derived.map(({ feed, layers }) => ({ feedId: feed.id, variable: feed.variable, layers })),
   ]
   await context.db.write(async (tx) => {
@@ -83,13 +83,30 @@ async function finish(context: Context, file: FileRecord, seen: Seen, matches: F
   context.news.tell({ topic: 'files', id: file.id }, { topic: 'feeds' }, { topic: 'regions' })
 }
 
-async function letWait(context: Context, file: FileRecord, seen: Seen, waitingFor: string, names: string[]): Promise<void> {
+/** Said only where the file itself has no time. */
+function timeSource({ times }: FeedMatch['variable'], steps: FeedMatch['steps']): { timeFrom?: string } {
+  const [first] = steps
+  return first && times[first.step]?.observedAt === null ? { timeFrom: first.time.from } : {}
+}
+
+async function letWait(context: Context, file: FileRecord, seen: Seen, waiting: Extract<Matching, { waitingFor: string }>, names: string[]): Promise<void> {
+  const unknown = file.feedId === null && waiting.missed !== null
+  const proposed = unknown ? proposeFeeds(seen, file.name, names) : null
+  // The quick look before anything is confirmed is drawn on these.
+  const gridIds = await keepGrids(context, seen.grids)
+  const variables = seen.report.variables.map((variable, i) => ({ ...variable, gridId: gridIds[seen.variables[i]!.grid]! }))
   await setStatus(context, file, {
     status: 'waiting',
-    waitingFor,
-    report: { ...seen.report, feeds: [] },
-    proposal: file.feedId === null ? proposeFeed(seen, file.name, names) : null,
+    waitingFor: unknown && !proposed ? nothingToPropose(seen) : waiting.waitingFor,
+    report: { ...seen.report, variables, feeds: [], missed: waiting.missed ?? [], others: proposed?.others ?? [] },
+    proposal: proposed?.proposal ?? null,
   })
+}
+
+function nothingToPropose({ variables }: Seen): string {
+  const own = variables.filter((variable) => !variable.tellsOfAnother)
+  if (own.length === 0) return 'It fits no feed, and none is proposed: it holds only the errors, counts or flags of other variables.'
+  return `It fits no feed, and none is proposed: of ${own.slice(0, 5).map((variable) => variable.name).join(', ')}${own.length > 5 ? ' and more' : ''} Offing cannot tell which to read. Say which feed it belongs to.`
 }
 
 async function setStatus(context: Context, file: FileRecord, change: Parameters<FileRecord['update']>[0]): Promise<void> {

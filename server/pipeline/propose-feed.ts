@@ -3,13 +3,40 @@ import { proposeHiddenFlags } from './propose-flags'
 import type { Seen, SeenVariable } from '../workers/inspect-file'
 
 const dayMs = 86_400_000
+const mostOthers = 59
 
-/** What a feed for this kind of file would be; null when the file holds nothing that a feed could be sure of. */
-export function proposeFeed(seen: Seen, fileName: string, takenNames: readonly string[]): FeedProposal | null {
-  const variable = mainVariable(seen)
-  if (!variable) return null
+/** A feed to confirm, and further ones that the same file could serve. */
+export interface Proposed {
+  proposal: FeedProposal
+  others: FeedProposal[]
+}
+
+/**
+ * What feeds for this kind of file would be: chlorophyll first, else the bands of reflectance together, else the only
+ * quantity there is. Null when the file holds nothing that a feed could be sure of; the error, bias, uncertainty, count or
+ * flags of another variable never are.
+ */
+export function proposeFeeds(seen: Seen, fileName: string, takenNames: readonly string[]): Proposed | null {
+  const [main, ...others] = proposable(seen.variables)
+  if (!main) return null
+  const taken = [...takenNames]
+  const propose = (variable: SeenVariable) => {
+    const proposal = proposalOf(variable, labelOf(variable, main), seen, fileName, taken)
+    taken.push(proposal.name)
+    return proposal
+  }
+  return { proposal: propose(main), others: others.slice(0, mostOthers).map(propose) }
+}
+
+function proposable(all: readonly SeenVariable[]): SeenVariable[] {
+  const variables = all.filter((variable) => !variable.tellsOfAnother)
+  const of = (quantity: SeenVariable['quantity']) => variables.filter((variable) => variable.quantity === quantity)
+  const known = [...of('chlorophyll'), ...of('reflectance')]
+  return known.length > 0 || variables.length > 1 ? known : variables
+}
+
+function proposalOf(variable: SeenVariable, label: string, seen: Seen, fileName: string, takenNames: readonly string[]): FeedProposal {
   const cadence = cadenceOf(variable)
-  const label = variable.quantity === 'chlorophyll' ? 'Chlorophyll' : (variable.longName ?? variable.name)
   return {
     name: unusedName(`${label}, ${cadence}`.slice(0, 90), takenNames),
     quantity: variable.quantity,
@@ -32,10 +59,10 @@ export function proposeFeed(seen: Seen, fileName: string, takenNames: readonly s
   }
 }
 
-function mainVariable(seen: Seen): SeenVariable | null {
-  const chlorophyll = seen.variables.filter((variable) => variable.quantity === 'chlorophyll')
-  const reflectance = seen.variables.filter((variable) => variable.quantity === 'reflectance')
-  return chlorophyll[0] ?? reflectance[0] ?? (seen.variables.length === 1 ? seen.variables[0]! : null)
+function labelOf(variable: SeenVariable, main: SeenVariable): string {
+  const { quantity, wavelengthNm, longName, name } = variable
+  if (quantity === 'chlorophyll') return variable === main ? 'Chlorophyll' : `Chlorophyll ${name}`
+  return quantity === 'reflectance' && wavelengthNm !== null ? `Reflectance ${wavelengthNm} nm` : (longName ?? name)
 }
 
 function cadenceOf(variable: SeenVariable): FeedProposal['cadence'] {

@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto'
 import type { Router } from 'express'
 import { endpoints } from '../../shared/schemas/endpoints'
 import { uploadFields } from '../../shared/schemas/files'
@@ -5,12 +6,16 @@ import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import { arrivedFiles, upload } from '../middleware/upload'
 import { deleteFile } from '../pipeline/delete-file'
+import { createFeedsOfFile, presentFeeds } from '../pipeline/feeds'
+import { filePicture, fileTile, fileTileKey } from '../pipeline/file-picture'
 import { presentFile, presentFiles } from '../pipeline/present-file'
 import { receiveFile } from '../pipeline/receive-file'
 import { dropFile } from '../pipeline/stored-files'
+import { emptyTile } from '../pictures/empty-tile'
 import { rowsBefore } from '../queries/rows-after'
 import { cursorId, fromNewest, pageOf } from './paging'
 import { serve } from './serve'
+import { tilePlace } from './tile-place'
 
 export function fileRoutes(router: Router, context: Context): void {
   serve(
@@ -49,6 +54,22 @@ export function fileRoutes(router: Router, context: Context): void {
     const file = await context.models.files.findByPk(params.id)
     if (!file) throw new ApiError('not-found', 'There is no such file.')
     return presentFile(context, file)
+  })
+  serve(router, context, endpoints.confirmFeeds, async ({ person, params, body }) => ({
+    items: await presentFeeds(context, await createFeedsOfFile(context, person, params.id, body.feeds)),
+    nextCursor: null,
+  }))
+  serve(router, context, endpoints.fileTile, async ({ params, query: { theme, variable, hidden }, req, res }) => {
+    const tile = { ...tilePlace(params), theme }
+    const picture = await filePicture(context, params.id, { variable, hidden })
+    const tag = `"${createHash('sha1').update(fileTileKey(picture, tile)).digest('base64url')}"`
+    res.set({ ETag: tag, 'Cache-Control': 'private, max-age=60' })
+    if (req.get('If-None-Match') === tag) {
+      res.status(304).end()
+      return
+    }
+    const drawn = await fileTile(context, picture, tile)
+    res.type('png').end(drawn === null ? emptyTile : Buffer.from(drawn))
   })
   serve(router, context, endpoints.deleteFile, ({ person, params }) => deleteFile(context, person, params.id))
 }

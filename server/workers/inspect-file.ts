@@ -2,7 +2,6 @@ import { inspectSource, type InspectReport } from '../grids/inspect'
 import { describeGrid } from '../grids/describe-grid'
 import { encodeGrid, gridFingerprint } from '../grids/grid-text'
 import type { GridVariable, LayerTime } from '../grids/grid-source'
-import { flagsSeen, type FlagsSeen } from './flags-seen'
 import { forgetSource, sourceOf } from './open-sources'
 import type { Tasks } from './tasks'
 
@@ -25,6 +24,8 @@ export interface SeenVariable {
   quantity: GridVariable['quantity']
   unit: string | null
   wavelengthNm: number | null
+  /** It is the error, bias, uncertainty, count or flags of another variable. */
+  tellsOfAnother: boolean
   /** Position in `grids`. */
   grid: number
   times: LayerTime[]
@@ -32,13 +33,9 @@ export interface SeenVariable {
   gapFilled: 'marked' | 'unmarked' | null
 }
 
-export interface FlaggedReport extends Omit<InspectReport, 'variables'> {
-  variables: (InspectReport['variables'][number] & FlagsSeen)[]
-}
-
 /** What a file holds, as far as feeds and layers need it, with the report for people. */
 export interface Seen {
-  report: FlaggedReport
+  report: InspectReport
   grids: SeenGrid[]
   variables: SeenVariable[]
   processingVersion: string | null
@@ -48,10 +45,7 @@ export interface Seen {
 export async function inspectFile({ path, fileName }: Tasks['inspectFile']['input']): Promise<Seen> {
   const source = await sourceOf(path, fileName)
   try {
-    const inspected = await inspectSource(source)
-    const seen: FlagsSeen[] = []
-    for (const variable of source.variables) seen.push(await flagsSeen(source, variable))
-    const report = { ...inspected, variables: inspected.variables.map((variable, i) => ({ ...variable, ...seen[i]! })) }
+    const report = await inspectSource(source)
     const grids: SeenGrid[] = []
     const variables = source.variables.map((variable, i) => {
       const fingerprint = gridFingerprint(variable.grid)
@@ -62,8 +56,8 @@ export async function inspectFile({ path, fileName }: Tasks['inspectFile']['inpu
         grids.push({ fingerprint, definition: encodeGrid(variable.grid), kind, rows, columns, west, south, east, north })
       }
       const { name, longName, quantity, unit, wavelengthNm, times } = variable
-      const { flags, gapFilled } = seen[i]!
-      return { name, longName, quantity, unit, wavelengthNm, grid, times, flagMeanings: nameable(flags), gapFilled }
+      const { flags, gapFilled, tellsOfAnother } = report.variables[i]!
+      return { name, longName, quantity, unit, wavelengthNm, tellsOfAnother, grid, times, flagMeanings: nameable(flags), gapFilled }
     })
     const attribute = (name: string) => {
       const value = source.globalAttributes[name]
@@ -77,6 +71,6 @@ export async function inspectFile({ path, fileName }: Tasks['inspectFile']['inpu
 }
 
 /** Meanings a feed can be set by: as many, and as long, as its schema takes. */
-function nameable(flags: FlagsSeen['flags']): string[] {
+function nameable(flags: InspectReport['variables'][number]['flags']): string[] {
   return flags.map(({ meaning }) => meaning).filter((meaning) => meaning.length <= 100).slice(0, 200)
 }

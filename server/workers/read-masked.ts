@@ -1,5 +1,6 @@
 import { basename } from 'node:path'
 import type { GridWindow } from '../../shared/science/grid'
+import { reasonFilled } from '../../shared/science/kept-and-masked'
 import { formulaOf } from '../../shared/science/optics/formulas'
 import { cellsWith, type FlagMeaning } from '../grids/flags'
 import type { GridSource, GridVariable } from '../grids/grid-source'
@@ -13,8 +14,6 @@ export interface MaskedValues {
   values: Float64Array
   hidden: Map<string, Uint8Array>
 }
-
-export const gapFilledReason = 'filled in, not seen'
 
 /** A layer in a window, with the cells its feed hides made missing; a derived layer is worked out here, cell by cell. */
 export async function readMasked(layer: LayerPlace, window: GridWindow): Promise<MaskedValues> {
@@ -66,7 +65,7 @@ async function hiddenCells(source: GridSource, variable: GridVariable, step: num
   const { flags, gapFilled } = variable
   const wanted = flags?.meanings.filter((meaning) => hiddenFlags.includes(meaning.name)) ?? []
   await addHidden(flags?.variable ?? null, wanted, (meaning) => meaning.name)
-  await addHidden(gapFilled?.variable ?? null, gapFilled?.meanings ?? [], () => gapFilledReason)
+  await addHidden(gapFilled?.variable ?? null, gapFilled?.meanings ?? [], () => reasonFilled)
   return hidden
 
   async function addHidden(flagVariable: string | null, meanings: readonly FlagMeaning[], reasonOf: (meaning: FlagMeaning) => string): Promise<void> {

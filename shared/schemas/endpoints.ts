@@ -54,6 +54,8 @@ export const endpoints = {
   uploadFiles: endpoint({ method: 'POST', path: '/files', may: 'file:upload', summary: 'Send files', multipart: true, reply: z.object({ items: z.array(files.receipt) }), status: 202 }),
   listFiles: endpoint({ method: 'GET', path: '/files', may: 'read', summary: 'Files, newest first', query: page.extend({ status: files.fileStatus.optional() }), reply: list(files.fileItem) }),
   file: endpoint({ method: 'GET', path: '/files/:id', may: 'read', summary: 'One file: what was understood, or why it was refused', params: idParam, reply: files.file }),
+  confirmFeeds: endpoint({ method: 'POST', path: '/files/:id/feeds', may: 'feed:confirm', summary: 'Make several feeds of one waiting file at once; it is read once, by all of them', params: idParam, body: feeds.feedsOfFile, reply: z.object({ items: z.array(feeds.feed), nextCursor: z.null() }), status: 201 }),
+  fileTile: endpoint({ method: 'GET', path: '/files/:id/tiles/:z/:x/:y.png', may: 'read', summary: 'A map tile of one variable of a waiting file, before anything is confirmed', params: tileParams, query: files.fileTileQuery, contentType: 'image/png' }),
   deleteFile: endpoint({ method: 'DELETE', path: '/files/:id', may: 'file:upload', summary: 'Delete a file and its layers (own files; an admin, any)', params: idParam, status: 204 }),
 
   listLayers: endpoint({ method: 'GET', path: '/layers', may: 'read', summary: 'Layers, newest first', query: page.extend({ feedId: z.coerce.number().int().positive().optional(), from: day.optional(), to: day.optional() }), reply: list(layers.layer) }),

@@ -66,6 +66,8 @@ export const newFeed = feedFields
 export type NewFeed = z.infer<typeof newFeed>
 export const feedProposal = feedFields
 export type FeedProposal = z.infer<typeof feedProposal>
+/** Feeds confirmed together from one waiting file. */
+export const feedsOfFile = z.object({ feeds: z.array(feedFields).min(1, 'Choose at least one feed.').max(60) })
 
 export const feedChange = z.object({
   version,

@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import { id, instant } from './common'
 import { feedProposal } from './feeds'
+import { foundAttributes, foundAxis, foundCells, foundHistogram } from './found'
 
 export const fileStatuses = ['received', 'processing', 'processed', 'waiting', 'refused'] as const
 export const fileStatus = z.enum(fileStatuses)
@@ -32,12 +33,22 @@ export const reportVariable = z.object({
     hasClock: z.boolean(),
     from: z.string(),
   }),
+  /** It is the error, bias, uncertainty, count or flags of another variable: never proposed. */
+  tellsOfAnother: z.boolean().optional(),
+  /** While the file waits: it can be looked at. */
+  gridId: id.optional(),
+  axes: z.array(foundAxis).optional(),
+  attributes: foundAttributes.optional(),
+  /** Cells looked at in the first step: all, or of a very large grid sixteen bands of rows spread over it. */
   cells: z.number(),
   valid: z.number(),
   min: z.number().nullable(),
   median: z.number().nullable(),
   max: z.number().nullable(),
-  /** Flag meanings found beside it, with the cells of the first step each applies to (the middle rows of a very large grid). */
+  histogram: foundHistogram.nullable().optional(),
+  /** The same cells by what speaks against them: what would be kept under any choice of flags follows from it. */
+  found: foundCells.optional(),
+  /** Flag meanings found beside it, with the cells looked at that each applies to. */
   flags: z.array(z.object({ meaning: z.string(), cells: z.number().int() })).optional(),
   /** 'marked': the file says which cells were filled in; 'unmarked': it says only that some were. */
   gapFilled: z.enum(['marked', 'unmarked']).nullable().optional(),
@@ -50,10 +61,26 @@ export const fileReport = z.object({
   format: z.string(),
   variables: z.array(reportVariable),
   warnings: z.array(z.string()),
+  /** Of the whole file. */
+  attributes: foundAttributes.optional(),
   /** When the file says it was made. */
   producedAt: instant.nullable().optional(),
   /** Which feed took which variable, and in how many layers. */
-  feeds: z.array(z.object({ feedId: id, variable: z.string(), layers: z.number() })).default([]),
+  feeds: z
+    .array(
+      z.object({
+        feedId: id,
+        variable: z.string(),
+        layers: z.number(),
+        /** Where the time came from, if the file itself has none: 'the form', 'the address', 'the file name'. */
+        timeFrom: z.string().optional(),
+      }),
+    )
+    .default([]),
+  /** While it waits: what each feed of its own would have needed. */
+  missed: z.array(z.object({ feedId: id, feed: z.string(), why: z.string() })).optional(),
+  /** While it waits: further feeds that the same file could serve. */
+  others: z.array(feedProposal).optional(),
 })
 export type FileReport = z.infer<typeof fileReport>
 
@@ -85,6 +112,10 @@ export type FileItem = z.infer<typeof fileItem>
 export const file = fileItem.extend({
   report: fileReport.nullable(),
   proposal: feedProposal.nullable(),
+  /** Further feeds this file could serve, each a proposal like the first; the bands beside a band belong together. */
+  others: z.array(feedProposal),
+  /** While it has a proposal: the regions that its grid meets, which would get figures. */
+  wouldGive: z.object({ regions: z.array(z.object({ id, name: z.string() })), ofRegions: z.number().int() }).nullable(),
   layers: z.array(z.object({ id, feedId: id, observedAt: instant, replaced: z.boolean().optional() })),
   /** The older file whose place this one took; and the newer ones that took the place of this one's layers, when, and of how many. */
   replaces: z.object({ id, name: z.string() }).nullable().optional(),
@@ -114,4 +145,11 @@ export const receipt = z.object({
 export const uploadFields = z.object({
   feedId: z.coerce.number().int().positive().optional(),
   observedAt: instant.optional(),
+})
+
+/** One variable of a waiting file as a picture: `hidden` are the flag meanings not to show, apart by blanks as in files. */
+export const fileTileQuery = z.object({
+  variable: z.string().min(1).max(200),
+  hidden: z.string().max(10_000).default(''),
+  theme: z.enum(['light', 'night']).default('light'),
 })

@@ -28,6 +28,18 @@ export function useCreateFeed() {
   })
 }
 
+/** Several feeds of one waiting file at once. */
+export function useConfirmFeeds(fileId: number) {
+  const client = useQueryClient()
+  return useMutation({
+    mutationFn: (body: BodyInputOf<typeof endpoints.confirmFeeds>) => call(endpoints.confirmFeeds, { params: { id: fileId }, body }),
+    onSuccess: async () => {
+      await client.invalidateQueries({ queryKey: ['files'] })
+      await client.invalidateQueries({ queryKey: ['feeds'] })
+    },
+  })
+}
+
 export function useChangeFeed(id: number) {
   const client = useQueryClient()
   return useMutation({

@@ -1,5 +1,5 @@
 import { useState } from 'react'
-import { Link } from 'react-router-dom'
+import { Link, useSearchParams } from 'react-router-dom'
 import { paths } from '../../../shared/paths'
 import type { Feed } from '../../../shared/schemas/feeds'
 import { formulas } from '../../../shared/science/optics/formulas'
@@ -12,7 +12,8 @@ import { SectionHead } from '../../components/ui/page'
 
 /** Makes a feed that is worked out from the bands of this one's files; what is missing the server says in a sentence. */
 export function DeriveFeed({ feed }: { feed: Feed }) {
-  const [chosen, setChosen] = useState(0)
+  const [asked] = useSearchParams()
+  const [chosen, setChosen] = useState(() => Math.max(0, formulas.findIndex((one) => one.name === asked.get('formula') && one.version === asked.get('version'))))
   const [name, setName] = useState<string>()
   const create = useCreateFeed()
   const formula = formulas[chosen]!

@@ -2,21 +2,44 @@ import { z } from 'zod'
 import { stages, type FeedProposal } from '../../../shared/schemas/feeds'
 
 /** The points of a proposal that only a person can tell, as typed. */
-export const answers = z.object({
-  name: z.string().trim().min(1, 'The feed needs a name.').max(100, 'At most 100 characters.'),
-  stage: z.enum(stages),
-  processingVersion: z.string().trim().min(1, 'Say the version; 1 if there is none.').max(50, 'At most 50 characters.'),
-  unit: z.string().trim().max(50, 'At most 50 characters.'),
-  fileNamePattern: z.string().trim().max(200, 'At most 200 characters.'),
-  hiddenFlags: z.array(z.string()),
-  fileUnit: z.string().trim().max(50, 'At most 50 characters.'),
-})
+export const answers = z
+  .object({
+    name: z.string().trim().min(1, 'The feed needs a name.').max(100, 'At most 100 characters.'),
+    stage: z.enum(stages),
+    processingVersion: z.string().trim().min(1, 'Say the version; 1 if there is none.').max(50, 'At most 50 characters.'),
+    unit: z.string().trim().max(50, 'At most 50 characters.'),
+    fileNamePattern: z.string().trim().max(200, 'At most 200 characters.'),
+    hiddenFlags: z.array(z.string()),
+    fileUnit: z.string().trim().max(50, 'At most 50 characters.'),
+    /** Whether the first proposal is taken; always so where it stands alone. */
+    taken: z.boolean(),
+    others: z.array(z.object({ taken: z.boolean(), name: z.string().trim().max(100, 'At most 100 characters.') })),
+  })
+  .superRefine(({ taken, others }, context) => {
+    others.forEach((other, i) => {
+      if (other.taken && other.name === '') context.addIssue({ code: 'custom', path: ['others', i, 'name'], message: 'The feed needs a name.' })
+    })
+    if (!taken && !others.some((other) => other.taken)) context.addIssue({ code: 'custom', path: ['taken'], message: 'Tick at least one feed.' })
+  })
 export type Answers = z.infer<typeof answers>
 
-export function answersOf({ name, stage, processingVersion, unit, fileNamePattern, hiddenFlags, fileUnit }: FeedProposal): Answers {
-  return { name, stage, processingVersion, unit: unit ?? '', fileNamePattern: fileNamePattern ?? '', hiddenFlags, fileUnit: fileUnit ?? '' }
+/** The bands of one file belong together and start ticked; what else a file holds is for the person to add. */
+export function answersOf(proposal: FeedProposal, others: readonly FeedProposal[] = []): Answers {
+  const { name, stage, processingVersion, unit, fileNamePattern, hiddenFlags, fileUnit } = proposal
+  return {
+    name, stage, processingVersion, unit: unit ?? '', fileNamePattern: fileNamePattern ?? '', hiddenFlags, fileUnit: fileUnit ?? '', taken: true,
+    others: others.map((other) => ({ taken: proposal.quantity === 'reflectance' && other.quantity === 'reflectance', name: other.name })),
+  }
 }
 
-export function feedOf(proposal: FeedProposal, given: Answers): FeedProposal {
-  return { ...proposal, ...given, unit: given.unit || null, fileNamePattern: given.fileNamePattern || null, fileUnit: given.fileUnit || null }
+/** The feeds to make: the first with all answers, each other one with those that hold for the whole file. */
+export function feedsOf(proposal: FeedProposal, others: readonly FeedProposal[], given: Answers): FeedProposal[] {
+  const { name, stage, processingVersion, hiddenFlags } = given
+  const shared = { stage, processingVersion, fileNamePattern: given.fileNamePattern || null, fileUnit: given.fileUnit || null }
+  const first = given.taken ? [{ ...proposal, ...shared, name, hiddenFlags, unit: given.unit || null }] : []
+  const more = others.flatMap((other, i) => {
+    const answer = given.others[i]
+    return answer?.taken ? [{ ...other, ...shared, name: answer.name, hiddenFlags: hiddenFlags.filter((flag) => other.flagMeanings.includes(flag)) }] : []
+  })
+  return [...first, ...more]
 }

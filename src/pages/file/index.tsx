@@ -12,13 +12,15 @@ import { Waiting } from '../../components/ui/waiting'
 import { megabytes, shortChecksum } from '../../lib/format'
 import { ConfirmFeed } from './confirm-feed'
 import { DeleteFile } from './delete-file'
+import { DerivablePart } from './derivable-part'
 import { FiguresPart } from './figures-part'
+import { FileContents } from './file-contents'
 import { fileSentence } from './file-sentence'
 import { LayersPart } from './layers-part'
 import { mayDeleteFile } from './may-delete-file'
+import { MissedPart } from './missed-part'
 import { RefusedPart } from './refused-part'
 import { ReplacedPart } from './replaced-part'
-import { UnderstoodPart } from './understood-part'
 import { formatWords } from './understood-rows'
 
 export function Component() {
@@ -50,10 +52,12 @@ function FileParts({ file }: { file: OffingFile }) {
       {file.status === 'waiting' && file.proposal ? (
         <ConfirmFeed file={file} proposal={file.proposal} />
       ) : (
-        file.report?.variables.map((variable) => <UnderstoodPart key={variable.name} format={file.report?.format ?? ''} variable={variable} />)
+        file.report && <FileContents file={file} report={file.report} />
       )}
+      {file.status === 'waiting' && <MissedPart missed={file.report?.missed ?? []} />}
       <LayersPart file={file} />
       <FiguresPart file={file} />
+      {file.status === 'processed' && <DerivablePart file={file} />}
       {mayDeleteFile(me, file) && <DeleteFile file={file} />}
     </>
   )

@@ -13,7 +13,7 @@ export interface UnderstoodRow {
 }
 
 /** What was read from one variable, item by item, with how it is known. */
-export function understoodRows(format: string, variable: ReportVariable): UnderstoodRow[] {
+export function understoodRows(format: string, variable: ReportVariable, timeFrom?: string): UnderstoodRow[] {
   const { grid, times } = variable
   const rows: UnderstoodRow[] = [
     { item: 'Format', understood: formatWords(format), how: 'read', note: 'from its first bytes, not its name' },
@@ -21,7 +21,7 @@ export function understoodRows(format: string, variable: ReportVariable): Unders
     { item: 'Variable', understood: variable.name, how: 'read', note: variable.dimensions.map((one) => `${one.name} ${one.size}`).join(' × '), mono: true },
     unitRow(variable),
     { item: 'Grid', understood: `${grouped(grid.columns)} × ${grouped(grid.rows)} cells`, how: 'read', note: gridNote(variable), mono: true },
-    { item: 'Time', understood: timeWords(variable), how: times.first ? 'read' : 'worked out', note: `${times.from}${times.hasClock ? '' : '; no clock time'}` },
+    { item: 'Time', understood: timeWords(variable), how: times.first ? 'read' : 'worked out', note: timeNote(times, timeFrom) },
     { item: 'Kept of the first step', understood: `${percent(variable.cells > 0 ? variable.valid / variable.cells : 0)} of the cells`, how: 'worked out', note: `${grouped(variable.valid)} of ${grouped(variable.cells)} cells looked at; the rest is missing`, mono: true },
   ]
   const values = valueRow(variable)
@@ -59,6 +59,11 @@ function timeWords({ times }: ReportVariable): string {
   const first = dayWithYear(times.first)
   const last = times.last ? dayWithYear(times.last) : first
   return first === last ? `${steps}, ${first}` : `${steps}, ${first} to ${last}`
+}
+
+function timeNote({ from, hasClock, first }: ReportVariable['times'], timeFrom: string | undefined): string {
+  if (!first) return timeFrom === undefined ? 'the file names no time' : `the file names no time; it came from ${timeFrom}`
+  return `${from}${hasClock ? '' : '; no clock time'}`
 }
 
 function valueRow({ min, median, max, unit }: ReportVariable): UnderstoodRow | undefined {

@@ -24,6 +24,8 @@ export function aWaitingFile(change: Partial<OffingFile> = {}): OffingFile {
       processingVersion: 'R2026.1', validMin: 0.001, validMax: 30, fileNamePattern: 'west_chl_*', freshnessLimitHours: 72, silentAfterHours: 72,
       hiddenFlags: [], flagMeanings: [], gapFilled: false, storedLog10: false, fileUnit: null,
     },
+    others: [],
+    wouldGive: null,
     layers: [],
     summaries: [],
     ...change,
