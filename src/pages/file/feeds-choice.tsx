@@ -1,4 +1,4 @@
-import type { UseFormReturn } from 'react-hook-form'
+import { useWatch, type UseFormReturn } from 'react-hook-form'
 import type { FeedProposal } from '../../../shared/schemas/feeds'
 import type { OffingFile } from '../../../shared/schemas/files'
 import { FaultMark } from '../../components/ui/fault-mark'
@@ -18,13 +18,13 @@ const nameBox =
 
 /** All feeds that one file could serve: what is ticked is made at once, and the file is read once. */
 export function FeedsChoice({ file, proposal, form, onShow }: Props) {
-  const { register, watch, formState } = form
-  const given = watch()
+  const { register, formState } = form
+  const [taken, others] = useWatch({ control: form.control, name: ['taken', 'others'] })
   const rows = [
-    { one: proposal, taken: given.taken, field: 'taken' as const, nameField: 'name' as const, error: formState.errors.name?.message },
+    { one: proposal, taken, field: 'taken' as const, nameField: 'name' as const, error: formState.errors.name?.message },
     ...file.others.map((one, i) => ({
       one,
-      taken: given.others[i]?.taken ?? false,
+      taken: others[i]?.taken ?? false,
       field: `others.${i}.taken` as const,
       nameField: `others.${i}.name` as const,
       error: formState.errors.others?.[i]?.name?.message,
@@ -46,7 +46,7 @@ export function FeedsChoice({ file, proposal, form, onShow }: Props) {
           </tr>
         </thead>
         <tbody>
-          {rows.map(({ one, taken, field, nameField, error }) => (
+          {rows.map(({ one, taken: read, field, nameField, error }) => (
             <tr key={one.variable} className="border-b border-rule align-baseline">
               <td className="py-1 pr-4">
                 <label className="grid min-h-11 min-w-11 place-items-center tab:min-h-9 tab:min-w-9 tab:place-items-start tab:content-center">
@@ -60,7 +60,7 @@ export function FeedsChoice({ file, proposal, form, onShow }: Props) {
                 </button>
               </td>
               <td className="py-1">
-                <input aria-label={`Name of the feed of ${one.variable}`} aria-invalid={Boolean(error)} disabled={!taken} className={nameBox} {...register(nameField)} />
+                <input aria-label={`Name of the feed of ${one.variable}`} aria-invalid={Boolean(error)} disabled={!read} className={nameBox} {...register(nameField)} />
                 {error && <Fault>{error}</Fault>}
               </td>
             </tr>

@@ -41,7 +41,7 @@ export function VariablesPart({ file, shown, onShow }: Props) {
                 <Td className="fig break-all">{variable.name}</Td>
                 <Td>{variable.longName ?? ''}</Td>
                 <Td className="fig">{unitWords(variable.fileUnit)}</Td>
-                <Td>{useWords(file, variable)}</Td>
+                <Td>{wordsOfUse(file, variable)}</Td>
                 <Td className="text-right">
                   {variable.name === shown.name ? (
                     <span className="font-strong">shown</span>
@@ -72,7 +72,7 @@ export function VariablesPart({ file, shown, onShow }: Props) {
   )
 }
 
-function useWords({ report, proposal, others }: OffingFile, { name, tellsOfAnother, quantity }: ReportVariable): string {
+function wordsOfUse({ report, proposal, others }: OffingFile, { name, tellsOfAnother, quantity }: ReportVariable): string {
   const is = (one: FeedProposal) => one.variable === name
   if (report?.feeds.some((feed) => feed.variable === name)) return 'read'
   if (proposal && is(proposal)) return 'proposed'
