@@ -22,6 +22,7 @@ export const paths = {
   region: page<{ id: number }>('/regions/:id'),
   editRegion: page<{ id: number }>('/regions/:id/edit'),
   layers: page('/layers'),
+  layerMap: page('/layers/map'),
   file: page<{ id: number }>('/layers/files/:id'),
   feeds: page('/feeds'),
   feed: page<{ id: number }>('/feeds/:id'),

@@ -34,6 +34,7 @@ export const router = createBrowserRouter([
       page(paths.regions, () => import('./pages/regions')),
       page(paths.region, () => import('./pages/region')),
       page(paths.layers, () => import('./pages/layers')),
+      page(paths.layerMap, () => import('./pages/layer-map')),
       page(paths.file, () => import('./pages/file')),
       page(paths.feeds, () => import('./pages/feeds')),
       page(paths.feed, () => import('./pages/feed')),

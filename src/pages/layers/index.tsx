@@ -1,5 +1,7 @@
 import { useState } from 'react'
+import { paths } from '../../../shared/paths'
 import { useCan } from '../../api/auth'
+import { ButtonLink } from '../../components/ui/button'
 import { Choice } from '../../components/ui/choice'
 import { Page, Statement } from '../../components/ui/page'
 import { FileList } from './file-list'
@@ -19,7 +21,7 @@ export function Component() {
   return (
     <Page title="Layers">
       <style>{'[data-upload-note] { display: none }'}</style>
-      <Statement detail={sentence.detail}>{sentence.statement}</Statement>
+      <Statement detail={sentence.detail} actions={<ButtonLink to={paths.layerMap.to()}>Day by day on the map</ButtonLink>}>{sentence.statement}</Statement>
       {mayUpload && <UploadPart />}
       <div className="grid grid-cols-[minmax(0,1fr)] gap-3">
         <Choice label="What is listed" options={parts} value={part} onChange={setPart} />

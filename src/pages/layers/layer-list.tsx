@@ -11,6 +11,7 @@ import { Failure } from '../../components/ui/failure'
 import { SelectField, TextField } from '../../components/ui/field'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
 import { Waiting } from '../../components/ui/waiting'
+import { mapLink } from '../layer-map/map-address'
 import { layerTime } from './layer-time'
 
 /** Layers newest first, of one feed or of all. */
@@ -76,7 +77,11 @@ export function LayerList({ feedId: fixed }: { feedId?: number }) {
 function LayerRow({ layer }: { layer: Layer }) {
   return (
     <Tr>
-      <Td className="fig whitespace-nowrap">{layerTime(layer)}</Td>
+      <Td className="fig whitespace-nowrap">
+        <Link className="link" title="On the map" to={mapLink({ feedId: layer.feedId, day: layer.observedAt.slice(0, 10), layerId: layer.id })}>
+          {layerTime(layer)}
+        </Link>
+      </Td>
       <Td>
         <span className="fig">{layer.variable}</span>
         {layer.suspect && (

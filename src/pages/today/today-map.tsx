@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query'
 import { lazy, Suspense } from 'react'
+import { Link } from 'react-router-dom'
 import type { Feed } from '../../../shared/schemas/feeds'
 import type { Region } from '../../../shared/schemas/regions'
 import type { Today } from '../../../shared/schemas/today'
@@ -7,6 +8,7 @@ import { useMe } from '../../api/auth'
 import { layerQuery } from '../../api/layers'
 import { Age } from '../../components/ui/age'
 import { clockTime, longDay, zoneWord } from '../../lib/dates'
+import { mapLink } from '../layer-map/map-address'
 
 const MapOfDay = lazy(() => import('./map-of-day'))
 
@@ -21,7 +23,14 @@ export function TodayMap({ day, regions, feed }: Props) {
   return (
     <section aria-label="Map" className="grid content-start gap-3">
       <div className="flex flex-wrap items-baseline justify-between gap-x-4 pl-11 tab:pl-13">
-        <h2 className="font-strong">{feed?.name ?? 'Map'}</h2>
+        <h2 className="font-strong">
+          {feed?.name ?? 'Map'}
+          {feed && day.layerId !== null && (
+            <Link className="link ml-4 text-small font-text" to={mapLink({ feedId: feed.id, day: day.day })}>
+              day by day
+            </Link>
+          )}
+        </h2>
         <LayerWords day={day} />
       </div>
       <Suspense fallback={<div className="hatch ml-13 aspect-[1.15] border border-rule2" role="status" aria-label="Map on its way" />}>
