@@ -69,12 +69,12 @@ function missOf(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly Feed
 
 function whyMissed(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly FeedRow[]): string {
   const { fileNamePattern, unit, variable } = feed
-  if (fileNamePattern !== null && !byPattern.includes(feed)) return `takes files named ${fileNamePattern}; this one is named ${file.name}.`
-  const reads = `reads ${inUnit(variable, unit)}`
+  const named = fileNamePattern !== null && !byPattern.includes(feed)
   const found = seen.variables.find((one) => one.name === variable)
-  if (found && variableFor(feed, seen, byPattern.length > 0)) return `${reads}, but the name of this file fits the pattern of another feed.`
-  if (found) return `${reads}; this file has ${inUnit(found.name, found.unit)}.`
-  return `${reads}; this file has ${heldWords(feed, seen)}.`
+  const fits = variableFor(feed, seen, named || byPattern.length > 0) !== null
+  const reads = fits ? null : `reads ${inUnit(variable, unit)}; this file has ${found ? inUnit(found.name, found.unit) : heldWords(feed, seen)}.`
+  if (named) return `takes files named ${fileNamePattern}, and ${file.name} is not.${reads === null ? '' : ` It ${reads}`}`
+  return reads ?? `reads ${inUnit(variable, unit)}, but the name of this file fits the pattern of another feed.`
 }
 
 /** The variables that measure the same, else all that are no error or flags of another. */

@@ -13,7 +13,7 @@ export function AxesTable({ variable }: { variable: ReportVariable }) {
   const axes = variable.axes ?? []
   if (axes.length === 0) return null
   return (
-    <Table label={`Axes of ${variable.name}`}>
+    <Table label={`Axes of ${variable.name}`} className="min-w-[46rem]">
       <thead>
         <tr>
           <Th>Axis</Th>
@@ -29,7 +29,7 @@ export function AxesTable({ variable }: { variable: ReportVariable }) {
       <tbody>
         {axes.map((axis) => (
           <Tr key={axis.dimension}>
-            <Td className="fig break-all">{axis.coordinate && axis.coordinate !== axis.dimension ? `${axis.dimension} (${axis.coordinate})` : axis.dimension}</Td>
+            <Td className="fig whitespace-nowrap">{axis.coordinate && axis.coordinate !== axis.dimension ? `${axis.dimension} (${axis.coordinate})` : axis.dimension}</Td>
             <Td>{roleWords[axis.role]}</Td>
             <Td figures>{grouped(axis.size)}</Td>
             <Td figures>{end(axis, axis.first, variable.times.first)}</Td>

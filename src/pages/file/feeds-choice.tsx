@@ -39,17 +39,17 @@ export function FeedsChoice({ file, proposal, form, onShow }: Props) {
       <Table label="Feeds to make">
         <thead>
           <tr>
-            <Th>Read</Th>
-            <Th figures>Wavelength</Th>
+            <Th className="w-14">Read</Th>
+            <Th figures className="w-24">Wavelength</Th>
             <Th>Variable</Th>
             <Th>Name of the feed</Th>
           </tr>
         </thead>
         <tbody>
           {rows.map(({ one, taken: read, field, nameField, error }) => (
-            <tr key={one.variable} className="border-b border-rule align-baseline">
+            <tr key={one.variable} className="border-b border-rule">
               <td className="py-1 pr-4">
-                <label className="grid min-h-11 min-w-11 place-items-center tab:min-h-9 tab:min-w-9 tab:place-items-start tab:content-center">
+                <label className="grid min-h-11 min-w-11 place-items-center justify-items-start tab:min-h-9 tab:min-w-9">
                   <input type="checkbox" aria-label={`Read ${one.variable}`} className="size-4.5 accent-accent" {...register(field)} />
                 </label>
               </td>

@@ -11,10 +11,19 @@ export function fileSentence(file: OffingFile): { statement: string; detail: str
     case 'processed':
       return { statement: `${countAtHead(file.layers.length)} ${file.layers.length === 1 ? 'layer' : 'layers'} read from this file.`, detail: figuresDetail(file) }
     case 'waiting':
-      return { statement: file.proposal ? 'This file fits no feed yet.' : 'This file waits.', detail: file.waitingFor ?? undefined }
+      return { statement: file.proposal ? 'This file fits no feed yet.' : 'This file waits.', detail: file.proposal ? readAs(file) : (file.waitingFor ?? undefined) }
     case 'refused':
       return { statement: 'This file was refused.', detail: undefined }
   }
+}
+
+/** What the file was taken for, and that a person has to agree. */
+function readAs({ proposal, others, report, waitingFor }: OffingFile): string | undefined {
+  const variable = report?.variables.find((one) => one.name === proposal?.variable)
+  if (!proposal || !variable) return waitingFor ?? undefined
+  const bands = proposal.quantity === 'reflectance' && others.length > 0 ? `${others.length + 1} bands of ` : ''
+  const what = proposal.quantity === 'other' ? variable.name : `${bands}${proposal.quantity}`
+  return `Read as ${what}, ${countWords(variable.times.count, 'time step')}. What is tinted needs your word; nothing is read before you confirm.`
 }
 
 function figuresDetail({ summaries }: OffingFile): string {

@@ -49,12 +49,12 @@ function FileParts({ file }: { file: OffingFile }) {
       {file.report?.warnings.map((warning) => (
         <Message key={warning}>{warning}</Message>
       ))}
+      {file.status === 'waiting' && <MissedPart missed={file.report?.missed ?? []} />}
       {file.status === 'waiting' && file.proposal ? (
         <ConfirmFeed file={file} proposal={file.proposal} />
       ) : (
         file.report && <FileContents file={file} report={file.report} />
       )}
-      {file.status === 'waiting' && <MissedPart missed={file.report?.missed ?? []} />}
       <LayersPart file={file} />
       <FiguresPart file={file} />
       {file.status === 'processed' && <DerivablePart file={file} />}

@@ -6,7 +6,7 @@ export function Outcomes({ outcomes }: { outcomes: readonly Outcome[] }) {
     <dl className="grid gap-x-9 gap-y-4 tab:grid-cols-2 desk:grid-cols-4">
       {outcomes.map(({ head, says }) => (
         <div key={head}>
-          <dt className={/^\d/.test(head) ? 'fig text-title' : 'text-title'}>{head}</dt>
+          <dt className="text-title tabular-nums">{head}</dt>
           <dd className="mt-1 text-small text-ink2">{says}</dd>
         </div>
       ))}

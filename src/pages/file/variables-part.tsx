@@ -23,8 +23,8 @@ export function VariablesPart({ file, shown, onShow }: Props) {
         <SectionHead ruled={false} count={report.variables.length}>
           Variables
         </SectionHead>
-        <Table label="Variables of this file">
-          <thead>
+        <Table label="Variables of this file" role="table">
+          <thead className="max-tab:hidden">
             <tr>
               <Th>Variable</Th>
               <Th>Described as</Th>
@@ -37,12 +37,12 @@ export function VariablesPart({ file, shown, onShow }: Props) {
           </thead>
           <tbody>
             {report.variables.map((variable) => (
-              <Tr key={variable.name}>
-                <Td className="fig break-all">{variable.name}</Td>
-                <Td>{variable.longName ?? ''}</Td>
-                <Td className="fig">{unitWords(variable.fileUnit)}</Td>
-                <Td>{wordsOfUse(file, variable)}</Td>
-                <Td className="text-right">
+              <Tr key={variable.name} role="row" className="max-tab:flex max-tab:flex-wrap max-tab:items-baseline">
+                <Td role="cell" className="fig break-words max-tab:h-auto max-tab:w-3/4">{variable.name}</Td>
+                <Td role="cell" className="max-tab:order-1 max-tab:h-auto max-tab:py-0">{variable.longName ?? ''}</Td>
+                <Td role="cell" className="fig max-tab:order-1 max-tab:h-auto max-tab:py-0">{unitWords(variable.fileUnit)}</Td>
+                <Td role="cell" className="text-ink2 max-tab:order-1 max-tab:h-auto max-tab:w-full max-tab:pt-0">{wordsOfUse(file, variable)}</Td>
+                <Td role="cell" className="text-right max-tab:ml-auto max-tab:h-auto">
                   {variable.name === shown.name ? (
                     <span className="font-strong">shown</span>
                   ) : (

@@ -1,7 +1,8 @@
 import type { FeedProposal } from '../../../shared/schemas/feeds'
 import type { OffingFile, ReportVariable } from '../../../shared/schemas/files'
+import { unitWords } from '../../../shared/figure-text'
 import { dayWithYear } from '../../lib/dates'
-import { countWords, grouped } from '../../lib/format'
+import { countWords } from '../../lib/format'
 
 export interface Outcome {
   /** A figure where there is one, else a word. */
@@ -17,15 +18,16 @@ export function whatHappens(file: OffingFile, feeds: readonly FeedProposal[]): O
   const variables = feeds.flatMap((feed) => file.report?.variables.find((variable) => variable.name === feed.variable) ?? [])
   const layers = variables.reduce((sum, variable) => sum + variable.times.count, 0)
   return [
-    { head: grouped(layers), says: `${layers === 1 ? 'layer is' : 'layers are'} read: ${daysWords(variables[0])}${feeds.length > 1 ? `, for ${feeds.length} feeds` : ''}.` },
+    { head: countWords(layers, 'layer'), says: `${layers === 1 ? 'is' : 'are'} read: ${daysWords(variables[0], file.observedAt)}${feeds.length > 1 ? `, for ${feeds.length} feeds` : ''}.` },
     regionsOutcome(file),
     { head: 'Later files', says: laterWords(feeds) },
     { head: 'Alerts', says: alertWords(feeds, variables[0]) },
   ]
 }
 
-function daysWords(variable: ReportVariable | undefined): string {
+function daysWords(variable: ReportVariable | undefined, observedAt: string | null): string {
   const { first = null, last = null, count = 0 } = variable?.times ?? {}
+  if (!first && observedAt) return `${dayWithYear(observedAt)}, as said when it was sent`
   if (!first) return 'its time comes from the file name by the pattern above, or from the field beside the chooser'
   const [from, to] = [dayWithYear(first), dayWithYear(last ?? first)]
   return from === to ? from : `${countWords(count, 'step')} from ${from} to ${to}`
@@ -36,14 +38,14 @@ function regionsOutcome({ wouldGive }: OffingFile): Outcome {
   const { regions, ofRegions } = wouldGive
   const names = regions.slice(0, 3).map((region) => region.name)
   const which = regions.length === 0 ? 'The layers can be looked at all the same.' : regions.length === ofRegions ? '' : `${names.join(', ')}${regions.length > 3 ? ` and ${regions.length - 3} more` : ''}.`
-  return { head: `${regions.length} of ${ofRegions}`, says: `regions meet the grid and get figures. ${which}`.trim() }
+  return { head: `${regions.length} of ${ofRegions} regions`, says: `meet${regions.length === 1 ? 's' : ''} the grid and get${regions.length === 1 ? 's' : ''} figures. ${which}`.trim() }
 }
 
 function laterWords(feeds: readonly FeedProposal[]): string {
   const [one] = feeds
   if (!one) return 'are matched with nothing while no feed is chosen.'
   const names = feeds.length > 3 ? `any of these ${feeds.length} variables` : feeds.map((feed) => feed.variable).join(' or ')
-  const unit = one.unit ? ` in ${one.unit}` : ''
+  const unit = one.unit ? ` in ${unitWords(one.unit)}` : ''
   const named = one.fileNamePattern ? `that are named like ${one.fileNamePattern} and hold ${names}${unit}` : `that hold ${names}${unit}, whatever their name,`
   return `${named} are read by themselves.`
 }
