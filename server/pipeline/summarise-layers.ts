@@ -2,18 +2,25 @@ import type { Context } from '../context'
 import type { Transaction } from '../db'
 import { layersById, type PlacedLayer } from '../queries/layers'
 import { activeGeometries, type ActiveGeometry } from '../queries/geometries'
+import { placeOf } from './layer-place'
 import { summariseViews, type ViewKey } from './summarise-views'
 import { viewDay } from './view-day'
 
-/** Figures for every region whose box meets the layers' grid: each view they belong to is made anew. */
+/**
+ * Figures for every region whose box meets the layers' grid: each view they belong to is made anew. What lies in nobody's
+ * water is only decoded, for regions to come.
+ */
 export async function summariseLayers(
   context: Context,
   feedId: number,
   layerIds: readonly number[],
   alongside: (tx: Transaction) => Promise<void>,
 ): Promise<void> {
-  const keys = viewKeysOf(await layersById(context, layerIds), await activeGeometries(context), feedId)
-  await summariseViews(context, keys, alongside)
+  const layers = await layersById(context, layerIds)
+  const geometries = await activeGeometries(context)
+  await summariseViews(context, viewKeysOf(layers, geometries, feedId), alongside)
+  const unwatched = layers.filter((layer) => !geometries.some((geometry) => boxesMeet(geometry, layer)))
+  if (unwatched.length > 0) await context.workers.heavy('decodeLayers', { layers: unwatched.map((layer) => placeOf(context, layer)) })
 }
 
 /** The views that layers belong to: one for each region their grid's box meets, and day. */

@@ -39,6 +39,14 @@ export async function readTiles(layer: LayerPlace, wanted: readonly number[], ke
   return readTiles(layer, wanted, keep)
 }
 
+/** Decodes layers that nobody watches yet, so that a region drawn later finds them; very large ones wait for it. */
+export async function decodeLayers({ layers }: { layers: readonly LayerPlace[] }): Promise<void> {
+  for (const layer of layers) {
+    const [cells, tiles] = [layer.rows * layer.columns, [...Array(tileCount(layer)).keys()]]
+    if (cells <= wholeGridCells && layer.pack !== null && !decodedTiles(layer, tiles.slice(0, 1))) await readTiles(layer, tiles, true)
+  }
+}
+
 /** The wanted tiles where all of them have been decoded before; else null, and nothing was read. */
 export function decodedTiles(layer: LayerPlace, wanted: readonly number[]): LayerTiles | null {
   const shape = { rows: layer.rows, columns: layer.columns }

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto'
 import { closeSync, mkdirSync, openSync, readSync, renameSync, rmSync, writeFileSync } from 'node:fs'
 import { dirname } from 'node:path'
+import { crc32 } from 'node:zlib'
 import { decodeFront, encodePack, frontLength, tileBox, unpackTile, type PackHeader, type PackShape, type PackedTile, type TileCells, type TileEntry } from './tile-pack'
 
 /** A pack that is open for reading. */
@@ -25,7 +26,11 @@ export function openPack(path: string, shape: PackShape): OpenPack | null {
     closeSync(fd)
     return null
   }
-  const bytesOf = ({ offset, length }: TileEntry) => read(fd, offset, length)
+  const bytesOf = ({ offset, length, check }: TileEntry) => {
+    const bytes = read(fd, offset, length)
+    if (bytes.length !== length || crc32(bytes) !== check) throw new RangeError('A tile does not check.')
+    return bytes
+  }
   return {
     header: front.header,
     has: (tile) => front.entries(tile).flags !== 0,
@@ -45,13 +50,24 @@ export function openPack(path: string, shape: PackShape): OpenPack | null {
 /** Puts a pack in its place at once: readers see the one before or this one. */
 export function writePack(path: string, header: PackHeader, tiles: ReadonlyMap<number, PackedTile>): void {
   const temporary = `${path}.${randomUUID()}`
-  mkdirSync(dirname(path), { recursive: true })
+  const bytes = encodePack(header, tiles)
   try {
-    writeFileSync(temporary, encodePack(header, tiles))
+    writeWhereFolderIs(temporary, bytes)
     renameSync(temporary, path)
   } catch (error) {
     rmSync(temporary, { force: true })
     throw error
+  }
+}
+
+/** The folder is made when it turns out to be missing: looking first costs more than the writing. */
+function writeWhereFolderIs(path: string, bytes: Uint8Array): void {
+  try {
+    writeFileSync(path, bytes)
+  } catch (error) {
+    if (!(error instanceof Error && 'code' in error && error.code === 'ENOENT')) throw error
+    mkdirSync(dirname(path), { recursive: true })
+    writeFileSync(path, bytes)
   }
 }
 
@@ -72,7 +88,8 @@ function readFront(fd: number, shape: PackShape) {
 }
 
 function read(fd: number, offset: number, length: number): Buffer {
-  const bytes = Buffer.allocUnsafe(length)
+  // In memory of its own, so that numbers in it can be looked at in place.
+  const bytes = Buffer.allocUnsafeSlow(length)
   let got = 0
   while (got < length) {
     const more = readSync(fd, bytes, got, length - got, offset + got)

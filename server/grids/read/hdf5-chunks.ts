@@ -95,7 +95,7 @@ function describe(read: ByteReader, address: number, type: NumberType, dataset: 
 
 function unpack(stored: Uint8Array, { chunk, cellBytes, shuffle, deflate }: Chunked): Uint8Array | null {
   const expected = chunk.reduce((product, n) => product * n, cellBytes)
-  const plain = deflate ? inflateSync(stored, { maxOutputLength: expected }) : stored
+  const plain = deflate ? inflateSync(stored, { maxOutputLength: expected, chunkSize: Math.max(64, expected) }) : stored
   if (plain.length !== expected) return null
   return shuffle && cellBytes > 1 ? unshuffled(plain, cellBytes) : Uint8Array.from(plain)
 }
