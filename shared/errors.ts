@@ -8,6 +8,7 @@ export const errorStatus = {
   'not-found': 404,
   'stale-version': 409,
   conflict: 409,
+  'event-running': 409,
   'already-used': 410,
   'too-large': 413,
   'not-valid': 422,

@@ -1,6 +1,7 @@
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import type { CheckedOutline } from '../geography/outline/check-outline'
+import type { RefusedOutline } from '../workers/outline-tasks'
 
 export type { CheckedOutline } from '../geography/outline/check-outline'
 
@@ -8,8 +9,11 @@ export type { CheckedOutline } from '../geography/outline/check-outline'
 export async function checkedGeometry(context: Context, sent: unknown, inland: boolean): Promise<CheckedOutline> {
   const outcome = await context.workers.light('checkOutline', { sent, inland })
   if ('outline' in outcome) return outcome.outline
-  const { sentence, place, reason } = outcome.refused
-  throw new ApiError('not-valid', sentence, {
+  throw refusedGeometry(outcome.refused)
+}
+
+export function refusedGeometry({ sentence, place, reason }: RefusedOutline['refused']): ApiError {
+  return new ApiError('not-valid', sentence, {
     fields: { geometry: sentence },
     ...(place && { place: { longitude: place[0]!, latitude: place[1]! } }),
     ...(reason && { reason }),

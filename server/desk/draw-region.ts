@@ -5,9 +5,11 @@ import type { Person } from '../accounts/person'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import type { Transaction } from '../db'
+import type { GeometryRow } from '../models/geometry'
 import type { RegionRecord } from '../models/region'
 import { queueBackfill } from '../pipeline/backfill-region'
 import { checkedGeometry, type CheckedOutline } from './checked-geometry'
+import { endRunningEvents } from './redraw'
 
 /** A new region: its outline checked, then kept with its first geometry version, and its history queued. */
 export async function drawRegion(context: Context, person: Person, drawn: z.infer<typeof newRegion>): Promise<RegionRecord> {
@@ -28,18 +30,24 @@ export async function drawRegion(context: Context, person: Person, drawn: z.infe
   return region
 }
 
-/** Changes a region; another outline is a new version, whose history is read anew behind it. */
+/** Changes a region; another outline or shore buffer is a new version, whose history is read anew behind it. */
 export async function changeRegion(context: Context, person: Person, id: number, change: z.infer<typeof regionChange>): Promise<RegionRecord> {
-  const { version, geometry, inland, ...fields } = change
+  const { version, geometry, inland, confirm, ...fields } = change
   const checked = geometry === undefined ? null : await checkedGeometry(context, geometry, inland)
   const region = await context.db.write(async (tx) => {
     const record = await liveRegion(context, tx, id)
     if (record.version !== version) throw new ApiError('stale-version', 'Somebody else changed this region meanwhile. Look at it again.', { version: record.version })
     const before = record.geometryId === null ? null : await context.models.geometries.findByPk(record.geometryId, { transaction: tx })
     const moved = checked !== null && JSON.stringify(checked.geometry) !== JSON.stringify(before?.geometry)
-    await record.update({ ...fields, version: version + 1 }, { transaction: tx })
-    if (moved) await keepGeometry(context, tx, record, checked, (before?.version ?? 0) + 1, person)
-    await audit(context, tx, { userId: person.id, action: 'region:change', subject: `region ${id}`, details: { fields: Object.keys(fields), outline: moved } })
+    const shoreBufferKm = fields.shoreBufferKm ?? before?.shoreBufferKm ?? 0
+    const outline = moved || !before ? checked : shoreBufferKm === before.shoreBufferKm ? null : outlineOf(before)
+    if (outline) {
+      const next = { regionId: id, version: (before?.version ?? 0) + 1, confirmed: confirm, person }
+      await endRunningEvents(context, tx, next)
+      await record.update({ ...fields, shoreBufferKm, version: version + 1 }, { transaction: tx })
+      await keepGeometry(context, tx, record, outline, next.version, person)
+    } else await record.update({ ...fields, version: version + 1 }, { transaction: tx })
+    await audit(context, tx, { userId: person.id, action: 'region:change', subject: `region ${id}`, details: { fields: Object.keys(fields), outline: moved, shoreBufferKm } })
     return record
   })
   context.news.tell({ topic: 'regions', id: region.id }, { topic: 'jobs' })
@@ -59,7 +67,14 @@ export async function retireRegion(context: Context, person: Person, id: number)
   context.news.tell({ topic: 'regions', id })
 }
 
-async function keepGeometry(context: Context, tx: Transaction, region: RegionRecord, checked: CheckedOutline, version: number, person: Person): Promise<void> {
+type KeptOutline = Pick<CheckedOutline, 'geometry' | 'repairs' | 'areaKm2' | 'box' | 'centreLongitude'>
+
+/** The outline in force again, for a version that differs in something else. */
+function outlineOf({ geometry, repairs, areaKm2, west, south, east, north, centreLongitude }: GeometryRow): KeptOutline {
+  return { geometry, repairs, areaKm2, box: { west, south, east, north }, centreLongitude }
+}
+
+async function keepGeometry(context: Context, tx: Transaction, region: RegionRecord, checked: KeptOutline, version: number, person: Person): Promise<void> {
   const geometry = await context.models.geometries.create(
     {
       regionId: region.id,
@@ -67,6 +82,7 @@ async function keepGeometry(context: Context, tx: Transaction, region: RegionRec
       geometry: checked.geometry,
       repairs: checked.repairs,
       areaKm2: checked.areaKm2,
+      shoreBufferKm: region.shoreBufferKm,
       ...checked.box,
       centreLongitude: checked.centreLongitude,
       createdBy: person.id,

@@ -22,9 +22,12 @@ export async function keepAlerts(context: Context, tx: Transaction, subject: Sub
   const changes: Change[] = []
   const changed = (alert: AlertRecord) => changes.push({ topic: 'alerts', id: alert.id })
   const followed = new Set<KeptEvent>()
+  const frozen = await eventsOverOtherOutlines(context, tx, subject)
   for (const alert of alerts) {
     const event = judged.events.find((one) => one.firstFlagged <= alert.triggerDay && alert.triggerDay <= one.lastFlagged)
     if (event) followed.add(event)
+    // Over a redrawn outline an alert goes on with an event that is running there; else it stays with the one it had.
+    if (alert.eventId !== null && frozen.has(alert.eventId) && event?.phase !== 'running') continue
     if (alert.state !== 'closed' && (await follow(context, tx, subject, judged, alert, event))) changed(alert)
   }
   const event = judged.events.findLast((one) => one.phase === 'running')
@@ -93,6 +96,11 @@ function phaseEntry(event: KeptEvent): [EntryKind, string] {
 
 async function addEntry(context: Context, tx: Transaction, alert: AlertRecord, kind: EntryKind, text: string): Promise<void> {
   await context.models.alertEntries.create({ alertId: alert.id, at: context.clock.now(), kind, userId: null, text }, { transaction: tx })
+}
+
+async function eventsOverOtherOutlines(context: Context, tx: Transaction, { rule, geometry }: Subject): Promise<Set<number>> {
+  const rows = await context.db.all<{ id: number }>('SELECT id FROM events WHERE rule_id = $ruleId AND geometry_id <> $geometryId', { ruleId: rule.id, geometryId: geometry.id }, tx)
+  return new Set(rows.map((row) => row.id))
 }
 
 /** Only recent views raise anything: history that arrives late wakes nobody. */

@@ -4,6 +4,7 @@ import type { Alert, AlertItem } from '../../shared/schemas/alerts'
 import type { Context } from '../context'
 import type { AlertRecord } from '../models/alert'
 import { recentViews, type RecentView } from '../queries/alert-rows'
+import { geometryVersions } from '../queries/event-rows'
 import { newestBaseline } from '../queries/baselines'
 import { cautions, opticallyComplexCaution } from './cautions'
 import { presentEvent } from './present-event'
@@ -72,7 +73,7 @@ export async function presentAlert(context: Context, alert: AlertRecord): Promis
   const region = await models.regions.findByPk(alert.regionId)
   return {
     ...item!,
-    event: event ? presentEvent(event, alert.id) : goneEvent(alert),
+    event: event ? presentEvent(event, alert.id, (await geometryVersions(context, alert.regionId)).get(event.geometryId)!) : goneEvent(alert),
     cautions: [...cautions, ...(region?.opticallyComplex ? [opticallyComplexCaution] : [])],
     entries: entries.map((entry) => ({
       id: entry.id,
@@ -119,6 +120,8 @@ function goneEvent(alert: AlertRecord): Alert['event'] {
     peakTimesUsual: evidence.timesUsual,
     severity: alert.severity,
     usableViews: 0,
+    geometryVersion: evidence.geometryVersion,
+    endedBecause: null,
     alertId: alert.id,
   }
 }

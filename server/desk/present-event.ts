@@ -4,7 +4,7 @@ import type { EventRow } from '../models/event'
 
 const date = (day: number | null) => (day === null ? null : dateOf(day))
 
-export function presentEvent(event: EventRow, alertId: number | null): BloomEventItem {
+export function presentEvent(event: EventRow, alertId: number | null, geometryVersion: number): BloomEventItem {
   return {
     id: event.id,
     regionId: event.regionId,
@@ -22,6 +22,8 @@ export function presentEvent(event: EventRow, alertId: number | null): BloomEven
     peakTimesUsual: event.peakTimesUsual,
     severity: event.severity,
     usableViews: event.usableViews,
+    geometryVersion,
+    endedBecause: event.endedBecause,
     alertId,
   }
 }

@@ -20,7 +20,7 @@ export async function presentRegions(context: Context, regions: readonly RegionR
         timeZone: region.timeZone,
         site: region.site,
         contacts: region.contacts,
-        shoreBufferKm: region.shoreBufferKm,
+        shoreBufferKm: geometry.shoreBufferKm,
         opticallyComplex: region.opticallyComplex,
         geometry: geometry.geometry,
         geometryVersion: geometry.version,

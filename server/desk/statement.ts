@@ -26,6 +26,7 @@ export function alertStory(event: EventRow | null, alert: AlertRow): string {
   const views = `${event.usableViews} usable view${event.usableViews === 1 ? '' : 's'}`
   if (event.phase === 'running') return `Building since ${began}; ${views}, the newest flagged on ${dayText(lastFlagged)}.`
   if (event.phase === 'lost') return `Lost from view since ${dayText(lastFlagged)}; it began ${began}.`
+  if (event.endedBecause !== null) return `Ended because ${event.endedBecause}; it began ${began}, last flagged on ${dayText(lastFlagged)}.`
   return `Ended after ${dayText(lastFlagged)}; it began ${began}.`
 }
 

@@ -76,6 +76,7 @@ export function distanceToLandKm(longitude: number, latitude: number, withinKm: 
   const box = { west: lon - east, east: lon + east, south: latitude - north, north: latitude + north }
   let best: { away: number; lon: number; lat: number } | null = null
   for (const piece of coastIn(box)) {
+    if (Math.min(piece[1], piece[3]) > box.north || Math.max(piece[1], piece[3]) < box.south) continue
     const found = nearestOn(piece, lon, latitude)
     if (!best || found.away < best.away) best = found
   }

@@ -5,6 +5,7 @@ import { sql as derivedFeeds } from './002-derived-feeds'
 import { sql as feedPulls } from './003-feed-pulls'
 import { sql as quality } from './004-quality'
 import { sql as madeAndReplaced } from './005-made-and-replaced'
+import { sql as outlineVersions } from './006-outline-versions'
 
 const migrations = [
   { name: '001-first-schema', sql: firstSchema },
@@ -12,6 +13,7 @@ const migrations = [
   { name: '003-feed-pulls', sql: feedPulls },
   { name: '004-quality', sql: quality },
   { name: '005-made-and-replaced', sql: madeAndReplaced },
+  { name: '006-outline-versions', sql: outlineVersions },
 ]
 
 /** Brings the database to the newest schema; answers the names of what was applied. */

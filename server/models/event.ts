@@ -23,9 +23,11 @@ export interface EventRow {
   peakTimesUsual: number | null
   severity: Severity
   usableViews: number
+  /** Why it ended, where that was not what the water did. */
+  endedBecause: string | null
 }
 
-export interface EventRecord extends Model<EventRow, Optional<EventRow, 'id' | 'baselineId' | 'lastUnflaggedBefore' | 'firstUnflaggedAfter' | 'peakTimesUsual'>>, EventRow {}
+export interface EventRecord extends Model<EventRow, Optional<EventRow, 'id' | 'baselineId' | 'lastUnflaggedBefore' | 'firstUnflaggedAfter' | 'peakTimesUsual' | 'endedBecause'>>, EventRow {}
 
 export function defineEvent(sequelize: Sequelize) {
   return sequelize.define<EventRecord>(
@@ -49,6 +51,7 @@ export function defineEvent(sequelize: Sequelize) {
       peakTimesUsual: { type: DataTypes.REAL, allowNull: true },
       severity: { type: DataTypes.TEXT, allowNull: false },
       usableViews: { type: DataTypes.INTEGER, allowNull: false },
+      endedBecause: { type: DataTypes.TEXT, allowNull: true },
     },
     { tableName: 'events', underscored: true, timestamps: false },
   )

@@ -9,6 +9,7 @@ export interface GeometryRow {
   geometry: RegionGeometry
   repairs: string[]
   areaKm2: number
+  shoreBufferKm: number
   west: number
   south: number
   east: number
@@ -30,6 +31,7 @@ export function defineGeometry(sequelize: Sequelize) {
       geometry: jsonColumn('geometry', false),
       repairs: jsonColumn('repairs', false),
       areaKm2: { type: DataTypes.REAL, allowNull: false },
+      shoreBufferKm: { type: DataTypes.REAL, allowNull: false, defaultValue: 0 },
       west: { type: DataTypes.REAL, allowNull: false },
       south: { type: DataTypes.REAL, allowNull: false },
       east: { type: DataTypes.REAL, allowNull: false },

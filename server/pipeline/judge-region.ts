@@ -21,7 +21,7 @@ export async function judgeRegionJob(context: Context, job: JobRecord): Promise<
  */
 export async function judgeRegion(context: Context, ruleId: number): Promise<void> {
   const subject = await activeRule(context, ruleId)
-  if (!subject) return
+  if (!subject || (await isBeingRead(context, subject.geometry.id))) return
   const views = await judgeableViews(context, subject.geometry.id, subject.feed.id)
   const nowDay = localSolarDay(context.clock.now(), subject.geometry.centreLongitude)
   const newest = views.reduce((day, view) => Math.max(day, view.day), -Infinity)
@@ -35,6 +35,15 @@ export async function judgeRegion(context: Context, ruleId: number): Promise<voi
     return keepAlerts(context, tx, subject, { views, judgement, events, baselineId })
   })
   context.news.tell({ topic: 'regions', id: subject.region.id }, ...changes)
+}
+
+/** Half a history is no history: an outline is judged when the last of it has been read, which queues judging itself. */
+async function isBeingRead(context: Context, geometryId: number): Promise<boolean> {
+  const reading = await context.db.first(
+    `SELECT 1 AS one FROM jobs WHERE kind = 'backfill-region' AND job_key = $key AND state IN ('waiting', 'running', 'paused') AND (total = 0 OR done < total)`,
+    { key: String(geometryId) },
+  )
+  return reading !== undefined
 }
 
 /** Where cells may be filled in rather than seen, no view can be judged and nothing may be raised. */

@@ -10,7 +10,7 @@ export interface KeptEvent extends BloomEvent {
 
 /**
  * Brings the stored events of a rule to what the fold gives. Events are matched by overlap, so that one which grew,
- * shrank or moved keeps its id; those no longer found go.
+ * shrank or moved keeps its id; those no longer found go. Events over an earlier outline stay as they are.
  */
 export async function keepEvents(
   context: Context,
@@ -19,7 +19,7 @@ export async function keepEvents(
   found: readonly BloomEvent[],
   baselineId: number | null,
 ): Promise<KeptEvent[]> {
-  const stored = await context.models.events.findAll({ where: { ruleId: rule.id }, order: [['firstFlagged', 'ASC']], transaction: tx })
+  const stored = await context.models.events.findAll({ where: { ruleId: rule.id, geometryId: geometry.id }, order: [['firstFlagged', 'ASC']], transaction: tx })
   const left = new Set(stored)
   const kept: KeptEvent[] = []
   for (const event of found) {

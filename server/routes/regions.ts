@@ -3,13 +3,20 @@ import { endpoints } from '../../shared/schemas/endpoints'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import { changeRegion, drawRegion, retireRegion } from '../desk/draw-region'
+import { importRegions } from '../desk/import-regions'
+import { measureOutline } from '../desk/measure-outline'
+import { outlineVersions } from '../desk/outline-versions'
 import { presentEvent } from '../desk/present-event'
 import { presentRegions } from '../desk/present-region'
 import { regionBaseline } from '../desk/region-baseline'
 import { regionSeries } from '../desk/region-series'
+import { cutAt180 } from '../exports/cut-at-180'
+import { smallFile, smallUpload } from '../middleware/small-upload'
 import type { RegionRecord } from '../models/region'
 import { eventRows } from '../queries/event-rows'
 import { serve } from './serve'
+
+const mostImportMegabytes = 10
 
 export function regionRoutes(router: Router, context: Context): void {
   const live = () => context.models.regions.findAll({ where: { retiredAt: null } })
@@ -33,11 +40,16 @@ export function regionRoutes(router: Router, context: Context): void {
       features: regions.map(({ id, name, geometry, areaKm2, timeZone, site, standing }) => ({
         type: 'Feature' as const,
         id,
-        geometry,
+        geometry: cutAt180(geometry),
         properties: { name, areaKm2, timeZone, site, state: standing.state },
       })),
     }
   })
+  serve(router, context, endpoints.measureOutline, ({ body }) => measureOutline(context, body))
+  serve(router, context, endpoints.importRegions, ({ person, query, req }) => importRegions(context, person, smallFile(req), query.save === 'true'), {
+    before: [smallUpload(mostImportMegabytes)],
+  })
+  serve(router, context, endpoints.regionVersions, async ({ params }) => ({ items: await outlineVersions(context, params.id), nextCursor: null }))
   serve(router, context, endpoints.region, async ({ params }) => one(await known(params.id)))
   serve(router, context, endpoints.changeRegion, async ({ person, params, body }) => one(await changeRegion(context, person, params.id, body)))
   serve(router, context, endpoints.retireRegion, ({ person, params }) => retireRegion(context, person, params.id))
@@ -45,6 +57,6 @@ export function regionRoutes(router: Router, context: Context): void {
   serve(router, context, endpoints.regionBaseline, ({ params, query }) => regionBaseline(context, params.id, query))
   serve(router, context, endpoints.regionEvents, async ({ params, query }) => {
     await known(params.id)
-    return { items: (await eventRows(context, params.id, query)).map(({ event, alertId }) => presentEvent(event, alertId)), nextCursor: null }
+    return { items: (await eventRows(context, params.id, query)).map(({ event, alertId, geometryVersion }) => presentEvent(event, alertId, geometryVersion)), nextCursor: null }
   })
 }

@@ -70,7 +70,7 @@ export interface Tasks extends PictureTasks, OutlineTasks {
   comparePassword: { input: { password: string; hash: string }; output: boolean }
   inspectFile: { input: { path: string; fileName: string }; output: Seen }
   weighCells: {
-    input: { geometry: Polygon | MultiPolygon; shoreBufferKm: number; grid: string }
+    input: { geometry: Polygon | MultiPolygon; shoreBufferKm?: number; grid: string }
     output: Omit<RegionCellWeights, 'rows' | 'columns'>
   }
   summariseViews: {

@@ -4,6 +4,7 @@ import { LayerRefused } from '../grids/layer-refused'
 import { checkOutline } from './check-outline'
 import { drawTile } from './draw-tile'
 import { inspectFile } from './inspect-file'
+import { measureOutline } from './measure-outline'
 import { judgeRegion } from './judge-region'
 import { writeDemoFile } from '../seeders/demo/write-file'
 import { comparePassword, hashPassword } from './password'
@@ -11,6 +12,7 @@ import { readCells } from './read-cells'
 import { summariseViews } from './summarise-views'
 import { surveyLayer } from './survey-layer'
 import type { Tasks } from './tasks'
+import { readAreas } from './read-areas'
 import { weighCells } from './weigh-cells'
 
 /** Errors lose their class between threads: a refusal crosses as data. `spent`: this thread should do no further task. */
@@ -23,6 +25,8 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   weighCells,
   checkOutline,
   summariseViews,
+  measureOutline,
+  readAreas,
   judgeRegion,
   drawTile,
   readCells,

@@ -8,6 +8,7 @@ import * as feeds from './feeds'
 import * as files from './files'
 import { layerLegend } from './layer-legend'
 import * as layers from './layers'
+import * as outlines from './outlines'
 import * as pulls from './pulls'
 import * as regions from './regions'
 import * as rules from './rules'
@@ -68,9 +69,12 @@ export const endpoints = {
   listRegions: endpoint({ method: 'GET', path: '/regions', may: 'read', summary: 'Regions, by worry', query: page, reply: list(regions.region) }),
   createRegion: endpoint({ method: 'POST', path: '/regions', may: 'region:edit', summary: 'Draw a region', body: regions.newRegion, reply: regions.region, status: 201 }),
   regionsGeojson: endpoint({ method: 'GET', path: '/regions.geojson', may: 'read', summary: 'All regions as GeoJSON', reply: regions.featureCollection, contentType: 'application/geo+json' }),
+  measureOutline: endpoint({ method: 'POST', path: '/regions/measure', may: 'region:edit', summary: 'An outline as it would be kept, and how many whole water cells each feed has in it; nothing is saved', body: outlines.measureRequest, reply: outlines.measurement }),
+  importRegions: endpoint({ method: 'POST', path: '/regions/import', may: 'region:edit', summary: 'Read areas from a GeoJSON, KML or zipped shapefile (field "file", at most 10 MB); saved only with save=true', multipart: true, query: outlines.importQuery, reply: outlines.importReply }),
   region: endpoint({ method: 'GET', path: '/regions/:id', may: 'read', summary: 'One region', params: idParam, reply: regions.region }),
   changeRegion: endpoint({ method: 'PATCH', path: '/regions/:id', may: 'region:edit', summary: 'Change a region', params: idParam, body: regions.regionChange, reply: regions.region }),
   retireRegion: endpoint({ method: 'DELETE', path: '/regions/:id', may: 'region:edit', summary: 'Retire a region; its history stays', params: idParam, status: 204 }),
+  regionVersions: endpoint({ method: 'GET', path: '/regions/:id/versions', may: 'read', summary: 'Every version of its outline, newest first', params: idParam, reply: z.object({ items: z.array(outlines.regionVersion), nextCursor: z.null() }) }),
   regionSeries: endpoint({ method: 'GET', path: '/regions/:id/series', may: 'read', summary: 'Figures of every view', params: idParam, query: series.seriesQuery, reply: series.series }),
   regionBaseline: endpoint({ method: 'GET', path: '/regions/:id/baseline', may: 'read', summary: 'What is usual by day of year', params: idParam, query: series.baselineQuery, reply: series.baseline }),
   regionEvents: endpoint({ method: 'GET', path: '/regions/:id/events', may: 'read', summary: 'Events', params: idParam, query: series.eventsQuery, reply: z.object({ items: z.array(series.bloomEvent), nextCursor: z.null() }) }),
@@ -96,6 +100,8 @@ export const endpoints = {
   deleteSubscription: endpoint({ method: 'DELETE', path: '/subscriptions/:id', may: 'account:own', summary: 'End a subscription', params: idParam, status: 204 }),
 
   exportSeries: endpoint({ method: 'GET', path: '/exports/regions/:id/series.csv', may: 'read', summary: 'The series as CSV', params: idParam, query: series.seriesQuery, contentType: 'text/csv' }),
+  exportOutline: endpoint({ method: 'GET', path: '/exports/regions/:id/outline.geojson', may: 'read', summary: 'Its outline as GeoJSON (RFC 7946, cut at 180 degrees)', params: idParam, query: outlines.outlineQuery, contentType: 'application/geo+json' }),
+  exportOutlineKml: endpoint({ method: 'GET', path: '/exports/regions/:id/outline.kml', may: 'read', summary: 'Its outline as KML', params: idParam, query: outlines.outlineQuery, contentType: 'application/vnd.google-earth.kml+xml' }),
   exportAlerts: endpoint({ method: 'GET', path: '/exports/alerts.csv', may: 'read', summary: 'Alerts as CSV', query: alerts.alertsQuery, contentType: 'text/csv' }),
 
   listJobs: endpoint({ method: 'GET', path: '/jobs', may: 'job:any', summary: 'Jobs, newest first', query: page.extend({ state: z.enum(running.jobStates).optional() }), reply: list(running.job) }),

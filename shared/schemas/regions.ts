@@ -49,6 +49,8 @@ export const regionChange = z.object({
   version,
   name: regionSettings.name.optional(),
   geometry: z.unknown().optional(),
+  /** Redraw although an event is running: it ends with that reason. */
+  confirm: z.boolean().default(false),
   inland: inland,
   timeZone: regionSettings.timeZone.optional(),
   site: regionSettings.site.optional(),

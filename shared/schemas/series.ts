@@ -102,6 +102,10 @@ export const bloomEvent = z.object({
   peakTimesUsual: z.number().nullable(),
   severity,
   usableViews: z.number().int(),
+  /** Version of the outline it was found over. */
+  geometryVersion: z.number().int(),
+  /** Why it ended, where that was not what the water did. */
+  endedBecause: z.string().nullable(),
   alertId: id.nullable(),
 })
 export type BloomEventItem = z.infer<typeof bloomEvent>

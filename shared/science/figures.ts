@@ -48,7 +48,7 @@ export interface Figures {
 }
 
 /** A share this close to 1 is a whole cell. */
-const wholeShare = 1 - 1e-9
+export const wholeShare = 1 - 1e-9
 const percentiles = [0.1, 0.25, 0.5, 0.75, 0.9, 0.95] as const
 
 interface Seen {

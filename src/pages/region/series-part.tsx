@@ -86,7 +86,7 @@ function Chart({ region, feedId, feed, statistic, definition, coverageFloor, con
       statistic={statistic}
       coverageFloor={coverageFloor}
       threshold={threshold}
-      events={events.data?.items}
+      events={events.data?.items.filter((event) => event.geometryVersion === region.geometryVersion)}
       scale={feed?.scale}
       span={{ from: first, to: last > today ? last : today }}
       first={wide ? 'all' : 'year'}

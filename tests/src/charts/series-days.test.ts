@@ -36,7 +36,7 @@ const series: Series = {
 const event: BloomEventItem = {
   id: 5, regionId: 1, feedId: 1, ruleId: 1, ruleVersion: 1, phase: 'running', lastUnflaggedBefore: '2026-06-01', firstFlagged: '2026-06-02',
   lastFlagged: '2026-06-06', firstUnflaggedAfter: null, triggerDay: '2026-06-06', peakDay: '2026-06-06', peakValue: 4.2, peakTimesUsual: 2.8,
-  severity: 'Minor', usableViews: 2, alertId: null,
+  severity: 'Minor', usableViews: 2, geometryVersion: 1, endedBecause: null, alertId: null,
 }
 const threshold = ruleThreshold(defaultRule(), usual())
 const laid = seriesDays({ series, baseline: usual(), statistic: 'median', coverageFloor: 0.25, threshold, from: '2026-06-01', to: '2026-06-06' })

@@ -22,7 +22,7 @@ export function anAlert(change: Partial<Alert> = {}): Alert {
     event: {
       id: 5, regionId: 3, feedId: 1, ruleId: 2, ruleVersion: 4, phase: 'running', lastUnflaggedBefore: '2026-06-06', firstFlagged: '2026-06-08',
       lastFlagged: '2026-06-10', firstUnflaggedAfter: null, triggerDay: '2026-06-10', peakDay: '2026-06-10', peakValue: 4.89, peakTimesUsual: 3.4,
-      severity: 'Severe', usableViews: 2, alertId: 41,
+      severity: 'Severe', usableViews: 2, geometryVersion: 1, endedBecause: null, alertId: 41,
     },
     cautions: ['Satellite colour shows neither species nor toxins.'],
     entries: [{ id: 1, at: '2026-06-11T03:00:00Z', kind: 'raised', by: null, text: 'Raised as Severe: second flagged view in 3 days' }],

@@ -1,0 +1,24 @@
+import { newRegion } from '../../shared/schemas/regions'
+import type { ImportReply } from '../../shared/schemas/outlines'
+import type { Person } from '../accounts/person'
+import { ApiError } from '../api-error'
+import type { Context } from '../context'
+import { drawRegion } from './draw-region'
+
+/** What a file of areas holds, each as it would be kept or why not; with `save` each that can be is drawn at once. */
+export async function importRegions(context: Context, person: Person, file: { name: string; bytes: Buffer }, save: boolean): Promise<ImportReply> {
+  const read = await context.workers.light('readAreas', { bytes: file.bytes, fileName: file.name, inland: false })
+  if ('refusedFile' in read) throw new ApiError('not-valid', read.refusedFile, { fields: { file: read.refusedFile } })
+  const items: ImportReply['items'] = []
+  for (const { name, outcome } of read.areas) {
+    if ('outline' in outcome) {
+      const { geometry, areaKm2, repairs, marks } = outcome.outline
+      const region = save ? await drawRegion(context, person, newRegion.parse({ name, geometry })) : null
+      items.push({ name, found: { geometry, areaKm2, repairs, marks }, refusal: null, regionId: region?.id ?? null })
+      continue
+    }
+    const { sentence, place, reason } = outcome.refused
+    items.push({ name, found: null, refusal: { sentence, reason, place: place && { longitude: place[0]!, latitude: place[1]! } }, regionId: null })
+  }
+  return { format: read.format, fileName: file.name, notes: read.notes, items }
+}
