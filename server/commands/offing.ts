@@ -1,101 +1,160 @@
-import { createReadStream } from 'node:fs'
-import { stat } from 'node:fs/promises'
-import { basename } from 'node:path'
+import { fileURLToPath } from 'node:url'
 import { parseArgs } from 'node:util'
+import { instant } from '../../shared/schemas/common'
 import type { Context } from '../context'
-import { EnvNotValid, readEnv } from '../env'
-import { inspectGrid } from '../grids/inspect'
-import { LayerRefused } from '../grids/layer-refused'
-import { takeInstanceLock } from '../instance-lock'
-import { startTicker } from '../jobs/ticker'
-import { voidLeases } from '../jobs/queue'
+import { readEnv } from '../env'
 import { openContext } from '../open-context'
-import { receiveFile } from '../pipeline/receive-file'
-import { storeStream } from '../pipeline/stored-files'
 import { inProcessWorkers } from '../workers/in-process-workers'
+import { startWorkers, type Workers } from '../workers/workers'
+import { BadUsage } from './bad-usage'
 import { createAdmin } from './create-admin'
 import { createToken } from './create-token'
+import { ingestFiles } from './ingest-files'
+import { inspectFiles } from './inspect-files'
 import { readStdin } from './read-stdin'
 
 const usage = `npm run offing -- COMMAND
   migrate                                     bring the database to the newest schema
   create-admin --email E --password-stdin     make an admin, or give somebody the role and a new password
   create-token --email E                      make a personal token; it is the last line printed
-  inspect FILE                                say what is understood of a file
-  ingest FILE...                              take files in (only queued while a server runs)`
+  inspect FILE...                             say what is understood of a file, as JSON
+  ingest [--feed ID] [--observed-at T] FILE...  take files in (only queued while a server runs)
 
-const { positionals, values } = parseArgs({
-  allowPositionals: true,
-  options: { email: { type: 'string' }, 'password-stdin': { type: 'boolean' } },
-})
-const [command, ...files] = positionals
+Ends with 0 when all went well, 1 when a file was refused or something failed, 2 when called wrongly.`
 
-const commands: Record<string, () => Promise<void>> = {
-  migrate: () => withContext(async () => console.log('The database has the newest schema.')),
-  'create-admin': () =>
-    withContext(async (context) => {
-      const password = values['password-stdin'] ? await readStdin() : ''
-      if (!password) throw new Error('Give the password on standard input, with --password-stdin.')
-      const { created } = await createAdmin(context, { email: emailGiven(), password })
-      console.log(created ? `${emailGiven()} is an admin now.` : `${emailGiven()} was there already: now an admin, with the new password.`)
+const options = {
+  email: { type: 'string' },
+  'password-stdin': { type: 'boolean' },
+  feed: { type: 'string' },
+  'observed-at': { type: 'string' },
+  help: { type: 'boolean', short: 'h' },
+} as const
+
+/** Which options each command knows: one meant for another is a mistake to be told, not to be passed over. */
+const knows: Record<string, readonly (keyof typeof options)[]> = {
+  migrate: [],
+  'create-admin': ['email', 'password-stdin'],
+  'create-token': ['email'],
+  inspect: [],
+  ingest: ['feed', 'observed-at'],
+}
+
+type Values = ReturnType<typeof parsed>['values']
+
+/** Each answers whether all went well. */
+const commands: Record<string, (files: string[], values: Values) => Promise<boolean>> = {
+  migrate: (files) =>
+    withContext(noFiles(files), async () => {
+      console.log('The database has the newest schema.')
+      return true
     }),
-  'create-token': () => withContext(async (context) => console.log(await createToken(context, { email: emailGiven() }))),
-  inspect: async () => {
-    for (const file of filesGiven()) console.log(JSON.stringify(await inspectGrid(file, basename(file)), null, 2))
+  'create-admin': (files, values) => {
+    const email = emailGiven(values)
+    if (!values['password-stdin']) throw new BadUsage('Give the password on standard input, with --password-stdin.')
+    return withContext(noFiles(files), async (context) => {
+      const password = await readStdin()
+      if (!password) throw new BadUsage('Nothing came on standard input: the password is read from there.')
+      const { created } = await createAdmin(context, { email, password })
+      console.log(created ? `${email} is an admin now.` : `${email} was there already: now an admin, with the new password.`)
+      return true
+    })
   },
-  ingest: () => withContext(ingest),
+  'create-token': (files, values) => {
+    const email = emailGiven(values)
+    return withContext(noFiles(files), async (context) => {
+      console.log(await createToken(context, { email }))
+      return true
+    })
+  },
+  inspect: async (files) => {
+    const workers = threads()
+    try {
+      return await inspectFiles(workers, filesGiven(files))
+    } finally {
+      await workers.close()
+    }
+  },
+  ingest: (files, values) => {
+    const paths = filesGiven(files)
+    const asked = { paths, feedId: feedGiven(values), observedAt: timeGiven(values) }
+    return withContext(threads(), (context) => ingestFiles(context, asked))
+  },
 }
 
 try {
-  const run = command === undefined ? undefined : commands[command]
-  if (!run) throw new Error(command === undefined ? usage : `There is no command ${command}.\n\n${usage}`)
-  await run()
+  process.exitCode = (await run()) ? 0 : 1
 } catch (error) {
-  const plain = error instanceof LayerRefused || error instanceof EnvNotValid || error instanceof Error
-  console.error(plain ? error.message : error)
-  process.exitCode = 1
+  console.error(error instanceof BadUsage ? `${error.message}\n\n${usage}` : error instanceof Error ? error.message : error)
+  process.exitCode = error instanceof BadUsage ? 2 : 1
 }
 
-async function ingest(context: Context): Promise<void> {
-  const lock = await takeInstanceLock(context.env.dataDir)
-  const ids: number[] = []
-  for (const path of filesGiven()) {
-    await stat(path)
-    const arrived = await storeStream(context.env, createReadStream(path))
-    const file = await receiveFile(context, { name: basename(path), arrived, origin: 'command', userId: null, feedId: null, observedAt: null })
-    ids.push(file.id)
+async function run(): Promise<boolean> {
+  const { positionals, values } = parsed()
+  const [name, ...files] = positionals
+  if (values.help) {
+    console.log(usage)
+    return true
   }
-  if (!lock) {
-    console.log(`${ids.length} queued; the running server takes them from here.`)
-    return
+  if (name === undefined) throw new BadUsage('Say which command.')
+  const command = Object.hasOwn(commands, name) ? commands[name] : undefined
+  if (!command) throw new BadUsage(`There is no command ${name}.`)
+  const strange = Object.keys(values).find((option) => !knows[name]!.some((known) => known === option))
+  if (strange !== undefined) throw new BadUsage(`${name} has no option --${strange}.`)
+  return command(files, values)
+}
+
+function parsed() {
+  try {
+    return parseArgs({ allowPositionals: true, options })
+  } catch (error) {
+    throw new BadUsage(error instanceof Error ? error.message.split('. To specify')[0]!.replace(/\.?$/, '.') : String(error), { cause: error })
   }
-  await voidLeases(context)
-  const ticker = startTicker(context, { cron: false })
-  await ticker.drain()
-  await ticker.stop()
-  await lock.release()
-  for (const file of await context.models.files.findAll({ where: { id: ids } })) {
-    console.log(`${file.name}: ${file.status}${file.refusal ? `. ${file.refusal.message}` : ''}${file.waitingFor ? `. ${file.waitingFor}` : ''}`)
-  }
+}
+
+/** Files of others are read in a thread that can be ended, as in the server. */
+function threads(): Workers {
+  return startWorkers(fileURLToPath(new URL('./worker.js', import.meta.url)))
 }
 
 /** Commands need no session secret: they sign nobody in. */
-async function withContext(use: (context: Context) => Promise<void>): Promise<void> {
-  const env = readEnv('development')
-  const context = await openContext({ env: { ...env, logLevel: 'warn' }, workers: inProcessWorkers() })
+async function withContext(workers: Workers, use: (context: Context) => Promise<boolean>): Promise<boolean> {
   try {
-    await use(context)
+    const env = readEnv('development')
+    const context = await openContext({ env: { ...env, logLevel: 'warn' }, workers })
+    try {
+      return await use(context)
+    } finally {
+      await context.db.close()
+    }
   } finally {
-    await context.db.close()
+    await workers.close()
   }
 }
 
-function emailGiven(): string {
-  if (!values.email) throw new Error('Say whose, with --email E.')
+function noFiles(files: string[]): Workers {
+  if (files.length > 0) throw new BadUsage(`${files[0]!} is too much: this command takes no files.`)
+  return inProcessWorkers()
+}
+
+function emailGiven(values: Values): string {
+  if (!values.email) throw new BadUsage('Say whose, with --email E.')
   return values.email
 }
 
-function filesGiven(): string[] {
-  if (files.length === 0) throw new Error('Name at least one file.')
+function filesGiven(files: string[]): string[] {
+  if (files.length === 0) throw new BadUsage('Name at least one file.')
   return files
+}
+
+function feedGiven({ feed }: Values): number | null {
+  if (feed === undefined) return null
+  if (!/^[1-9]\d{0,14}$/.test(feed)) throw new BadUsage('--feed wants the number of a feed.')
+  return Number(feed)
+}
+
+function timeGiven(values: Values): number | null {
+  const text = values['observed-at']
+  if (text === undefined) return null
+  if (!instant.safeParse(text).success) throw new BadUsage('--observed-at wants an instant such as 2026-06-11T12:40:00Z.')
+  return Date.parse(text)
 }

@@ -6,7 +6,7 @@ import { backfillRegion } from '../pipeline/backfill-region'
 import { LayerRefused } from '../grids/layer-refused'
 import { judgeRegionJob } from '../pipeline/judge-region'
 import { processFile } from '../pipeline/process-file'
-import { refuseStored } from '../pipeline/refuse-file'
+import { refuseFile, refuseStored } from '../pipeline/refuse-file'
 import { rereadViews } from '../pipeline/reread-views'
 import { pullFeed } from '../pull/pull-feed'
 import { takeJob, type JobKind, type JobLane } from './queue'
@@ -71,4 +71,13 @@ async function fail(context: Context, job: JobRecord, error: unknown): Promise<v
       { transaction: tx },
     )
   })
+  if (job.state === 'failed' && job.kind === 'process-file') await giveUpFile(context, job, lastError)
+}
+
+/** A file that no attempt could read is refused: it waits for nothing, and can be looked at, sent again or deleted. */
+async function giveUpFile(context: Context, job: JobRecord, reason: string): Promise<void> {
+  const file = await context.models.files.findByPk(Number(job.payload['fileId']))
+  if (!file || file.status !== 'processing') return
+  const sentence = `Reading this file failed ${job.attempts} times by a fault of Offing itself. It was logged; send the file again to have it tried again.`
+  await refuseFile(context, file, new LayerRefused('reading-failed', sentence, { attempts: job.attempts, reason: reason.slice(0, 300) }))
 }

@@ -209,6 +209,24 @@ describe('the road of a layer', () => {
     expect(await medians(region.id, feed.id)).toMatchObject({ day: ['2026-06-10'], median: [2] })
   })
 
+  it('refuses a file that no attempt could read, so that it waits for nothing', async () => {
+    await aFeed(context, person)
+    const { heavy } = context.workers
+    const file = await send(context, await seaFile([day('2026-06-10', 2)]))
+    context.workers.heavy = () => Promise.reject(new Error('no memory for it'))
+    for (let attempt = 0; attempt < 5; attempt++) {
+      await runJobs(context)
+      context.clock.pass(200_000)
+    }
+    await file.reload()
+    expect(file).toMatchObject({ status: 'refused', refusal: { code: 'reading-failed', details: { attempts: 5, reason: 'no memory for it' } } })
+    context.workers.heavy = heavy
+    await send(context, await seaFile([day('2026-06-10', 2)]))
+    await runJobs(context)
+    await file.reload()
+    expect(file.status).toBe('processed')
+  })
+
   it('reads the history of a newly drawn region', async () => {
     const feed = await aFeed(context, person)
     await send(context, await seaFile([day('2026-06-09', 3), day('2026-06-10', 2)]))
