@@ -25,9 +25,10 @@ export interface Lane<Answer> {
 
 /**
  * One thread that does one task at a time, in order. It is replaced before the next task whenever it was ended, ended
- * itself, or answered that it is spent. The module must answer its own faults: a rejection means that the thread is gone.
+ * itself, or answered that it is spent. It is greeted first, so that a module that does not load is told from a task that
+ * ends its thread; other faults the module answers itself.
  */
-export function createLane<Answer>(module: string, isSpent: (answer: Answer) => boolean): Lane<Answer> {
+export function createLane<Answer>(module: string, isSpent: (answer: Answer) => boolean, greeting: unknown): Lane<Answer> {
   const start = () => {
     const made = new Piscina({ filename: module, minThreads: 1, maxThreads: 1, idleTimeout: Infinity })
     // An idle thread that fails holds no task; the pool starts another by itself.
@@ -35,17 +36,20 @@ export function createLane<Answer>(module: string, isSpent: (answer: Answer) => 
   }
   let pool = start()
   let closed = false
+  let loaded: Promise<unknown> | null = null
   let last: Promise<unknown> = Promise.resolve()
 
   async function replace(): Promise<void> {
     const old = pool
     await old.destroy()
+    loaded = null
     if (!closed) pool = start()
   }
 
   async function inTurn(call: unknown, { signal, seconds }: LaneOptions): Promise<Answer> {
     if (closed) throw new Error('The workers are closed.')
     signal?.throwIfAborted()
+    await (loaded ??= pool.run(greeting))
     const ending = new AbortController()
     const timer = setTimeout(() => ending.abort(), seconds * 1000)
     try {

@@ -66,6 +66,8 @@ export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
 
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */
 export interface Tasks extends PictureTasks, OutlineTasks {
+  /** Shows that the thread has come up. */
+  greet: { input: null; output: true }
   hashPassword: { input: { password: string; cost?: number }; output: string }
   comparePassword: { input: { password: string; hash: string }; output: boolean }
   inspectFile: { input: { path: string; fileName: string }; output: Seen }

@@ -27,7 +27,7 @@ const readsFiles: ReadonlySet<keyof Tasks> = new Set(['inspectFile', 'summariseV
 /** Starts the threads on the bundled worker (`npm run build:server` makes it). */
 export function startWorkers(bundle: string, seconds: Partial<Record<keyof Tasks, number>> = {}): Workers {
   if (!existsSync(bundle)) throw new Error(`The worker has not been built: ${bundle} is missing. Run: npm run build`)
-  const start = () => createLane<Outcome<unknown>>(bundle, (outcome) => outcome.spent)
+  const start = () => createLane<Outcome<unknown>>(bundle, (outcome) => outcome.spent, { task: 'greet', input: null })
   const [light, heavy] = [start(), start()]
   const limits = { ...secondsFor, ...seconds }
   return {

@@ -29,7 +29,7 @@ beforeAll(async () => {
 afterEach(() => lane.close())
 afterAll(() => rm(folder, { recursive: true }))
 
-const begin = () => (lane = createLane<Answer>(module, (answer) => answer.spent))
+const begin = () => (lane = createLane<Answer>(module, (answer) => answer.spent, 'go'))
 const ask = (call: string, seconds = 30, signal?: AbortSignal) => lane.run(call, { seconds, signal })
 
 describe('a lane of tasks', () => {
@@ -60,6 +60,13 @@ describe('a lane of tasks', () => {
     const [ended, next] = await Promise.allSettled([ask('end'), ask('go')])
     expect(ended).toMatchObject({ status: 'rejected', reason: expect.any(ThreadEnded) })
     expect(next.status).toBe('fulfilled')
+  })
+
+  it('says what is wrong with a module that does not load, and blames no task for it', async () => {
+    lane = createLane<Answer>(join(folder, 'no-such-module.mjs'), () => false, 'go')
+    const error: unknown = await ask('go').catch((reason: unknown) => reason)
+    expect(error).not.toBeInstanceOf(ThreadEnded)
+    expect((error as Error).message).toContain('no-such-module')
   })
 
   it('survives a thread that fails between tasks', async () => {
