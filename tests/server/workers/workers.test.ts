@@ -76,7 +76,7 @@ describe('workers that read files', () => {
 
   it('carry a fault of their own across, and go on', async () => {
     workers = startWorkers(bundle)
-    await expect(workers.heavy('weighCells', { geometry: { type: 'Polygon', coordinates: [] }, grid: 'no grid' })).rejects.toThrow()
+    await expect(workers.heavy('weighCells', { geometry: { type: 'Polygon', coordinates: [] }, shoreBufferKm: 0, grid: 'no grid' })).rejects.toThrow()
     expect((await inspect(good)).report.variables[0]!.valid).toBe(2000)
   }, 60_000)
 })
