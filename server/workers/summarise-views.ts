@@ -1,6 +1,7 @@
-import { summarise } from '../../shared/science/figures'
+import { figuresOf, figuresRoom, type FiguresRoom } from '../../shared/science/figures'
 import { packHistogram } from '../../shared/science/histogram'
 import { mergeLayers, type LayerValues } from '../../shared/science/merge-views'
+import { regionOutline, type RegionOutline } from '../../shared/science/region-outline'
 import { maskedAreas } from './masked-areas'
 import type { MaskedValues } from './read-masked'
 import { readTiles } from './read-tiles'
@@ -17,7 +18,8 @@ interface RegionLayer extends MaskedValues, Omit<LayerValues, 'values'> {}
 interface Region {
   weights: RegionCellWeights
   plan: RegionPlan
-  weightKm2: Float64Array
+  outline: RegionOutline
+  room: FiguresRoom
   /** An outline without any water here is no mask for this region: every cell counts. */
   water: Uint8Array | undefined
 }
@@ -44,7 +46,7 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
         cellsOfView.set(view, collected)
         continue
       }
-      figures[view] = figuresOf(collected, region, input.scale)
+      figures[view] = viewFigures(collected, region, input.scale)
       cellsOfView.delete(view)
     }
   }
@@ -52,21 +54,18 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
 }
 
 function regionOf(weights: RegionCellWeights): Region {
-  return {
-    weights,
-    plan: planOf(weights, weights),
-    weightKm2: weights.share.map((share, i) => share * weights.areaKm2[i]!),
-    water: weights.water.some((cell) => cell === 1) ? weights.water : undefined,
-  }
+  const { share, areaKm2 } = weights
+  const water = weights.water.some((cell) => cell === 1) ? weights.water : undefined
+  return { weights, plan: planOf(weights, weights), room: figuresRoom(share.length), outline: regionOutline({ share, areaKm2, ...(water ? { water } : {}) }), water }
 }
 
 function madeWhen({ processingVersion, observedAt, endsAt, producedAt }: LayerPlace): Omit<LayerValues, 'values'> {
   return { processingVersion, observedAt, endsAt, producedAt }
 }
 
-function figuresOf(layers: RegionLayer[], { weights, weightKm2, water }: Region, scale: Input['scale']): ViewFigures {
+function viewFigures(layers: RegionLayer[], { weights, outline, room, water }: Region, scale: Input['scale']): ViewFigures {
   const values = layers.length === 1 ? layers[0]!.values : mergeLayers(layers, scale)
-  const { histogram, maxIndex, ...rest } = summarise({ values, share: weights.share, areaKm2: weights.areaKm2, weightKm2, ...(water ? { water } : {}) }, scale)
+  const { histogram, maxIndex, ...rest } = figuresOf(values, outline, scale, room)
   return {
     ...rest,
     maxCell: maxIndex === null ? null : weights.index[maxIndex]!,

@@ -1,21 +1,13 @@
+import { binnedQuantiles, type BinnedValues } from './binned-quantiles'
 import { binOfLog10, histogramLength, type AreaHistogram } from './histogram'
-import { sortTogether } from './sort-together'
-import { sortedQuantiles } from './weighted-quantile'
+import { isPart, isWater, isWhole, regionOutline, type RegionOutline, type RegionShares } from './region-outline'
 
 export type Scale = 'log10' | 'linear'
 
 /** The cells of one region, all of one length: what was seen of them, and how much of each lies inside. */
-export interface RegionCells {
+export interface RegionCells extends RegionShares {
   /** NaN is missing. */
   values: Float64Array
-  /** Share of the cell inside the region, 0..1. */
-  share: Float64Array
-  /** Area of the full cell in km2. */
-  areaKm2: Float64Array
-  /** Share times area, where it is at hand. */
-  weightKm2?: Float64Array
-  /** 1 where the mask says water; without a mask every cell is water. */
-  water?: Uint8Array
 }
 
 /** What one view says of a region. Null: no cell to say it from. */
@@ -47,48 +39,63 @@ export interface Figures {
   histogram: AreaHistogram
 }
 
-/** A share this close to 1 is a whole cell. */
-export const wholeShare = 1 - 1e-9
 const percentiles = [0.1, 0.25, 0.5, 0.75, 0.9, 0.95] as const
 
-interface Seen {
-  values: Float64Array
-  weights: Float64Array
-  count: number
-  /** Position of the highest value in the lists given. */
+/** Seen cells close together, and what one pass over them tells. */
+interface Seen extends BinnedValues {
+  /** log10 of the values; NaN at or below 0. */
+  logs: Float64Array
+  valid: number
+  wholeValid: number
+  validAreaKm2: number
+  seenWaterKm2: number
+  nonPositive: number
   maxIndex: number | null
 }
 
-function countCells({ values, share, water }: RegionCells, weights: Float64Array) {
-  const sums = { cells: 0, valid: 0, wholeCells: 0, wholeValid: 0, validAreaKm2: 0, waterAreaKm2: 0 }
-  let seenWaterKm2 = 0
-  for (let i = 0; i < values.length; i++) {
-    if (!(share[i]! > 0)) continue
-    const seen = Number.isFinite(values[i])
-    const whole = share[i]! >= wholeShare
-    sums.cells++
-    if (whole) sums.wholeCells++
-    if (whole && seen) sums.wholeValid++
-    if (seen) sums.valid++
-    if (seen) sums.validAreaKm2 += weights[i]!
-    if (water && !water[i]) continue
-    sums.waterAreaKm2 += weights[i]!
-    if (seen) seenWaterKm2 += weights[i]!
-  }
-  return { ...sums, coverage: sums.waterAreaKm2 > 0 ? seenWaterKm2 / sums.waterAreaKm2 : null }
+/** Memory for one view's figures, used again for the next: asking for it anew takes as long as the sums do. */
+export interface FiguresRoom {
+  values: Float64Array
+  weights: Float64Array
+  logs: Float64Array
+  bins: Uint8Array
+  sorted: { values: Float64Array; weights: Float64Array }
 }
 
-/** The cells that count, close together. */
-function seenCells(values: Float64Array, weights: Float64Array): Seen {
-  const seen: Seen = { values: new Float64Array(values.length), weights: new Float64Array(values.length), count: 0, maxIndex: null }
-  for (let i = 0; i < values.length; i++) {
+export function figuresRoom(cells: number): FiguresRoom {
+  const [values, weights, logs, sortedValues, sortedWeights] = Array.from({ length: 5 }, () => new Float64Array(cells)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array]
+  return { values, weights, logs, bins: new Uint8Array(cells), sorted: { values: sortedValues, weights: sortedWeights } }
+}
+
+function look(values: Float64Array, { weightKm2, kind }: RegionOutline, { values: kept, weights, logs, bins, sorted }: FiguresRoom): Seen {
+  const size = values.length
+  const binWeights = new Float64Array(histogramLength)
+  let [count, valid, wholeValid, validAreaKm2, seenWaterKm2, nonPositive, max] = [0, 0, 0, 0, 0, 0, -Infinity]
+  let maxIndex: number | null = null
+  for (let i = 0; i < size; i++) {
     const value = values[i]!
-    if (!Number.isFinite(value) || !(weights[i]! > 0)) continue
-    seen.values[seen.count] = value
-    seen.weights[seen.count++] = weights[i]!
-    if (seen.maxIndex === null || value > values[seen.maxIndex]!) seen.maxIndex = i
+    // Infinities less themselves are NaN too.
+    if (value - value !== 0 || !(kind[i]! & isPart)) continue
+    const weight = weightKm2[i]!
+    valid++
+    if (kind[i]! & isWhole) wholeValid++
+    validAreaKm2 += weight
+    if (kind[i]! & isWater) seenWaterKm2 += weight
+    if (!(weight > 0)) continue
+    const log = value > 0 ? Math.log10(value) : NaN
+    const bin = value > 0 ? binOfLog10(log) : 0
+    if (!(value > 0)) nonPositive++
+    if (maxIndex === null || value > max) {
+      max = value
+      maxIndex = i
+    }
+    kept[count] = value
+    weights[count] = weight
+    logs[count] = log
+    bins[count++] = bin
+    binWeights[bin]! += weight
   }
-  return seen
+  return { values: kept, weights, logs, bins, count, binWeights, room: sorted, valid, wholeValid, validAreaKm2, seenWaterKm2, nonPositive, maxIndex }
 }
 
 function meanOf({ values, weights, count }: Seen): number | null {
@@ -100,31 +107,22 @@ function meanOf({ values, weights, count }: Seen): number | null {
   return total > 0 ? sum / total : null
 }
 
-/** Area by value, and weighted mean and population standard deviation of log10 over the values above 0. */
-function logFigures({ values, weights, count }: Seen) {
-  const histogram = new Float64Array(histogramLength)
-  const logs = new Float64Array(count)
-  let [total, sum, nonPositive] = [0, 0, 0]
+/** Weighted mean and population standard deviation of log10 over the values above 0; null without any. */
+function logMoments({ logs, weights, count }: Seen): { mean: number; sd: number } | null {
   // Sums run over what is above the first log, so that equal values have no spread from rounding.
-  let first = NaN
+  let [first, total, sum] = [NaN, 0, 0]
   for (let i = 0; i < count; i++) {
-    const log = values[i]! > 0 ? Math.log10(values[i]!) : NaN
-    logs[i] = log
-    if (Number.isNaN(log)) {
-      nonPositive++
-      histogram[0]! += weights[i]!
-      continue
-    }
-    histogram[binOfLog10(log)]! += weights[i]!
+    const log = logs[i]!
+    if (Number.isNaN(log)) continue
     if (Number.isNaN(first)) first = log
     total += weights[i]!
     sum += weights[i]! * (log - first)
   }
-  if (!(total > 0)) return { histogram, nonPositive, log: null }
+  if (!(total > 0)) return null
   const mean = first + sum / total
   let squares = 0
-  for (let i = 0; i < count; i++) if (!Number.isNaN(logs[i])) squares += weights[i]! * (logs[i]! - mean) ** 2
-  return { histogram, nonPositive, log: { mean, sd: Math.sqrt(squares / total) } }
+  for (let i = 0; i < count; i++) if (!Number.isNaN(logs[i]!)) squares += weights[i]! * (logs[i]! - mean) * (logs[i]! - mean)
+  return { mean, sd: Math.sqrt(squares / total) }
 }
 
 /**
@@ -133,33 +131,38 @@ function logFigures({ values, weights, count }: Seen) {
  * geometricMean and sdLog10 (population) take those above 0; on the linear scale these two are null. The histogram
  * holds every valid cell. Lists of different lengths are a RangeError.
  */
-export function summarise(cells: RegionCells, scale: Scale = 'log10'): Figures {
-  const { values, share, areaKm2, water } = cells
-  if ([share, areaKm2, water ?? values].some((list) => list.length !== values.length)) {
-    throw new RangeError('Values, shares, areas and mask of a region have one length.')
-  }
-  const weights = cells.weightKm2 ?? share.map((part, i) => part * areaKm2[i]!)
-  const seen = seenCells(values, weights)
-  const { histogram, nonPositive, log } = logFigures(seen)
-  const mean = meanOf(seen)
-  sortTogether(seen.values, seen.weights, seen.count)
-  const [p10 = null, p25 = null, median = null, p75 = null, p90 = null, p95 = null] =
-    sortedQuantiles(seen.values, seen.weights, seen.count, percentiles)
-  const logarithmic = scale === 'log10' ? log : null
+export function summarise({ values, ...shares }: RegionCells, scale: Scale = 'log10'): Figures {
+  return figuresOf(values, regionOutline(shares), scale)
+}
+
+/** The same, where the outline has been worked out before; `room` is for as many cells or more. */
+export function figuresOf(values: Float64Array, outline: RegionOutline, scale: Scale, room = figuresRoom(values.length)): Figures {
+  if (values.length !== outline.kind.length) throw new RangeError('Values, shares, areas and mask of a region have one length.')
+  const seen = look(values, outline, room)
+  const log = scale === 'log10' ? logMoments(seen) : null
+  const [p10 = null, p25 = null, median = null, p75 = null, p90 = null, p95 = null] = binnedQuantiles(seen, percentiles)
+  const { valid, wholeValid, validAreaKm2, nonPositive, maxIndex } = seen
+  const { cells, wholeCells, waterAreaKm2 } = outline
   return {
-    ...countCells(cells, weights),
-    mean,
-    geometricMean: logarithmic && 10 ** logarithmic.mean,
+    cells,
+    valid,
+    wholeCells,
+    wholeValid,
+    validAreaKm2,
+    waterAreaKm2,
+    coverage: waterAreaKm2 > 0 ? seen.seenWaterKm2 / waterAreaKm2 : null,
+    mean: meanOf(seen),
+    geometricMean: log && 10 ** log.mean,
     median,
     p10,
     p25,
     p75,
     p90,
     p95,
-    max: seen.maxIndex === null ? null : values[seen.maxIndex]!,
-    maxIndex: seen.maxIndex,
-    sdLog10: logarithmic && logarithmic.sd,
+    max: maxIndex === null ? null : values[maxIndex]!,
+    maxIndex,
+    sdLog10: log && log.sd,
     nonPositive,
-    histogram,
+    histogram: seen.binWeights,
   }
 }

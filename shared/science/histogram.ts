@@ -13,9 +13,9 @@ export const histogramLength = bins + 2
 /** Place of a value among the bins, as a fraction, by its log10: 0 at 0.001, 120 at 1000. */
 function placeOf(log10: number): number {
   const place = (log10 - lowestExponent) * binsPerDecade
-  const edge = Math.round(place)
+  const past = place - Math.floor(place)
   // 0.001 and its like sit on an edge, and the logarithm misses it by its last digit.
-  return Math.abs(place - edge) < 1e-9 ? edge : place
+  return past > 1 - 1e-9 ? Math.ceil(place) : past < 1e-9 ? Math.floor(place) : place
 }
 
 /** The position of a value in an `AreaHistogram`. */

@@ -1,7 +1,7 @@
 import { sortTogether } from './sort-together'
 
 /** Sums of weights that should meet a share exactly may miss it by rounding; this much of the total is let pass. */
-const rounding = 1e-12
+export const shareRounding = 1e-12
 
 /**
  * Weighted inverse distribution (type 1): for each share p in `shares` (0..1, else RangeError) the smallest value whose
@@ -33,7 +33,7 @@ export function sortedQuantiles(values: Float64Array, weights: Float64Array, cou
   let total = 0
   for (let i = 0; i < count; i++) cumulated[i] = total += weights[i]!
   return shares.map((p) => {
-    const needed = (p - rounding) * total
+    const needed = (p - shareRounding) * total
     let [low, high] = [0, count - 1]
     while (low < high) {
       const middle = (low + high) >> 1

@@ -25,7 +25,7 @@ export interface TileCells {
 const present = 1
 const wide = 2
 const withReasons = 4
-const magic = 'OFFTILE1'
+const magic = 'OFFTILE2'
 const indexEntry = 16
 const headBytes = 8
 const empty = new Uint8Array(0)
@@ -91,9 +91,20 @@ export function unpackTile(flags: number, bytes: Uint8Array, cells: number): Til
   const mask = own.subarray(headBytes + length, headBytes + length + Math.ceil(cells / 8))
   const seen = flags & wide ? new Float64Array(inflated(numbers, count * 8, 8).buffer) : new Float32Array(numbers.buffer, numbers.byteOffset, count)
   if (numbers.length !== length || mask.length * 8 < cells || (!(flags & wide) && length !== count * 4)) throw new RangeError('These bytes are no tile of this size.')
-  for (let i = 0, at = 0; i < cells; i++) if (mask[i >> 3]! & (1 << (i & 7))) values[i] = seen[at++]!
+  spread(seen, mask, values)
   if (!(flags & withReasons)) return { values, reasons: null }
   return { values, reasons: new Uint32Array(inflated(own.subarray(headBytes + length + mask.length), cells * 4, 4).buffer) }
+}
+
+/** Puts the seen values where the mask has a bit, eight cells at a time where all or none were seen. */
+function spread(seen: Float32Array | Float64Array, mask: Uint8Array, values: Float64Array): void {
+  for (let byte = 0, at = 0; byte < mask.length; byte++) {
+    const bits = mask[byte]!
+    if (bits === 0) continue
+    const first = byte * 8
+    if (bits === 255) for (let i = 0; i < 8; i++) values[first + i] = seen[at++]!
+    else for (let i = 0; i < 8; i++) if (bits & (1 << i)) values[first + i] = seen[at++]!
+  }
 }
 
 function countValues(values: Float64Array): { count: number; narrow: boolean } {
@@ -124,7 +135,9 @@ function inflated(bytes: Uint8Array, length: number, width: number): Uint8Array 
 
 /** The whole file. Absent tiles are those not in the map. */
 export function encodePack(header: PackHeader, tiles: ReadonlyMap<number, PackedTile>): Buffer {
-  const text = Buffer.from(JSON.stringify(header))
+  // The index stands at a multiple of four bytes.
+  const json = JSON.stringify(header)
+  const text = Buffer.from(json + ' '.repeat((4 - (Buffer.byteLength(json) % 4)) % 4))
   const index = Buffer.alloc(tileCount(header) * indexEntry)
   const start = magic.length + 4 + text.length + index.length + 4
   let offset = start
@@ -154,16 +167,12 @@ export function decodeFront(front: Buffer, shape: PackShape): { header: PackHead
   const end = front.length - 4
   if (crc32(front.subarray(0, end)) !== front.readUInt32LE(end)) return null
   const textLength = front.readUInt32LE(magic.length)
+  if (textLength % 4 !== 0) return null
   const header = JSON.parse(front.toString('utf8', magic.length + 4, magic.length + 4 + textLength)) as PackHeader
   if (header.rows !== shape.rows || header.columns !== shape.columns) return null
-  const index = magic.length + 4 + textLength
+  const index = new Uint32Array(front.buffer, front.byteOffset + magic.length + 4 + textLength, tileCount(shape) * 4)
   return {
     header,
-    entries: (tile) => ({
-      flags: front.readUInt32LE(index + tile * indexEntry),
-      offset: front.readUInt32LE(index + tile * indexEntry + 4),
-      length: front.readUInt32LE(index + tile * indexEntry + 8),
-      check: front.readUInt32LE(index + tile * indexEntry + 12),
-    }),
+    entries: (tile) => ({ flags: index[tile * 4]!, offset: index[tile * 4 + 1]!, length: index[tile * 4 + 2]!, check: index[tile * 4 + 3]! }),
   }
 }
