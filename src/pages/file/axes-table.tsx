@@ -32,8 +32,8 @@ export function AxesTable({ variable }: { variable: ReportVariable }) {
             <Td className="fig whitespace-nowrap">{axis.coordinate && axis.coordinate !== axis.dimension ? `${axis.dimension} (${axis.coordinate})` : axis.dimension}</Td>
             <Td>{roleWords[axis.role]}</Td>
             <Td figures>{grouped(axis.size)}</Td>
-            <Td figures>{end(axis, axis.first, variable.times.first)}</Td>
-            <Td figures>{end(axis, axis.last, variable.times.last)}</Td>
+            <Td figures className="whitespace-nowrap">{end(axis, axis.first, variable.times.first)}</Td>
+            <Td figures className="whitespace-nowrap">{end(axis, axis.last, variable.times.last)}</Td>
             <Td figures>{axis.spacing !== null ? plainNumber(axis.spacing) : axis.size > 1 && axis.first !== null ? 'uneven' : ''}</Td>
             <Td>{axis.direction}</Td>
             <Td className="fig">{axis.unit ?? ''}</Td>

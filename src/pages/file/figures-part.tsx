@@ -1,7 +1,9 @@
+import { useQuery } from '@tanstack/react-query'
 import { useState } from 'react'
 import { Link } from 'react-router-dom'
 import { paths } from '../../../shared/paths'
 import type { OffingFile } from '../../../shared/schemas/files'
+import { feedsQuery } from '../../api/feeds'
 import { Button } from '../../components/ui/button'
 import { SectionHead } from '../../components/ui/page'
 import { Table, Td, Th, Tr } from '../../components/ui/table'
@@ -13,6 +15,8 @@ const atFirst = 20
 /** The figures this file gave, region by region; a region it did not see has hatch. */
 export function FiguresPart({ file }: { file: OffingFile }) {
   const [all, setAll] = useState(false)
+  const feeds = useQuery(feedsQuery()).data?.items
+  const several = new Set(file.summaries.map((row) => row.feedId)).size > 1
   if (file.summaries.length === 0) return null
   const shown = all ? file.summaries : file.summaries.slice(0, atFirst)
   return (
@@ -24,6 +28,7 @@ export function FiguresPart({ file }: { file: OffingFile }) {
         <thead>
           <tr>
             <Th>Region</Th>
+            {several && <Th>Feed</Th>}
             <Th>Day</Th>
             <Th figures>Median</Th>
             <Th figures>Geometric mean</Th>
@@ -38,6 +43,7 @@ export function FiguresPart({ file }: { file: OffingFile }) {
                   {row.regionName}
                 </Link>
               </Td>
+              {several && <Td>{feeds?.find((feed) => feed.id === row.feedId)?.name ?? `feed ${row.feedId}`}</Td>}
               <Td className="fig whitespace-nowrap">{dayWithYear(row.day)}</Td>
               {row.median === null && row.geometricMean === null ? (
                 <Td colSpan={2}>

@@ -1,15 +1,16 @@
-import { useState } from 'react'
+import { useState, type ReactNode } from 'react'
 import type { FileReport, OffingFile } from '../../../shared/schemas/files'
 import { KeptStrip } from './kept-strip'
 import { UnderstoodPart } from './understood-part'
 import { ValueHistogram } from './value-histogram'
 import { VariablesPart } from './variables-part'
 
-/** What was understood of a file, variable by variable: the one read first is shown first. */
-export function FileContents({ file, report }: { file: OffingFile; report: FileReport }) {
-  const [chosen, setChosen] = useState(report.feeds[0]?.variable)
-  const shown = report.variables.find((one) => one.name === chosen) ?? report.variables[0]
-  if (!shown) return null
+/** What was understood of one variable, first of one that was read; `children` is what came of it, before all the file holds. */
+export function FileContents({ file, report, children }: { file: OffingFile; report: FileReport; children: ReactNode }) {
+  const [chosen, setChosen] = useState<string>()
+  const named = (name: string | undefined) => report.variables.find((one) => one.name === name)
+  const shown = named(chosen) ?? named(report.feeds[0]?.variable) ?? report.variables[0]
+  if (!shown) return children
   const hidden = (shown.masked ?? []).map(({ reason }) => reason)
   return (
     <>
@@ -18,6 +19,7 @@ export function FileContents({ file, report }: { file: OffingFile; report: FileR
         <ValueHistogram variable={shown} />
       </div>
       {shown.found && <KeptStrip found={shown.found} hiddenFlags={hidden} gridCells={shown.grid.rows * shown.grid.columns} />}
+      {children}
       <VariablesPart file={file} shown={shown} onShow={setChosen} />
     </>
   )

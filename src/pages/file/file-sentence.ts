@@ -17,13 +17,13 @@ export function fileSentence(file: OffingFile): { statement: string; detail: str
   }
 }
 
-/** What the file was taken for, and that a person has to agree. */
+/** What the file was taken for, until a person agrees. */
 function readAs({ proposal, others, report, waitingFor }: OffingFile): string | undefined {
   const variable = report?.variables.find((one) => one.name === proposal?.variable)
   if (!proposal || !variable) return waitingFor ?? undefined
   const bands = proposal.quantity === 'reflectance' && others.length > 0 ? `${others.length + 1} bands of ` : ''
   const what = proposal.quantity === 'other' ? variable.name : `${bands}${proposal.quantity}`
-  return `Read as ${what}, ${countWords(variable.times.count, 'time step')}. What is tinted needs your word; nothing is read before you confirm.`
+  return `Understood as ${what}, ${countWords(variable.times.count, 'time step')}. No layer is made before a feed is confirmed.`
 }
 
 function figuresDetail({ summaries }: OffingFile): string {

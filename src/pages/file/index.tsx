@@ -38,6 +38,7 @@ export function Component() {
 function FileParts({ file }: { file: OffingFile }) {
   const me = useMe()
   const { statement, detail } = fileSentence(file)
+  const proposal = file.status === 'waiting' ? file.proposal : null
   return (
     <>
       <Statement above={<WhichFile file={file} />} detail={detail}>
@@ -50,15 +51,26 @@ function FileParts({ file }: { file: OffingFile }) {
         <Message key={warning}>{warning}</Message>
       ))}
       {file.status === 'waiting' && <MissedPart missed={file.report?.missed ?? []} />}
-      {file.status === 'waiting' && file.proposal ? (
-        <ConfirmFeed file={file} proposal={file.proposal} />
+      {proposal && <ConfirmFeed file={file} proposal={proposal} />}
+      {file.report && !proposal ? (
+        <FileContents file={file} report={file.report}>
+          <Given file={file} />
+        </FileContents>
       ) : (
-        file.report && <FileContents file={file} report={file.report} />
+        <Given file={file} />
       )}
+      {mayDeleteFile(me, file) && <DeleteFile file={file} />}
+    </>
+  )
+}
+
+/** What came of the file: layers, figures, and what its bands can give besides. */
+function Given({ file }: { file: OffingFile }) {
+  return (
+    <>
       <LayersPart file={file} />
       <FiguresPart file={file} />
       {file.status === 'processed' && <DerivablePart file={file} />}
-      {mayDeleteFile(me, file) && <DeleteFile file={file} />}
     </>
   )
 }

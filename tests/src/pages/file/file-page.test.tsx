@@ -180,10 +180,22 @@ describe('bands of reflectance', () => {
   it('once read, name the formulas they are enough for, and lead to the feed that can make them', async () => {
     feeds = [{ ...bandOf(443), ...facts, id: 7 }, { ...feedFields.parse({ name: 'By OC4', quantity: 'chlorophyll', variable: 'chlor_a', unit: 'mg m-3', scale: 'log10' }), ...facts, id: 8, derivedFrom: 7, derivedSources: [7], formula: 'oc4-seawifs', formulaVersion: '2019' }]
     open(withVariables(variables, { status: 'processed', proposal: null, waitingFor: null }, { feeds: [{ feedId: 7, variable: 'Rrs_443', layers: 1 }] }))
-    const made = (await screen.findByText(/Chlorophyll by band ratio OC4 SeaWiFS, version 2019/)).closest('li')!
-    expect(within(made).getByRole('link', { name: 'By OC4' })).toHaveAttribute('href', '/feeds/8')
-    const possible = screen.getByText('Bright-water (coccolith) screen, version 1').closest('li')!
-    expect(within(possible).getByRole('link', { name: 'Work it out…' })).toHaveAttribute('href', '/feeds/7?formula=bright-water&version=1')
-    expect(screen.queryByText(/^Turbidity/)).toBeNull()
+    const ratio = (await screen.findByText('Chlorophyll by band ratio OC4 SeaWiFS')).closest('li')!
+    expect(within(ratio).getByRole('link', { name: 'By OC4' })).toHaveAttribute('href', '/feeds/8')
+    expect(within(ratio).getByRole('link', { name: /^version 6/ })).toHaveAttribute('href', '/feeds/7?formula=oc4-seawifs&version=6')
+    const screenLine = screen.getByText('Bright-water (coccolith) screen').closest('li')!
+    expect(screenLine).toHaveTextContent('Coefficients from memory.')
+    expect(within(screenLine).getByRole('link')).toHaveAttribute('href', '/feeds/7?formula=bright-water&version=1')
+    expect(screen.queryByText('Turbidity')).toBeNull()
+  })
+})
+
+describe('figures of several feeds', () => {
+  it('say which feed each belongs to', async () => {
+    const row = { regionId: 1, regionName: 'Hallin Bank', day: '2026-06-10', coverage: 0.7, median: 0.0031, geometricMean: 0.003 }
+    feeds = [7, 8].map((id) => ({ ...feedFields.parse({ name: `Band ${id}`, quantity: 'reflectance', variable: 'Rrs_443', unit: 'sr-1', scale: 'linear' }), ...facts, id }))
+    open(withVariables([chl], { status: 'processed', proposal: null, waitingFor: null, summaries: [{ ...row, feedId: 7 }, { ...row, feedId: 8 }] }))
+    expect(await screen.findByRole('row', { name: /Hallin Bank Band 7 10 Jun 2026/ })).toBeVisible()
+    expect(screen.getByRole('row', { name: /Hallin Bank Band 8 10 Jun 2026/ })).toBeVisible()
   })
 })
