@@ -10,7 +10,7 @@ export async function oldestLayerAt(context: Context, feedId: number): Promise<n
   return row?.oldest ?? null
 }
 
-/** The days of a feed that have layers; the first and last day are those of the whole feed, whatever is asked for. */
+/** The days of a feed that have layers, those that a newer file replaced left out; the first and last day are those of the whole feed, whatever is asked for. */
 export async function feedDays(context: Context, feedId: number, { from, to }: { from?: string | undefined; to?: string | undefined }): Promise<FeedDays> {
   const span = await context.db.first<{ first: number | null; last: number | null }>(
     'SELECT min(observed_at) AS first, max(observed_at) AS last FROM layers WHERE feed_id = $feedId',
@@ -18,7 +18,7 @@ export async function feedDays(context: Context, feedId: number, { from, to }: {
   )
   const rows = await context.db.all<{ id: number; observedAt: number; endsAt: number | null; hasClock: number; suspectAt: number | null }>(
     `SELECT id, observed_at AS observedAt, ends_at AS endsAt, has_clock AS hasClock, suspect_at AS suspectAt FROM layers
-     WHERE feed_id = $feedId AND ($from IS NULL OR observed_at >= $from) AND ($to IS NULL OR observed_at < $to) ORDER BY observed_at, id`,
+     WHERE feed_id = $feedId AND replaced_by IS NULL AND ($from IS NULL OR observed_at >= $from) AND ($to IS NULL OR observed_at < $to) ORDER BY observed_at, id`,
     { feedId, from: from === undefined ? null : epochDayOf(from) * dayMs, to: to === undefined ? null : (epochDayOf(to) + 1) * dayMs },
   )
   const days = new Map<string, FeedDays['days'][number]>()

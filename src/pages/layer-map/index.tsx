@@ -14,6 +14,7 @@ import { Message } from '../../components/ui/message'
 import { Page } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
 import { clockTime } from '../../lib/dates'
+import { CellLine } from './cell-line'
 import { CellReadout } from './cell-readout'
 import { DayHead } from './day-head'
 import { DaySlider } from './day-slider'
@@ -98,6 +99,7 @@ function FeedOnMap({ feeds, feed, address }: { feeds: readonly Feed[]; feed: Fee
           aria-label="Days"
           className="fixed inset-x-0 bottom-[calc(3.75rem+env(safe-area-inset-bottom))] z-[900] grid gap-2 border-t border-ink bg-paper px-4 pt-2 pb-1 tab:static tab:border-0 tab:p-0"
         >
+          <CellLine layer={shown ? layer : undefined} at={address.at} />
           <DayHead day={day} days={days} onChange={(to) => go({ day: to })} />
           <DaySlider day={day} first={days.first ?? day} last={days.last ?? day} layersOf={days.layersOf} onChange={(to) => go({ day: to })} />
         </section>

@@ -39,10 +39,11 @@ export default function LayerSea({ day, feed, layerId, layer, regions, next, at,
   const corners = at && point?.layerId === layerId ? point?.cell?.corners : undefined
   return (
     <>
-      <SeaMap label={`${feed.name}, ${dayWithYear(day)}. Arrows move the map, Enter reads the cell in its middle.`} bounds={bounds} hatched aspect={wide ? 1.3 : 1.02} draggable>
+      <SeaMap label={`${feed.name}, ${dayWithYear(day)}. Arrows move the map, Enter reads the cell in its middle.`} bounds={bounds} hatched aspect={wide ? 1.3 : 1.02}>
         {layerId !== null && <LayerTiles layerId={layerId} />}
         <PrefetchTiles layerIds={next} />
-        <RegionOutlines regions={regions.map(({ id, name, geometry, standing }) => ({ id, name, geometry, state: standing.state }))} />
+        {/* How a region stands today says nothing about the day on the map: all outlines are plain. */}
+        <RegionOutlines regions={regions.map(({ id, name, geometry }) => ({ id, name, geometry, state: 'usual' }))} />
         <CellCross corners={corners} onPick={(latitude, longitude) => onPick({ latitude: rounded(latitude), longitude: rounded(longitude) })} />
       </SeaMap>
       <Legend layerId={layerId} feed={feed}>

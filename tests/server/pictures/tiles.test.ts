@@ -203,13 +203,16 @@ describe('what is usual at a cell', () => {
 })
 
 describe('the days of a feed', () => {
-  it('are those with a layer, with the ends of the whole feed', async () => {
+  it('are those with a layer that no newer file replaced, with the ends of the whole feed', async () => {
     const feed = await aFeed(context, person)
     await send(context, await seaFile(['2026-05-01T12:00:00Z', '2026-06-09T12:00:00Z', '2026-06-09T13:30:00Z', '2026-06-10T12:00:00Z'].map((at) => ({ at, value: 1 }))))
     await runJobs(context)
     const { body } = await get(`/feeds/${feed.id}/days?from=2026-06-01&to=2026-06-09`).expect(200)
     expect(body).toMatchObject({ feedId: feed.id, first: '2026-05-01', last: '2026-06-10' })
     expect(body.days.map((one: { day: string; layers: unknown[] }) => [one.day, one.layers.length])).toEqual([['2026-06-09', 2]])
+    const [replaced] = body.days[0].layers as { id: number }[]
+    await context.db.write((tx) => context.db.run('UPDATE layers SET replaced_by = file_id WHERE id = $id', { id: replaced!.id }, tx))
+    expect((await get(`/feeds/${feed.id}/days?from=2026-06-01&to=2026-06-09`)).body.days[0].layers).toHaveLength(1)
     expect((await get('/feeds/987654/days')).status).toBe(404)
   })
 })
