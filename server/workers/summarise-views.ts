@@ -33,11 +33,14 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
   const figures: ViewFigures[] = new Array(input.views.length)
   const users = viewsOfLayers(input)
   const cellsOfView = new Map<number, RegionLayer[]>()
+  let kept: Promise<void> | undefined
   for (const [at, layer] of input.layers.entries()) {
     const ofLayer = users[at]!.map((view) => regions[input.views[view]!.weights]!)
     const wanted = new Set(ofLayer.flatMap(({ plan }) => plan.tiles))
     if (wanted.size === 0) continue
     const tiles = await readTiles(layer, [...wanted], true)
+    await kept
+    kept = tiles.kept
     for (const [i, view] of users[at]!.entries()) {
       const region = ofLayer[i]!
       const collected = cellsOfView.get(view) ?? []
@@ -50,6 +53,7 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
       cellsOfView.delete(view)
     }
   }
+  await kept
   return figures
 }
 

@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto'
-import { closeSync, mkdirSync, openSync, readSync, renameSync, rmSync, writeFileSync } from 'node:fs'
+import { closeSync, openSync, readSync } from 'node:fs'
+import { mkdir, rename, rm, writeFile } from 'node:fs/promises'
 import { dirname } from 'node:path'
 import { crc32 } from 'node:zlib'
 import { decodeFront, encodePack, frontLength, tileBox, unpackTile, type PackHeader, type PackShape, type PackedTile, type TileCells, type TileEntry } from './tile-pack'
@@ -48,26 +49,26 @@ export function openPack(path: string, shape: PackShape): OpenPack | null {
 }
 
 /** Puts a pack in its place at once: readers see the one before or this one. */
-export function writePack(path: string, header: PackHeader, tiles: ReadonlyMap<number, PackedTile>): void {
+export async function writePack(path: string, header: PackHeader, tiles: ReadonlyMap<number, PackedTile>): Promise<void> {
   const temporary = `${path}.${randomUUID()}`
   const bytes = encodePack(header, tiles)
   try {
-    writeWhereFolderIs(temporary, bytes)
-    renameSync(temporary, path)
+    await writeWhereFolderIs(temporary, bytes)
+    await rename(temporary, path)
   } catch (error) {
-    rmSync(temporary, { force: true })
+    await rm(temporary, { force: true })
     throw error
   }
 }
 
 /** The folder is made when it turns out to be missing: looking first costs more than the writing. */
-function writeWhereFolderIs(path: string, bytes: Uint8Array): void {
+async function writeWhereFolderIs(path: string, bytes: Uint8Array): Promise<void> {
   try {
-    writeFileSync(path, bytes)
+    await writeFile(path, bytes)
   } catch (error) {
     if (!(error instanceof Error && 'code' in error && error.code === 'ENOENT')) throw error
-    mkdirSync(dirname(path), { recursive: true })
-    writeFileSync(path, bytes)
+    await mkdir(dirname(path), { recursive: true })
+    await writeFile(path, bytes)
   }
 }
 
