@@ -19,6 +19,7 @@ export const paths = {
   alert: page<{ id: number }>('/alerts/:id'),
   regions: page('/regions'),
   newRegion: page('/regions/new'),
+  importRegions: page('/regions/import'),
   region: page<{ id: number }>('/regions/:id'),
   editRegion: page<{ id: number }>('/regions/:id/edit'),
   layers: page('/layers'),

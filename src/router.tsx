@@ -42,6 +42,7 @@ export const router = createBrowserRouter([
       forThoseWhoMay(
         'region:edit',
         page(paths.newRegion, () => import('./pages/new-region')),
+        page(paths.importRegions, () => import('./pages/import-regions')),
         page(paths.editRegion, () => import('./pages/edit-region')),
       ),
       forThoseWhoMay('people:edit', page(paths.people, () => import('./pages/people'))),

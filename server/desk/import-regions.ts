@@ -6,14 +6,14 @@ import type { Context } from '../context'
 import { drawRegion } from './draw-region'
 
 /** What a file of areas holds, each as it would be kept or why not; with `save` each that can be is drawn at once. */
-export async function importRegions(context: Context, person: Person, file: { name: string; bytes: Buffer }, save: boolean): Promise<ImportReply> {
-  const read = await context.workers.light('readAreas', { bytes: file.bytes, fileName: file.name, inland: false })
+export async function importRegions(context: Context, person: Person, file: { name: string; bytes: Buffer }, { save, inland }: { save: boolean; inland: boolean }): Promise<ImportReply> {
+  const read = await context.workers.light('readAreas', { bytes: file.bytes, fileName: file.name, inland })
   if ('refusedFile' in read) throw new ApiError('not-valid', read.refusedFile, { fields: { file: read.refusedFile } })
   const items: ImportReply['items'] = []
   for (const { name, outcome } of read.areas) {
     if ('outline' in outcome) {
       const { geometry, areaKm2, repairs, marks } = outcome.outline
-      const region = save ? await drawRegion(context, person, newRegion.parse({ name, geometry })) : null
+      const region = save ? await drawRegion(context, person, newRegion.parse({ name, geometry, inland })) : null
       items.push({ name, found: { geometry, areaKm2, repairs, marks }, refusal: null, regionId: region?.id ?? null })
       continue
     }

@@ -46,7 +46,7 @@ export function regionRoutes(router: Router, context: Context): void {
     }
   })
   serve(router, context, endpoints.measureOutline, ({ body }) => measureOutline(context, body))
-  serve(router, context, endpoints.importRegions, ({ person, query, req }) => importRegions(context, person, smallFile(req), query.save === 'true'), {
+  serve(router, context, endpoints.importRegions, ({ person, query, req }) => importRegions(context, person, smallFile(req), { save: query.save === 'true', inland: query.inland === 'true' }), {
     before: [smallUpload(mostImportMegabytes)],
   })
   serve(router, context, endpoints.regionVersions, async ({ params }) => ({ items: await outlineVersions(context, params.id), nextCursor: null }))

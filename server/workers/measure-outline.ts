@@ -8,7 +8,7 @@ import type { GridCount, MeasuredGrid, OutlineTasks } from './outline-tasks'
 import { weighGrid, type GridWeights } from './weigh-grid'
 
 /** Above this many cells a count is only estimated, so that an answer comes while somebody draws. */
-const mostCells = 300_000
+const mostCells = 100_000
 
 /** Checks an outline and counts what each grid would hold of it. */
 export function measureOutline({ sent, inland, shoreBufferKm, grids }: OutlineTasks['measureOutline']['input']): OutlineTasks['measureOutline']['output'] {

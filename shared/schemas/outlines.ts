@@ -72,5 +72,7 @@ export type ImportReply = z.infer<typeof importReply>
 export const importQuery = z.object({
   /** Save every area that can be taken, each under its name in the file. */
   save: z.enum(['true', 'false']).default('false'),
+  /** Its areas of land alone are lakes or narrow inlets: take them too. */
+  inland: z.enum(['true', 'false']).default('false'),
 })
 export const outlineQuery = z.object({ version: z.coerce.number().int().positive().optional() })

@@ -11,9 +11,10 @@ type ParamsInput<E extends Endpoint> = E['params'] extends z.ZodType ? Record<ke
 
 type Given<E extends Endpoint> = (E['params'] extends z.ZodType ? { params: ParamsInput<E> } : { params?: undefined }) &
   (E['query'] extends z.ZodType ? { query?: QueryInputOf<E> } : { query?: undefined }) &
-  (E['body'] extends z.ZodType ? { body: BodyInputOf<E> } : { body?: undefined }) & { signal?: AbortSignal }
+  (E['body'] extends z.ZodType ? { body: BodyInputOf<E> } : { body?: undefined }) &
+  (E['multipart'] extends true ? { form: FormData } : { form?: undefined }) & { signal?: AbortSignal }
 
-type NeedsNothing<E extends Endpoint> = E['params'] extends z.ZodType ? false : E['body'] extends z.ZodType ? false : true
+type NeedsNothing<E extends Endpoint> = E['params'] extends z.ZodType ? false : E['body'] extends z.ZodType ? false : E['multipart'] extends true ? false : true
 
 /**
  * The one way to the server. The reply is read with the call's own schema, so what a page gets is what was agreed.
@@ -51,6 +52,7 @@ interface Loose {
   params?: Record<string, string | number>
   query?: unknown
   body?: unknown
+  form?: FormData
   signal?: AbortSignal
 }
 
@@ -62,7 +64,7 @@ async function send(endpoint: Endpoint, given: Loose): Promise<Response> {
       method: endpoint.method,
       credentials: 'same-origin',
       headers: hasBody ? { 'content-type': 'application/json' } : {},
-      body: hasBody ? JSON.stringify(given.body) : undefined,
+      body: hasBody ? JSON.stringify(given.body) : given.form,
       signal: given.signal,
     })
   } catch (cause) {

@@ -1,7 +1,7 @@
-import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query'
+import { keepPreviousData, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query'
 import { endpoints } from '../../shared/schemas/endpoints'
 import type { BodyInputOf } from '../../shared/schemas/endpoint'
-import { call } from './call'
+import { addressOf, call } from './call'
 
 export const regionsQuery = () =>
   queryOptions({
@@ -14,6 +14,36 @@ export const regionQuery = (id: number) =>
     queryKey: ['regions', id],
     queryFn: ({ signal }) => call(endpoints.region, { params: { id }, signal }),
   })
+
+/** What an outline would hold; asked again whenever it changes, the last answer staying until the next is there. */
+export const measureQuery = (geometry: unknown, shoreBufferKm: number, inland: boolean) =>
+  queryOptions({
+    queryKey: ['measured outline', JSON.stringify(geometry), shoreBufferKm, inland],
+    queryFn: ({ signal }) => call(endpoints.measureOutline, { body: { geometry, shoreBufferKm, inland }, signal }),
+    placeholderData: keepPreviousData,
+    staleTime: 60_000,
+    retry: false,
+  })
+
+export const regionVersionsQuery = (id: number) =>
+  queryOptions({
+    queryKey: ['regions', id, 'versions'],
+    queryFn: ({ signal }) => call(endpoints.regionVersions, { params: { id }, signal }),
+  })
+
+/** Reads the areas of a file; nothing is saved by it. */
+export function useReadAreas() {
+  return useMutation({
+    mutationFn: ({ file, inland }: { file: File; inland: boolean }) => {
+      const form = new FormData()
+      form.append('file', file, file.name)
+      return call(endpoints.importRegions, { query: { inland: inland ? 'true' : 'false' }, form })
+    },
+  })
+}
+
+export const outlineHref = (id: number, version: number) => addressOf(endpoints.exportOutline, { params: { id }, query: { version } })
+export const outlineKmlHref = (id: number, version: number) => addressOf(endpoints.exportOutlineKml, { params: { id }, query: { version } })
 
 export type NewRegionBody = BodyInputOf<typeof endpoints.createRegion>
 export type RegionChangeBody = BodyInputOf<typeof endpoints.changeRegion>

@@ -3,7 +3,9 @@ import { useState } from 'react'
 import { useMapEvents } from 'react-leaflet'
 import type { RegionGeometry } from '../../../shared/schemas/regions'
 import { useWide } from '../../hooks/use-wide'
+import type { RepairMark } from '../../../shared/schemas/outlines'
 import { LayerTiles } from '../map/layer-tiles'
+import { PlaceMarks } from '../map/place-marks'
 import { type OutlinedRegion, RegionOutlines } from '../map/region-outlines'
 import { type MapBounds, SeaMap } from '../map/sea-map'
 import { SiteMark } from '../map/site-mark'
@@ -26,6 +28,9 @@ interface Props {
   onSite: (site: Position) => void
   others: readonly OutlinedRegion[]
   layerId: number | undefined
+  /** Where something was put right, and where the outline is wrong. */
+  repaired?: readonly RepairMark[]
+  fault?: RepairMark | undefined
 }
 
 /** The sea to draw on: what was seen there last, the other regions, and the outline being made. */
@@ -50,6 +55,8 @@ export default function DrawMap(props: Props) {
               props.onDrawing(false)
             }}
           />
+          <PlaceMarks kind="repaired" marks={props.repaired ?? []} />
+          {props.fault && <PlaceMarks kind="fault" marks={[props.fault]} />}
           {props.siting && <SiteTap onSite={props.onSite} />}
           {props.site && <SiteMark {...props.site} onMove={(latitude, longitude) => props.onSite({ latitude, longitude })} />}
         </SeaMap>

@@ -21,14 +21,19 @@ export const regionFields = z.object({
     }),
   ),
   feedId: z.string(),
+  shoreBufferKm: z
+    .string()
+    .trim()
+    .refine((text) => bufferOf(text) !== undefined, 'Between 0 and 50 km.'),
+  inland: z.boolean(),
 })
 export type RegionFields = z.infer<typeof regionFields>
 
 export function blankFields(): RegionFields {
-  return { name: '', timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone, siteName: '', sitePosition: '', contacts: [], feedId: '' }
+  return { name: '', timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone, siteName: '', sitePosition: '', contacts: [], feedId: '', shoreBufferKm: '0', inland: false }
 }
 
-export function fieldsOf({ name, timeZone, site, contacts }: Region): RegionFields {
+export function fieldsOf({ name, timeZone, site, contacts, shoreBufferKm }: Region): RegionFields {
   return {
     name,
     timeZone,
@@ -36,7 +41,15 @@ export function fieldsOf({ name, timeZone, site, contacts }: Region): RegionFiel
     sitePosition: site ? positionText(site) : '',
     contacts: contacts.map((one) => ({ name: one.name, phone: one.phone ?? '', note: one.note ?? '' })),
     feedId: '',
+    shoreBufferKm: String(shoreBufferKm),
+    inland: false,
   }
+}
+
+/** Kilometres as typed; undefined where that is no distance the server takes. */
+export function bufferOf(text: string): number | undefined {
+  const km = text === '' ? 0 : Number(text.replace(',', '.'))
+  return Number.isFinite(km) && km >= 0 && km <= 50 ? km : undefined
 }
 
 export function positionText({ latitude, longitude }: { latitude: number; longitude: number }): string {

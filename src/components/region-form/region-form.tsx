@@ -11,12 +11,14 @@ import { OutlineField } from '../outline/outline-field'
 import { parsePosition } from '../outline/parse-position'
 import { Button } from '../ui/button'
 import { FaultMark } from '../ui/fault-mark'
-import { SelectField, TextField } from '../ui/field'
+import { CheckField, SelectField, TextField } from '../ui/field'
 import { Message } from '../ui/message'
 import { ContactFields } from './contact-fields'
+import { OutlineHolds } from './outline-holds'
 import { OutlineSize } from './outline-size'
-import { positionText, regionFields, type RegionFields } from './region-fields'
+import { bufferOf, positionText, regionFields, type RegionFields } from './region-fields'
 import { TimeZoneField } from './time-zone-field'
+import { useMeasured } from './use-measured'
 import type { useDrawingGround } from './use-drawing-ground'
 
 const DrawMap = lazy(() => import('../outline/draw-map'))
@@ -46,7 +48,12 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
   const site = parsePosition(useWatch({ control: form.control, name: 'sitePosition' }))
   const errors = form.formState.errors
   const refused = fieldErrors(error)
-  const outlineProblem = refused['geometry'] ?? (noOutline && !geometry ? 'Draw the outline, or type it.' : undefined)
+  const shoreBufferKm = bufferOf(useWatch({ control: form.control, name: 'shoreBufferKm' })) ?? 0
+  const inland = useWatch({ control: form.control, name: 'inland' })
+  const measured = useMeasured({ geometry, corners, drawing, shoreBufferKm, inland })
+  const repairs = drawing ? [] : (measured.exact?.repairs ?? [])
+  const shown = repairs.length > 0 ? measured.exact!.geometry : geometry
+  const outlineProblem = measured.problem ?? (measured.exact ? undefined : refused['geometry']) ?? (noOutline && !geometry ? 'Draw the outline, or type it.' : undefined)
   const areaKm2 = drawing ? (corners.length >= 3 ? ringAreaKm2(corners) : null) : geometry ? polygonAreaKm2(geometry) : null
 
   function beginSiting() {
@@ -68,12 +75,16 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
             <FaultMark /> {outlineProblem}
           </p>
         )}
+        {(measured.allLand || inland) && <CheckField label="It is a lake or a narrow inlet" hint="Every cell in it then counts as water." {...form.register('inland')} />}
+        {repairs.length > 0 && <Message title="It will be kept with this put right:">{repairs.join(' ')}</Message>}
         {redrawn !== undefined && geometry !== outline && !drawing && <Message>{redrawn}</Message>}
         <div ref={mapPart} className="grid grid-cols-[minmax(0,1fr)]">
           <Suspense fallback={<div className="hatch aspect-[1.2] opacity-60" />}>
             <DrawMap
               bounds={bounds}
-              geometry={geometry}
+              geometry={shown}
+              repaired={drawing ? [] : measured.exact?.marks}
+              fault={measured.place && { ...measured.place, about: measured.problem ?? '' }}
               drawing={drawing && !siting}
               onDrawing={(next) => {
                 setCorners([])
@@ -93,11 +104,12 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
             />
           </Suspense>
         </div>
+        {measured.data && <OutlineHolds feeds={measured.data.feeds} />}
         <details>
           <summary className="link inline-flex min-h-11 items-center font-strong tab:min-h-0">Type or paste the outline</summary>
           <div className="mt-3">
             <OutlineField
-              geometry={geometry}
+              geometry={shown}
               onGeometry={(typed) => {
                 setGeometry(typed)
                 setDrawing(false)
@@ -124,6 +136,14 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
             ))}
           </SelectField>
         )}
+        <TextField
+          label="Shore buffer, km"
+          hint="Cells whose centre is nearer to land than this take no part in any figure. Another buffer is another version of the outline."
+          className="fig"
+          inputMode="decimal"
+          error={errors.shoreBufferKm?.message ?? refused['shoreBufferKm']}
+          {...form.register('shoreBufferKm')}
+        />
         <TimeZoneField error={errors.timeZone?.message ?? refused['timeZone']} {...form.register('timeZone')} />
         <fieldset className="grid gap-3 tab:grid-cols-2">
           <legend className="mb-1 text-small text-ink2">Site: the place distances are measured from</legend>

@@ -1,10 +1,11 @@
 import { useQuery } from '@tanstack/react-query'
+import { useState } from 'react'
 import { Link, useNavigate, useParams } from 'react-router-dom'
 import { paths } from '../../../shared/paths'
 import type { Region } from '../../../shared/schemas/regions'
 import { isConflict } from '../../api/api-error'
-import { regionQuery, useChangeRegion } from '../../api/regions'
-import { contactsOf, fieldsOf, siteOf } from '../../components/region-form/region-fields'
+import { type RegionChangeBody, regionQuery, useChangeRegion } from '../../api/regions'
+import { bufferOf, contactsOf, fieldsOf, siteOf } from '../../components/region-form/region-fields'
 import { RegionForm } from '../../components/region-form/region-form'
 import { SaveButton } from '../../components/region-form/save-button'
 import { useDrawingGround } from '../../components/region-form/use-drawing-ground'
@@ -13,6 +14,8 @@ import { Failure } from '../../components/ui/failure'
 import { Message } from '../../components/ui/message'
 import { Page, Statement } from '../../components/ui/page'
 import { Waiting } from '../../components/ui/waiting'
+import { AskRedraw } from './ask-redraw'
+import { isEventRunning } from './is-event-running'
 import { useKept } from './use-kept'
 
 const formId = 'edit-region'
@@ -36,6 +39,14 @@ function EditRegion({ newest }: { newest: Region }) {
   const change = useChangeRegion(region.id)
   const navigate = useNavigate()
   const next = region.geometryVersion + 1
+  const [asking, setAsking] = useState<RegionChangeBody | null>(null)
+  const running = isEventRunning(change.error)
+  const stale = isConflict(change.error) && !running
+
+  function save(body: RegionChangeBody, redrawn: boolean) {
+    setAsking(body)
+    change.mutate(body, { onSuccess: (saved) => void navigate(paths.region.to({ id: saved.id }), { state: { repairs: redrawn ? saved.repairs : [] } }) })
+  }
   return (
     <>
       <Statement
@@ -53,7 +64,14 @@ function EditRegion({ newest }: { newest: Region }) {
       >
         Edit {region.name}.
       </Statement>
-      {isConflict(change.error) && (
+      <AskRedraw
+        open={running !== null && asking !== null && !change.isPending}
+        running={running}
+        nextVersion={next}
+        onKeep={() => change.reset()}
+        onRedraw={() => asking && save({ ...asking, confirm: true }, true)}
+      />
+      {stale && (
         <Message
           fault
           title="Somebody else changed this region meanwhile."
@@ -74,16 +92,18 @@ function EditRegion({ newest }: { newest: Region }) {
         error={isConflict(change.error) ? null : change.error}
         redrawn={`The redrawn outline becomes version ${next}: its history is read anew. The figures and alerts of version ${region.geometryVersion} stay as they are.`}
         onSave={(typed, geometry) =>
-          change.mutate(
+          save(
             {
               version: region.version,
               name: typed.name,
               timeZone: typed.timeZone,
               site: siteOf(typed),
               contacts: contactsOf(typed),
+              shoreBufferKm: bufferOf(typed.shoreBufferKm) ?? 0,
+              inland: typed.inland,
               ...(geometry === region.geometry ? {} : { geometry }),
             },
-            { onSuccess: (saved) => void navigate(paths.region.to({ id: saved.id }), { state: { repairs: geometry === region.geometry ? [] : saved.repairs } }) },
+            geometry !== region.geometry,
           )
         }
       />

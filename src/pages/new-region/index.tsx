@@ -2,7 +2,7 @@ import { useState } from 'react'
 import { Link, useNavigate } from 'react-router-dom'
 import { paths } from '../../../shared/paths'
 import { useCreateRegion } from '../../api/regions'
-import { blankFields, contactsOf, siteOf } from '../../components/region-form/region-fields'
+import { blankFields, bufferOf, contactsOf, siteOf } from '../../components/region-form/region-fields'
 import { RegionForm } from '../../components/region-form/region-form'
 import { SaveButton } from '../../components/region-form/save-button'
 import { useDrawingGround } from '../../components/region-form/use-drawing-ground'
@@ -53,6 +53,8 @@ export function Component() {
                 timeZone: typed.timeZone,
                 site: siteOf(typed),
                 contacts: contactsOf(typed),
+                shoreBufferKm: bufferOf(typed.shoreBufferKm) ?? 0,
+                inland: typed.inland,
                 ...(typed.feedId === '' ? {} : { feedId: Number(typed.feedId) }),
               },
               { onSuccess: (region) => void navigate(paths.region.to({ id: region.id }), { state: { repairs: region.repairs } }) },

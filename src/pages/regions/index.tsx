@@ -15,9 +15,12 @@ export function Component() {
   const mayDraw = useCan('region:edit')
   const items = regions.data?.items ?? []
   const draw = mayDraw && (
-    <ButtonLink kind="filled" to={paths.newRegion.to()}>
-      Draw a region
-    </ButtonLink>
+    <>
+      <ButtonLink to={paths.importRegions.to()}>Import</ButtonLink>
+      <ButtonLink kind="filled" to={paths.newRegion.to()}>
+        Draw a region
+      </ButtonLink>
+    </>
   )
   const counts = regionCounts(items)
   return (
