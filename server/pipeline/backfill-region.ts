@@ -55,7 +55,7 @@ export async function backfillRegion(context: Context, job: JobRecord): Promise<
       }).then(() => told(context, parts))
       writing.catch(() => undefined)
       await endOthers(context, parts, writing)
-      if (await moreUrgent(context, job)) {
+      if (own.done < own.keys.length && (await moreUrgent(context, job))) {
         await writing
         for (const part of parts) await giveWay(context, part.job)
         return 'paused'
