@@ -1,52 +1,56 @@
 import { spawnSync } from 'node:child_process'
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { existsSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
-import { join, resolve } from 'node:path'
+import { join } from 'node:path'
+import { parseArgs } from 'node:util'
 import { buildServer } from '../../server/commands/build'
-import { historyFiles } from '../../server/seeders/demo/files'
-import { regions } from '../../server/seeders/demo/scenario'
-import type { RegionCellWeights } from '../../server/workers/tasks'
-import { startWorkers } from '../../server/workers/workers'
+import type { Measured } from './measured'
 
 /**
- * Figures of ten regions for a year of daily layers, read from a NetCDF-4 file: Offing's worker against numpy and
- * netCDF4 doing the same in the same run. The ratio is the result; seconds depend on the machine.
+ * What Offing takes of the time that Debian's numpy and netCDF4 take for the same work, in the same run, taking turns.
+ * Ratios are the result: seconds depend on the machine and on what else it does. `--only field,history` runs some parts.
  */
+const parts = ['field', 'history', 'answering', 'storage'] as const
+const { values } = parseArgs({ options: { only: { type: 'string' }, fields: { type: 'string' }, json: { type: 'string', default: 'data/var/bench.json' } } })
+const wanted = values.only === undefined ? parts : parts.filter((part) => values.only!.split(',').includes(part))
+
 await buildServer()
-const folder = mkdtempSync(join(tmpdir(), 'offing-bench-'))
-const workers = startWorkers(resolve('dist/server/worker.js'))
+const folder = values.fields ?? mkdtempSync(join(tmpdir(), 'offing-bench-fields-'))
 try {
-  const file = historyFiles().find((one) => one.name.startsWith('demo-chl-2022'))!
-  const path = await workers.heavy('writeDemoFile', { file, directory: folder })
-  const seen = await workers.heavy('inspectFile', { path, fileName: file.name })
-  const grid = seen.grids[0]!
-  const weights: RegionCellWeights[] = []
-  for (const region of regions) weights.push({ columns: grid.columns, ...(await workers.heavy('weighCells', { geometry: region.geometry, grid: grid.definition })) })
-  const reading = { hiddenFlags: [], storedLog10: false, fileUnit: null, unit: 'mg m-3' }
-  const layers = file.days.map((_, step) => ({ path, fileName: file.name, variable: 'chlor_a', step, processingVersion: '1', observedAt: step, endsAt: null, producedAt: null, reading }))
-  const views = layers.flatMap((_, layer) => weights.map((_, region) => ({ layers: [layer], weights: region })))
-  const input = { layers, weights, views, scale: 'log10' as const, validMin: null, validMax: null }
-  await workers.heavy('summariseViews', { ...input, layers: layers.slice(0, 20), views: views.filter((view) => view.layers[0]! < 20) })
-  const ours = await best(3, async () => {
-    const started = performance.now()
-    await workers.heavy('summariseViews', input)
-    return (performance.now() - started) / 1000
-  })
-  writeFileSync(join(folder, 'regions.json'), JSON.stringify(weights.map((w) => ({ index: [...w.index], weight: [...w.share].map((share, i) => share * w.areaKm2[i]!) }))))
-  const theirs = await best(3, async () => {
-    const run = spawnSync('/usr/bin/python3', ['tests/bench/reference.py', path, join(folder, 'regions.json')], { encoding: 'utf8' })
-    if (run.status !== 0) throw new Error(`The reference needs Debian's python3-numpy and python3-netcdf4: ${run.stderr}`)
-    return (JSON.parse(run.stdout) as { seconds: number }).seconds
-  })
-  console.log(`views: ${views.length} (365 layers, ${weights.length} regions)`)
-  console.log(`Offing ${ours.toFixed(2)} s, numpy and netCDF4 ${theirs.toFixed(2)} s: ${(theirs / ours).toFixed(2)} times as fast`)
+  if (!existsSync(join(folder, 'global.nc'))) makeFields(folder)
+  const results = wanted.flatMap((part) => measure(part, folder))
+  table(results)
+  mkdirSync(join(values.json, '..'), { recursive: true })
+  writeFileSync(values.json, `${JSON.stringify({ results }, null, 2)}\n`)
 } finally {
-  await workers.close()
-  rmSync(folder, { recursive: true, force: true })
+  if (!values.fields) rmSync(folder, { recursive: true, force: true })
 }
 
-async function best(times: number, run: () => Promise<number>): Promise<number> {
-  let least = Infinity
-  for (let i = 0; i < times; i++) least = Math.min(least, await run())
-  return least
+function makeFields(into: string): void {
+  const made = spawnSync('/usr/bin/python3', ['tests/bench/make-fields.py', into], { stdio: ['ignore', 'inherit', 'inherit'] })
+  if (made.status !== 0) throw new Error("The fields need Debian's python3-numpy and python3-netcdf4.")
+}
+
+/** Each part runs in a process of its own, whose memory is nobody else's. */
+function measure(part: (typeof parts)[number], fields: string): Measured[] {
+  const run = spawnSync(process.execPath, ['--import', 'tsx', `tests/bench/${part}.ts`, fields], { encoding: 'utf8', stdio: ['ignore', 'pipe', 'inherit'], maxBuffer: 1e8 })
+  if (run.status !== 0) throw new Error(`The part "${part}" failed.\n${run.stdout}`)
+  return JSON.parse(run.stdout.trim().split('\n').at(-1)!) as Measured[]
+}
+
+function table(results: readonly Measured[]): void {
+  const rows = results.map(({ what, value, unit, most, ours, reference }) => [
+    what,
+    `${format(value)}${unit ? ` ${unit}` : ''}`,
+    most === null ? '' : `at most ${most}${unit ? ` ${unit}` : ''}`,
+    ours === undefined ? '' : `${format(ours)} s`,
+    reference === undefined ? '' : `${format(reference)} s`,
+  ])
+  const head = ['what', 'measured', 'aim', 'Offing', 'reference']
+  const widths = head.map((title, i) => Math.max(title.length, ...rows.map((row) => row[i]!.length)))
+  for (const row of [head, widths.map((width) => '-'.repeat(width)), ...rows]) console.log(`| ${row.map((cell, i) => cell.padEnd(widths[i]!)).join(' | ')} |`)
+}
+
+function format(value: number): string {
+  return value >= 100 ? value.toFixed(0) : value.toPrecision(3)
 }
