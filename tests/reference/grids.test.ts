@@ -39,7 +39,8 @@ const expected = JSON.parse(readFileSync(`${folder}expected.json`, 'utf8')) as {
   files: Record<string, ExpectedFile>
 }
 const more = JSON.parse(readFileSync(`${folder}expected-more.json`, 'utf8')) as Pick<typeof expected, 'files'>
-Object.assign(expected.files, more.files)
+const filters = JSON.parse(readFileSync(`${folder}expected-filters.json`, 'utf8')) as Pick<typeof expected, 'files'>
+Object.assign(expected.files, more.files, filters.files)
 
 let source: GridSource | null = null
 afterEach(() => {

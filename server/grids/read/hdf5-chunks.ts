@@ -67,7 +67,7 @@ export function openChunkReader(path: string, library: { create_object_reference
   }
 }
 
-function orNull<T>(work: () => T): T | null {
+export function orNull<T>(work: () => T): T | null {
   try {
     return work()
   } catch {
@@ -76,7 +76,7 @@ function orNull<T>(work: () => T): T | null {
 }
 
 /** An object reference is the address of the object's header. */
-function addressOf(library: { create_object_reference(file: bigint, name: string): Uint8Array }, file: File, dataset: Dataset): number {
+export function addressOf(library: { create_object_reference(file: bigint, name: string): Uint8Array }, file: File, dataset: Dataset): number {
   const bytes = Buffer.from(library.create_object_reference(file.file_id, dataset.path))
   return Number(bytes.readBigUInt64LE(0))
 }

@@ -27,7 +27,8 @@ export function chunkLayout(read: ByteReader, address: number): ChunkLayout | nu
   return null
 }
 
-function* messages(read: ByteReader, address: number): Generator<{ type: number; body: Buffer }> {
+/** The messages of an object header, whichever version it has. */
+export function* messages(read: ByteReader, address: number): Generator<{ type: number; body: Buffer }> {
   const first = read(address, 16)
   yield* first.toString('latin1', 0, 4) === 'OHDR' ? newMessages(read, address) : oldMessages(read, address, first)
 }

@@ -1,7 +1,9 @@
+import { basename } from 'node:path'
 import type { Dataset, File, Group } from 'h5wasm'
-import { guarded, hdf5Library, quietly } from '../hdf5-library'
+import { guarded, hdf5Library, PointsElsewhere, quietly } from '../hdf5-library'
 import { LayerRefused } from '../layer-refused'
-import { openChunkReader, type ChunkReader } from './hdf5-chunks'
+import { openChunkReader, orNull, type ChunkReader } from './hdf5-chunks'
+import { oddNumbers } from './hdf5-number-type'
 import { checkHdf5Size } from './hdf5-superblock'
 import { maxChunkBytes, maxVariables } from './limits'
 import { numberType, readAttributes } from './netcdf4-attributes'
@@ -33,6 +35,13 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
       reading(name, () => describe(name, dataset)) ?? [],
     )
     const kept = new StepCache(mostKeptCells)
+    const checked = new Set<string>()
+    const datasetOf = ({ name }: RawVariable): Dataset => {
+      const dataset = datasets.get(name)!
+      if (!checked.has(name)) checkNumbers(name, orNull(() => oddNumbers(path, start, library.Module, file, dataset)))
+      checked.add(name)
+      return dataset
+    }
     // Addresses count from where the file begins; behind a user block the library reads alone.
     const chunks = start === 0 ? openChunkReader(path, library.Module, file) : null
     return {
@@ -40,8 +49,8 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
       variables,
       attributes,
       warnings: [],
-      read: (variable, from, count) => readBlock(variable, datasets.get(variable.name)!, { kept, chunks }, from, count),
-      readWords: (variable, from, count) => readWords(variable, datasets.get(variable.name)!, from, count),
+      read: (variable, from, count) => readBlock(variable, datasetOf(variable), { kept, chunks }, from, count),
+      readWords: (variable, from, count) => readWords(variable, datasetOf(variable), from, count),
       close: () => {
         chunks?.close()
         file.close()
@@ -71,6 +80,11 @@ function collect(
       throw new LayerRefused('too-large', `The file declares more than ${maxVariables} variables.`, {})
     }
   }
+}
+
+function checkNumbers(name: string, odd: string | null): void {
+  if (odd === null) return
+  throw new LayerRefused('unsupported-encoding', `${name} stores ${odd}, which Offing does not read.`, { variable: name, stored: odd })
 }
 
 /** null for a dimension that has no variable of its own. */
@@ -173,13 +187,20 @@ function readWords(variable: RawVariable, dataset: Dataset, start: number[], cou
 }
 
 function checkEncoding(variable: RawVariable, dataset: Dataset): void {
-  const unknown = reading(variable.name, () => dataset.filters).find(({ id }) => !knownFilters.has(id))
+  const filters = reading(variable.name, () => dataset.filters)
+  const unknown = filters.find(({ id }) => !knownFilters.has(id))
   if (unknown) {
     throw new LayerRefused(
       'unsupported-encoding',
       `${variable.name} is compressed with a method Offing does not know (${unknown.name || 'no name'}, number ${unknown.id}).`,
       { variable: variable.name, filter: unknown.id },
     )
+  }
+  const codec = missingCodec(filters)
+  if (codec !== null) {
+    throw new LayerRefused('unsupported-encoding', `${variable.name} is compressed by Blosc with ${codec}, which Offing does not read.`, {
+      variable: variable.name, filter: bloscFilter, codec,
+    })
   }
   const { chunks, size } = dataset.metadata
   const chunkBytes = chunks ? chunks.reduce((product, n) => product * n, size) : 0
@@ -192,14 +213,29 @@ function checkEncoding(variable: RawVariable, dataset: Dataset): void {
   }
 }
 
+const bloscFilter = 32001
+/** Blosc packs with one of several methods, by the seventh of its numbers; its plugin was built without these. */
+const missingCodecs: Record<number, string> = { 3: 'Snappy', 4: 'zlib' }
+
+function missingCodec(filters: readonly { id: number; cd_values: number[] }[]): string | null {
+  const code = filters.find(({ id }) => id === bloscFilter)?.cd_values[6]
+  return code === undefined ? null : (missingCodecs[code] ?? null)
+}
+
 /** Reads with errors thrown; whatever the library throws becomes a refusal. */
 function reading<T>(what: string, work: () => T): T {
   try {
     return guarded(work)
   } catch (error) {
     if (error instanceof LayerRefused) throw error
+    if (error instanceof PointsElsewhere) throw elsewhere(what, error)
     throw damagedData(what, error instanceof Error ? error.message : String(error), error)
   }
+}
+
+function elsewhere(what: string, { path }: PointsElsewhere): LayerRefused {
+  const sentence = `This file keeps ${what} in another file (${basename(path).slice(0, 100)}), which Offing does not follow. Send it with its data inside.`
+  return new LayerRefused('unsupported-encoding', sentence, { what, otherFile: path.slice(0, 300) })
 }
 
 function damagedData(what: string, reason: string, cause?: unknown): LayerRefused {
