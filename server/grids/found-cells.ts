@@ -45,7 +45,12 @@ export class CellGroups {
   found(): FoundCells {
     const all = [...this.groups.values()].sort((a, b) => total(b.counts) - total(a.counts))
     const groups = all.slice(0, mostGroups).map(({ carry, counts: [value, missing, outside] }) => ({ carry, value, missing, outside }))
-    const unlisted = all.slice(mostGroups).reduce((sum, { counts }) => sum + total(counts), 0)
+    const unlisted = { value: 0, missing: 0, outside: 0 }
+    for (const { counts: [value, missing, outside] } of all.slice(mostGroups)) {
+      unlisted.value += value
+      unlisted.missing += missing
+      unlisted.outside += outside
+    }
     return { reasons: [...this.reasons], groups, unlisted }
   }
 

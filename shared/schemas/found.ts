@@ -49,6 +49,13 @@ export const foundHistogram = z.object({
 })
 export type FoundHistogram = z.infer<typeof foundHistogram>
 
+const held = {
+  /** Cells with a value, without one, and with one that the file's own valid range leaves out. */
+  value: z.number().int(),
+  missing: z.number().int(),
+  outside: z.number().int(),
+}
+
 /** The cells looked at, by the reasons there are not to keep them and by what the file holds for them. */
 export const foundCells = z.object({
   /** Flag meanings in the file's order, and `reasonFilled` where it marks cells that were filled in. */
@@ -57,13 +64,10 @@ export const foundCells = z.object({
     z.object({
       /** Positions in `reasons`: all that these cells carry. */
       carry: z.array(z.number().int()),
-      /** Cells with a value, without one, and with one that the file's own valid range leaves out. */
-      value: z.number().int(),
-      missing: z.number().int(),
-      outside: z.number().int(),
+      ...held,
     }),
   ),
   /** Cells with rarer mixtures of flags than those listed. */
-  unlisted: z.number().int(),
+  unlisted: z.object(held),
 })
 export type FoundCells = z.infer<typeof foundCells>

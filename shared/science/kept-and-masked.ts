@@ -23,7 +23,11 @@ export interface KeptAndMasked {
 
 /** Which of the cells looked at a feed would keep if it hid these flags, and what hides the others. */
 export function keptAndMasked(found: FoundCells, hiddenFlags: readonly string[]): KeptAndMasked {
-  const { reasons, groups, unlisted } = found
+  const { reasons } = found
+  const hides = reasons.some((reason) => reason === reasonFilled || hiddenFlags.includes(reason))
+  // Which flags the rare mixtures carry matters only where some of them hide cells.
+  const groups = hides ? found.groups : [...found.groups, { carry: [], ...found.unlisted }]
+  const unlisted = hides ? sizeOf(found.unlisted) : 0
   const totals = reasons.map((_, at) => groups.reduce((sum, group) => sum + (group.carry.includes(at) ? sizeOf(group) : 0), 0))
   const flags = reasons
     .flatMap((reason, at) => (reason !== reasonFilled && hiddenFlags.includes(reason) ? [at] : []))
@@ -50,6 +54,6 @@ export function keptAndMasked(found: FoundCells, hiddenFlags: readonly string[])
   return { cells, kept, parts: [...parts, outside, missing].filter((part) => part.cells > 0), unlisted }
 }
 
-function sizeOf({ value, missing, outside }: FoundCells['groups'][number]): number {
+function sizeOf({ value, missing, outside }: FoundCells['unlisted']): number {
   return value + missing + outside
 }

@@ -44,9 +44,11 @@ function unitRow({ unit, fileUnit, conversion }: ReportVariable): UnderstoodRow 
   }
 }
 
+const placings: Record<string, string> = { axes: 'axes of latitude and longitude', curvilinear: 'latitude and longitude given cell by cell' }
+
 function gridNote({ grid }: ReportVariable): string {
   const span = `${side(grid.south, 'S', 'N')} to ${side(grid.north, 'S', 'N')}, ${side(grid.west, 'W', 'E')} to ${side(grid.east, 'W', 'E')}`
-  return [grid.kind === 'axes' ? 'axes of latitude and longitude' : 'placed by a transform', span, grid.crs].filter(Boolean).join('; ')
+  return [placings[grid.kind] ?? 'placed by a transform', span, grid.crs].filter(Boolean).join('; ')
 }
 
 function side(value: number, below: string, above: string): string {

@@ -18,17 +18,18 @@ export function whatHappens(file: OffingFile, feeds: readonly FeedProposal[]): O
   const variables = feeds.flatMap((feed) => file.report?.variables.find((variable) => variable.name === feed.variable) ?? [])
   const layers = variables.reduce((sum, variable) => sum + variable.times.count, 0)
   return [
-    { head: countWords(layers, 'layer'), says: `${layers === 1 ? 'is' : 'are'} read: ${daysWords(variables[0], file.observedAt)}${feeds.length > 1 ? `, for ${feeds.length} feeds` : ''}.` },
+    { head: countWords(layers, 'layer'), says: `${layers === 1 ? 'is' : 'are'} read: ${daysWords(variables[0], file.observedAt, feeds[0]?.fileNamePattern ?? null)}${feeds.length > 1 ? `, for ${feeds.length} feeds` : ''}.` },
     regionsOutcome(file),
     { head: 'Later files', says: laterWords(feeds) },
     { head: 'Alerts', says: alertWords(feeds, variables[0]) },
   ]
 }
 
-function daysWords(variable: ReportVariable | undefined, observedAt: string | null): string {
+function daysWords(variable: ReportVariable | undefined, observedAt: string | null, pattern: string | null): string {
   const { first = null, last = null, count = 0 } = variable?.times ?? {}
   if (!first && observedAt) return `${dayWithYear(observedAt)}, as said when it was sent`
-  if (!first) return 'its time comes from the file name by the pattern above, or from the field beside the chooser'
+  if (!first && pattern && /\{(dd|DDD)\}/.test(pattern)) return 'its day is taken from the file name by the pattern above'
+  if (!first) return 'once its time is known. The file names none: give a pattern with the date of its name, or send it again with its time'
   const [from, to] = [dayWithYear(first), dayWithYear(last ?? first)]
   return from === to ? from : `${countWords(count, 'step')} from ${from} to ${to}`
 }

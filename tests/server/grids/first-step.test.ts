@@ -106,7 +106,7 @@ describe('cells by what speaks against them', () => {
     groups.add(new Uint8Array(cells), [{ cells: { raw: Uint32Array.from({ length: cells }, (_, i) => i % 4096), high: null, missing: null }, meanings, filled: false }])
     const found = groups.found()
     expect(found.groups).toHaveLength(200)
-    expect(found.groups.reduce((sum, group) => sum + group.value, found.unlisted)).toBe(cells)
+    expect(found.groups.reduce((sum, group) => sum + group.value, found.unlisted.value)).toBe(cells)
     expect(groups.countOf('F0')).toBe(2500)
   })
 

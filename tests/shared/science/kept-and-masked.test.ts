@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest'
 import { keptAndMasked } from '../../../shared/science/kept-and-masked'
 
+const none = { value: 0, missing: 0, outside: 0 }
+
 /** 100 cells: 40 plain, 20 cloud (15 of them missing), 10 cloud and glint, 5 glint, 5 filled in, 20 missing or out of range. */
 const found = {
   reasons: ['GLINT', 'CLOUD', 'filled in, not seen'],
@@ -11,7 +13,7 @@ const found = {
     { carry: [0], value: 5, missing: 0, outside: 0 },
     { carry: [2], value: 5, missing: 0, outside: 0 },
   ],
-  unlisted: 0,
+  unlisted: none,
 }
 
 describe('what would be kept', () => {
@@ -43,7 +45,13 @@ describe('what would be kept', () => {
     expect(parts.map(({ reason, cells }) => [reason, cells])).toEqual([['filled in, not seen', 5], ['outside the valid range', 2], ['missing in the file', 33]])
   })
 
+  it('leaves rare mixtures open only while a flag hides cells', () => {
+    const rare = { reasons: ['CLOUD'], groups: [{ carry: [0], value: 10, missing: 0, outside: 0 }], unlisted: { value: 6, missing: 4, outside: 0 } }
+    expect(keptAndMasked(rare, [])).toMatchObject({ cells: 20, kept: 16, unlisted: 0, parts: [{ reason: 'missing in the file', cells: 4 }] })
+    expect(keptAndMasked(rare, ['CLOUD'])).toMatchObject({ cells: 20, kept: 0, unlisted: 10, parts: [{ reason: 'CLOUD', cells: 10 }] })
+  })
+
   it('of no cells is nothing', () => {
-    expect(keptAndMasked({ reasons: [], groups: [], unlisted: 0 }, ['CLOUD'])).toEqual({ cells: 0, kept: 0, parts: [], unlisted: 0 })
+    expect(keptAndMasked({ reasons: [], groups: [], unlisted: none }, ['CLOUD'])).toEqual({ cells: 0, kept: 0, parts: [], unlisted: 0 })
   })
 })

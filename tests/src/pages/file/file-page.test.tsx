@@ -62,7 +62,7 @@ describe('the histogram', () => {
 })
 
 describe('kept and masked', () => {
-  const found = { reasons: ['CLDICE', 'GLINT'], groups: [{ carry: [], value: 50, missing: 10, outside: 0 }, { carry: [0], value: 20, missing: 0, outside: 0 }, { carry: [0, 1], value: 20, missing: 0, outside: 0 }], unlisted: 0 }
+  const found = { reasons: ['CLDICE', 'GLINT'], groups: [{ carry: [], value: 50, missing: 10, outside: 0 }, { carry: [0], value: 20, missing: 0, outside: 0 }, { carry: [0, 1], value: 20, missing: 0, outside: 0 }], unlisted: { value: 0, missing: 0, outside: 0 } }
   const flags = ['CLDICE', 'GLINT']
 
   it('changes while flags are ticked, with every reason in words', async () => {
