@@ -4,6 +4,7 @@ import type { LayerPoint } from '../../shared/schemas/layers'
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import { cellCorners } from '../grids/cell-corners'
+import { LayerRefused } from '../grids/layer-refused'
 import { projectTo } from '../grids/read/project'
 import type { FeedRow } from '../models/feed'
 import { BoundedCache } from '../pictures/bounded-cache'
@@ -65,7 +66,7 @@ export async function layerTile(context: Context, layer: PlacedLayer, tile: Tile
   return kept(context).tiles.get(tileKey(pictureKey(layer, feed), tile), async () => {
     const colouring = await colouringOfLayer(context, layer, feed)
     const grid = await context.db.first<{ definition: string }>('SELECT definition FROM grids WHERE id = $id', { id: layer.gridId })
-    return context.workers.light('drawTile', { layer: placeOf(context, layer), range: rangeOf(feed), colouring, grid: grid!.definition, ...tile })
+    return readable(context.workers.light('drawTile', { layer: placeOf(context, layer), range: rangeOf(feed), colouring, grid: grid!.definition, ...tile }))
   })
 }
 
@@ -78,8 +79,18 @@ export async function surveyOf(context: Context, layer: PlacedLayer, feed: FeedR
   return kept(context).surveys.get(pictureKey(layer, feed), async () => {
     const { rows, columns } = await gridOf(context, layer.gridId)
     const { quantity, variable, unit, scale, validMin, validMax } = feed
-    return context.workers.light('surveyLayer', { layer: placeOf(context, layer), feed: { quantity, variable, unit, scale, validMin, validMax }, rows, columns })
+    return readable(context.workers.light('surveyLayer', { layer: placeOf(context, layer), feed: { quantity, variable, unit, scale, validMin, validMax }, rows, columns }))
   })
+}
+
+/** Stored bytes may go bad long after they were read: that is no fault of the one who asks, and said as it is. */
+async function readable<T>(reading: Promise<T>): Promise<T> {
+  try {
+    return await reading
+  } catch (error) {
+    if (!(error instanceof LayerRefused)) throw error
+    throw new ApiError('unavailable', `The stored file of this layer cannot be read any more. ${error.message}`, { code: error.code, ...error.facts })
+  }
 }
 
 export const rangeOf = ({ validMin, validMax }: FeedRow) => ({ validMin, validMax })
@@ -89,7 +100,7 @@ export async function layerCell(context: Context, layer: PlacedLayer, lat: numbe
   const feed = await feedOf(context, layer)
   const at = await cellAt(context, layer, lat, lon)
   if (!at) return { row: null, column: null, value: null, cell: null }
-  const [value = null] = await context.workers.light('readCells', { cells: [{ layer: placeOf(context, layer), ...at }], range: rangeOf(feed) })
+  const [value = null] = await readable(context.workers.light('readCells', { cells: [{ layer: placeOf(context, layer), ...at }], range: rangeOf(feed) }))
   const grid = await gridOf(context, layer.gridId)
   const place = cellCorners(grid, at.row * grid.columns + at.column)
   return { ...at, value, cell: place && { longitude: place.centre[0], latitude: place.centre[1], corners: place.corners } }

@@ -1,9 +1,10 @@
-import { ticksOf, type Colouring } from '../../../shared/colouring'
+import { ticksOf, type Colouring, type Tick } from '../../../shared/colouring'
 import { figureText } from '../../../shared/figure-text'
 import type { Rgb } from '../../../shared/ok-lab'
 import { rampColour, ramps, screenShares, type Theme } from '../../../shared/ramps'
 import type { LayerLegend } from '../../../shared/schemas/layer-legend'
 import { useTheme } from '../../hooks/use-theme'
+import { useWide } from '../../hooks/use-wide'
 import { percent } from '../../lib/format'
 
 interface Props {
@@ -13,9 +14,10 @@ interface Props {
 
 export function LegendScale({ colouring, legend }: Props) {
   const theme = useTheme()
+  const wide = useWide()
   if (colouring.scale === 'screen') return <ScreenScale theme={theme} legend={legend} />
   const ticks = ticksOf(colouring)
-  const labelled = ticks.filter((tick) => tick.labelled)
+  const labelled = withRoom(ticks.filter((tick) => tick.labelled), wide ? 520 : 300)
   return (
     <>
       <Values legend={legend} />
@@ -80,6 +82,26 @@ function ScreenScale({ theme, legend }: { theme: Theme; legend: LayerLegend | un
 }
 
 const css = ([red, green, blue]: Rgb): string => `rgb(${red} ${green} ${blue})`
+
+const digitPx = 8
+
+/** The figures that fit beside each other; first and last stand inside the ends, and the last is worth more than its neighbour. */
+export function withRoom(ticks: readonly Tick[], widthPx: number): Tick[] {
+  const spans = ticks.map((tick) => {
+    const width = (tickText(tick.at).length + 1) * digitPx
+    const from = tick.share < 0.03 ? tick.share * widthPx : tick.share > 0.97 ? tick.share * widthPx - width : tick.share * widthPx - width / 2
+    return { tick, from, to: from + width }
+  })
+  const last = spans.at(-1)
+  let end = -Infinity
+  return spans
+    .filter((span) => {
+      const fits = span.from >= end && (span === last || !last || span.to <= last.from)
+      if (fits) end = span.to
+      return fits
+    })
+    .map((span) => span.tick)
+}
 
 function tickText(at: number): string {
   return Math.abs(at) >= 1e6 ? at.toExponential(0) : figureText(at).replace('-', '−')

@@ -3,6 +3,7 @@ import { join } from 'node:path'
 import request from 'supertest'
 import sharp from 'sharp'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
+import { LayerRefused } from '../../../server/grids/layer-refused'
 import { writeNetcdf4 } from '../../../server/grids/write/netcdf4'
 import { changeFeed } from '../../../server/pipeline/feeds'
 import { markSuspect } from '../../../server/pipeline/mark-suspect'
@@ -156,6 +157,19 @@ describe('a tile', () => {
     const after = await get(path).set('If-None-Match', tag).expect(200)
     expect(after.headers['etag']).not.toBe(tag)
     expect(await colourAt(layer, 50.45, -11.55)).toBeNull()
+  })
+
+  it('of a file that has gone bad says so, like the legend and the point', async () => {
+    const feed = await aFeed(context, person)
+    await send(context, await seaFile([{ at: '2026-06-10T12:00:00Z', value: 2 }]))
+    await runJobs(context)
+    const layer = await onlyLayer(feed.id)
+    context.workers.light = () => Promise.reject(new LayerRefused('damaged', 'The file is damaged: chlor_a cannot be read back whole.', { what: 'chlor_a' }))
+    const { x, y } = pixelOf(8, 50.45, -11.55)
+    for (const path of [`tiles/8/${x}/${y}.png`, 'legend', 'point?lat=50.45&lon=-11.55']) {
+      const { status, body } = await get(`/layers/${layer}/${path}`)
+      expect([status, body.error.message]).toEqual([503, 'The stored file of this layer cannot be read any more. The file is damaged: chlor_a cannot be read back whole.'])
+    }
   })
 
   it('that lies nowhere is refused with a sentence that says why', async () => {

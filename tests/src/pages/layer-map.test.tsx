@@ -2,10 +2,12 @@ import { fireEvent, render, screen } from '@testing-library/react'
 import userEvent from '@testing-library/user-event'
 import { useLocation } from 'react-router-dom'
 import { describe, expect, test, vi } from 'vitest'
+import { colouringOf, ticksOf } from '../../../shared/colouring'
 import { endpoints } from '../../../shared/schemas/endpoints'
 import type { Feed } from '../../../shared/schemas/feeds'
 import type { FeedDays, Layer, LayerPoint, UsualHere } from '../../../shared/schemas/layers'
 import { tilesOfView } from '../../../src/components/map/tile-address'
+import { withRoom } from '../../../src/components/map/legend-scale'
 import { missingWords } from '../../../src/components/map/legend-words'
 import { Component as LayerMap } from '../../../src/pages/layer-map'
 import { CellReadout } from '../../../src/pages/layer-map/cell-readout'
@@ -173,6 +175,12 @@ test('the tiles fetched ahead are those the map will ask for: wrapped round the 
   expect(of({ west: -12.5, east: -7, south: 50.5, north: 53.5, zoom: 7.2 })).toEqual(['7/59/41', '7/59/42', '7/59/43', '7/60/41', '7/60/42', '7/60/43', '7/61/41', '7/61/42', '7/61/43'])
   expect(of({ west: 170, east: 190, south: -5, north: 5, zoom: 3 })).toEqual(['3/7/3', '3/7/4', '3/0/3', '3/0/4'])
   expect(of({ west: -180, east: 180, south: -90, north: 90, zoom: 0 })).toEqual(['0/0/0'])
+})
+
+test('figures of a scale keep clear of each other on a phone, and all stand where there is room', () => {
+  const ticks = ticksOf(colouringOf({ quantity: 'reflectance', variable: 'Rrs_443', unit: 'sr-1', scale: 'linear', validMin: null, validMax: null })!).filter((tick) => tick.labelled)
+  expect(withRoom(ticks, 520).map((tick) => tick.at)).toEqual([0.0001, 0.0003, 0.001, 0.003, 0.01, 0.03])
+  expect(withRoom(ticks, 300).map((tick) => tick.at)).toEqual([0.0001, 0.001, 0.003, 0.03])
 })
 
 test('the legend says why cells are missing as far as the file does', () => {
