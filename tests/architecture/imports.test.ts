@@ -21,7 +21,7 @@ const sources = rooms.flatMap((room) =>
 )
 
 function importsOf(path: string, text: string): string[] {
-  const found = [...text.matchAll(/(?:\bfrom|\bimport\(|\bimport)\s*\(?\s*['"]([^'"]+)['"]/g)].map((match) => match[1]!)
+  const found = [...text.matchAll(/(?<!\/)(?:\bfrom|\bimport\(|\bimport)\s*\(?\s*['"]([^'"]+)['"]/g)].map((match) => match[1]!)
   return found.map((name) => (name.startsWith('.') ? normalize(join(dirname(path), name)) : name))
 }
 
