@@ -6,6 +6,7 @@ import { stopPulls } from '../pull/network'
 import { queueDuePulls } from '../pull/queue-pulls'
 import { refreshStandings } from '../pipeline/refresh-standings'
 import { runNextJob } from './run-job'
+import { tidy } from './tidy'
 
 export interface Ticker {
   /** Runs everything that is due now, once; answers when nothing is left. Used by tests and by the demo's seeding. */
@@ -38,6 +39,7 @@ export function startTicker(context: Context, options: { cron: boolean }): Ticke
     }),
   )
   const standings = wheel(() => refreshStandings(context))
+  const oldRows = wheel(() => tidy(context))
   const safely = (name: string, one: Wheel) => () =>
     stopped ? Promise.resolve() : one.turn().catch((error) => context.log.error({ err: error, wheel: name }, 'a tick failed'))
   const turnJobs = safely('jobs', jobs)
@@ -50,6 +52,7 @@ export function startTicker(context: Context, options: { cron: boolean }): Ticke
         schedule('* * * * * *', turnLetters),
         schedule('* * * * * *', () => safely('due pulls', duePulls)().then(turnPulls)),
         schedule('0 */10 * * * *', safely('standings', standings)),
+        schedule('30 */15 * * * *', safely('old rows', oldRows)),
       ]
     : []
   return {
@@ -66,7 +69,7 @@ export function startTicker(context: Context, options: { cron: boolean }): Ticke
       stopped = true
       stopPulls(context)
       await Promise.all(tasks.map((task) => task.destroy()))
-      await Promise.all([jobs, inbox, letters, ...pulls].map((one) => one.turn().catch(() => undefined)))
+      await Promise.all([jobs, inbox, letters, oldRows, ...pulls].map((one) => one.turn().catch(() => undefined)))
     },
   }
 }

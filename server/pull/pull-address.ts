@@ -2,12 +2,14 @@ import { namesItsDay, type Slot } from '../../shared/address-pattern'
 import type { Context } from '../context'
 import { receiveFile } from '../pipeline/receive-file'
 import { dropFile } from '../pipeline/stored-files'
-import { feedHasBytes, givenElsewhere, hostRestsUntil, keepPulledAddress, pulledAddress, type PullRow } from '../queries/pulls'
+import { feedHasBytes, givenElsewhere, hostRestsUntil, keepPulledAddress, pulledAddress, touchPulledAddress, type PullRow } from '../queries/pulls'
 import { fetchFile } from './fetch-file'
 import { fileNameOf } from './file-name-of'
 import { networkOf } from './network'
 import { HostRests } from './pull-failed'
 import type { Counts } from './tally'
+
+const dayMs = 86_400_000
 
 interface With {
   authorization: string | null
@@ -34,7 +36,12 @@ export async function pullAddress(context: Context, pull: PullRow, slot: Slot, {
       forgiven.add(host)
     },
   })
-  if (fetched.kind !== 'fetched') return fetched.kind === 'unchanged' ? 'unchanged' : 'notThere'
+  if (fetched.kind === 'unchanged') {
+    // Once a day is enough to tell an address still asked for from one that no pull comes back to.
+    if (before && clock.now() - before.askedAt > dayMs) await db.write((tx) => touchPulledAddress(db, tx, pull.feedId, slot.address, clock.now()))
+    return 'unchanged'
+  }
+  if (fetched.kind === 'not-there') return 'notThere'
   const { arrived, validators } = fetched
   // New bytes under a name that has its day correct what it gave before; under another name they may be of another day.
   const changed = before !== null && before.fileId !== null && before.checksum !== arrived.checksum && !(await givenElsewhere(db, pull.feedId, slot.address, before.checksum))

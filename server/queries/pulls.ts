@@ -23,6 +23,7 @@ export interface PulledAddress {
   checksum: string
   /** The file it gave; null when that has been deleted, or was there before. */
   fileId: number | null
+  askedAt: number
 }
 
 const pullColumns = `p.feed_id AS feedId, p.address, p.every_hours AS everyHours, p.at_minute AS atMinute, p.look_back_days AS lookBackDays,
@@ -108,7 +109,7 @@ export async function pullIsQueued(db: Database, feedId: number): Promise<boolea
 
 export async function pulledAddress(db: Database, feedId: number, address: string): Promise<PulledAddress | null> {
   const row = await db.first<PulledAddress>(
-    'SELECT etag, last_modified AS lastModified, checksum, file_id AS fileId FROM pulled_addresses WHERE feed_id = $feedId AND address = $address',
+    'SELECT etag, last_modified AS lastModified, checksum, file_id AS fileId, asked_at AS askedAt FROM pulled_addresses WHERE feed_id = $feedId AND address = $address',
     { feedId, address },
   )
   return row ?? null
@@ -117,7 +118,7 @@ export async function pulledAddress(db: Database, feedId: number, address: strin
 export async function keepPulledAddress(
   db: Database,
   tx: Transaction,
-  row: PulledAddress & { feedId: number; address: string; askedAt: number },
+  row: PulledAddress & { feedId: number; address: string },
 ): Promise<void> {
   await db.run(
     `INSERT INTO pulled_addresses (feed_id, address, etag, last_modified, checksum, file_id, asked_at)
@@ -127,6 +128,10 @@ export async function keepPulledAddress(
     { ...row },
     tx,
   )
+}
+
+export async function touchPulledAddress(db: Database, tx: Transaction, feedId: number, address: string, askedAt: number): Promise<void> {
+  await db.run('UPDATE pulled_addresses SET asked_at = $askedAt WHERE feed_id = $feedId AND address = $address', { feedId, address, askedAt }, tx)
 }
 
 /** Whether another address of the feed gave these bytes last: then they are of that one too, and no correction touches them. */

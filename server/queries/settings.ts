@@ -1,6 +1,6 @@
 import type { Database, Transaction } from '../db'
 
-export type SettingName = 'clock-offset' | 'demo' | 'demo-last-day'
+export type SettingName = 'clock-offset' | 'demo' | 'demo-last-day' | 'tidied-at'
 
 export async function settingOf(db: Database, name: SettingName): Promise<string | null> {
   return (await db.first<{ value: string }>('SELECT value FROM settings WHERE name = $name', { name }))?.value ?? null

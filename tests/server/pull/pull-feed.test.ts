@@ -163,6 +163,20 @@ describe('a feed that fetches for itself', () => {
     expect(new Date(layer.producedAt!).toISOString()).toBe('2026-06-11T03:04:05.000Z')
   })
 
+  it('notes once a day that an address is still asked for, so that it is not forgotten', async () => {
+    await letPull({ address: `${provider.url}/latest.nc` })
+    provider.put('/latest.nc', await dayFile('10', 5))
+    await pull()
+    const askedAt = async () => (await context.db.first<{ askedAt: number }>('SELECT asked_at AS askedAt FROM pulled_addresses'))!.askedAt
+    const first = await askedAt()
+    context.clock.pass(60 * minute)
+    await pull()
+    expect(await askedAt()).toBe(first)
+    context.clock.pass(24 * 60 * minute)
+    expect((await pull()).lastRun).toMatchObject({ unchanged: 1, fetched: 0 })
+    expect(await askedAt()).toBeGreaterThan(first + 24 * 60 * minute)
+  })
+
   it('dates a file without a time by its address', async () => {
     await letPull({ address: `${provider.url}/{yyyy}/{DDD}/chl.tif` })
     provider.put('/2026/161/chl.tif', Buffer.from('a raster without a date'))
