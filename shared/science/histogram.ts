@@ -66,3 +66,26 @@ export function unpackHistogram(bytes: Uint8Array): AreaHistogram {
   for (let i = 0; i < count; i++) histogram[first + i] = view.getFloat32(1 + 4 * i, true)
   return histogram
 }
+
+/** `areaAboveKm2` of packed histograms that stand one behind the other, each with as many bytes as `lengths` says. */
+export function areasAboveKm2(packed: Uint8Array, lengths: readonly number[], level: number): (number | null)[] {
+  const place = level > 0 ? placeOf(Math.log10(level)) : NaN
+  const view = new DataView(packed.buffer, packed.byteOffset, packed.byteLength)
+  let at = 0
+  return lengths.map((length) => {
+    const from = at
+    at += length
+    if (!(place >= 0 && place <= bins)) return null
+    if (length === 0) return 0
+    const first = packed[from]!
+    const count = (length - 1) / 4
+    if (!Number.isInteger(count) || first + count > histogramLength) throw new RangeError('These bytes are no histogram.')
+    const split = Math.floor(place) + 1
+    let sum = 0
+    for (let bin = Math.max(first, split); bin < first + count; bin++) {
+      const area = view.getFloat32(from + 1 + 4 * (bin - first), true)
+      sum += bin === split ? area * (1 - (place - Math.floor(place))) : area
+    }
+    return sum
+  })
+}

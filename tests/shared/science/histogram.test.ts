@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { summarise } from '../../../shared/science/figures'
-import { areaAboveKm2, binOf, packHistogram, unpackHistogram } from '../../../shared/science/histogram'
+import { areaAboveKm2, areasAboveKm2, binOf, packHistogram, unpackHistogram } from '../../../shared/science/histogram'
 
 function histogramOf(...values: number[]) {
   const ones = new Float64Array(values.length).fill(1)
@@ -34,6 +34,15 @@ describe('area by value', () => {
   it('a level outside the bins cannot be told', () => {
     const histogram = histogramOf(1)
     for (const level of [0, -1, 0.0005, 1500, NaN]) expect(areaAboveKm2(histogram, level)).toBeNull()
+  })
+
+  it('is the same from many packed ones as from each', () => {
+    const histograms = [histogramOf(0.5, 0.75, 3), histogramOf(), histogramOf(0, 0.002, 5000), histogramOf(1, 1.05, 1.06)]
+    const packed = histograms.map(packHistogram)
+    for (const level of [0.001, 0.6, 1, 1.055, 1000, 2000, -1]) {
+      expect(areasAboveKm2(Buffer.concat(packed), packed.map((bytes) => bytes.length), level)).toEqual(histograms.map((one) => areaAboveKm2(one, level)))
+    }
+    expect(() => areasAboveKm2(Uint8Array.of(1, 2, 3), [3], 1)).toThrow(RangeError)
   })
 
   it('packs small and comes back', () => {
