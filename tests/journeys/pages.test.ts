@@ -26,7 +26,7 @@ beforeAll(async () => {
   otherPages = [
     paths.alerts.to(), paths.regions.to(), paths.editRegion.to({ id: alert.regionId }), paths.file.to({ id: file.id }), paths.feeds.to(),
     paths.feed.to({ id: alert.feedId }), paths.account.to(), paths.people.to(), paths.subscriptions.to(), paths.jobs.to(), paths.letters.to(),
-    paths.audit.to(),
+    paths.audit.to(), paths.layerMap.to(),
   ]
 })
 

@@ -76,7 +76,7 @@ function Readout({ layer, at }: { layer: Layer; at: Place }) {
           {layer.derived && `; worked out by ${layer.derived.formula}, version ${layer.derived.formulaVersion}`}
         </Fact>
         <Fact name="Layer and file">
-          {layer.id}, <Link className="link break-all" to={paths.file.to({ id: layer.fileId })}>{layer.fileName}</Link>
+          {layer.id}, <Link className="link inline-flex min-h-11 items-center break-all tab:min-h-0" to={paths.file.to({ id: layer.fileId })}>{layer.fileName}</Link>
         </Fact>
       </dl>
     </>

@@ -75,7 +75,7 @@ function FeedOnMap({ feeds, feed, address }: { feeds: readonly Feed[]; feed: Fee
       <div className="flex flex-wrap items-end justify-between gap-x-9 gap-y-3">
         <div>
           <div className="mb-1 text-small text-ink2">
-            <Link className="link" to={paths.layers.to()}>
+            <Link className="link inline-flex min-h-11 items-center tab:min-h-0" to={paths.layers.to()}>
               Layers
             </Link>
           </div>
