@@ -20,7 +20,12 @@ interface Chunked extends ChunkLayout {
 }
 
 const [deflateFilter, shuffleFilter] = [1, 2]
+
+/** Chunks unpacked last, of all files this thread has open: 64 MB. */
+const kept = new Map<string, Uint8Array>()
 const mostKeptBytes = 64 * 1024 * 1024
+let keptBytes = 0
+let readers = 0
 
 /**
  * NetCDF-4's usual storage (chunks under a version 1 B-tree, shuffle and deflate, little-endian) unpacked by Node's own
@@ -31,8 +36,7 @@ export function openChunkReader(path: string, library: { create_object_reference
   const descriptor = openSync(path, 'r')
   const read: ByteReader = (offset, length) => readExactly(descriptor, offset, length)
   const known = new Map<string, Chunked | null>()
-  const kept = new Map<string, Uint8Array>()
-  let keptBytes = 0
+  const reader = `${++readers}\0`
 
   const chunkedOf = (name: string, type: NumberType, dataset: Dataset): Chunked | null => {
     const before = known.get(name)
@@ -42,19 +46,12 @@ export function openChunkReader(path: string, library: { create_object_reference
     return found
   }
   const chunkBytes = (name: string, first: string, chunked: Chunked): Uint8Array | null => {
-    const key = `${name}\0${first}`
+    const key = `${reader}${name}\0${first}`
     const before = kept.get(key)
     if (before) return before
     const stored = chunked.chunks.get(first)
     const bytes = stored ? orNull(() => unpack(read(stored.address, stored.bytes), chunked)) : null
-    if (!bytes) return null
-    kept.set(key, bytes)
-    keptBytes += bytes.length
-    for (const [oldest, { length }] of kept) {
-      if (keptBytes <= mostKeptBytes) break
-      kept.delete(oldest)
-      keptBytes -= length
-    }
+    if (bytes) keep(key, bytes)
     return bytes
   }
 
@@ -63,8 +60,25 @@ export function openChunkReader(path: string, library: { create_object_reference
       const chunked = chunkedOf(name, type, dataset)
       return chunked && assemble(chunked, type, start, count, (first) => chunkBytes(name, first, chunked))
     },
-    close: () => closeSync(descriptor),
+    close: () => {
+      closeSync(descriptor)
+      for (const key of kept.keys()) if (key.startsWith(reader)) drop(key)
+    },
   }
+}
+
+function keep(key: string, bytes: Uint8Array): void {
+  kept.set(key, bytes)
+  keptBytes += bytes.length
+  for (const oldest of kept.keys()) {
+    if (keptBytes <= mostKeptBytes) return
+    drop(oldest)
+  }
+}
+
+function drop(key: string): void {
+  keptBytes -= kept.get(key)?.length ?? 0
+  kept.delete(key)
 }
 
 export function orNull<T>(work: () => T): T | null {
