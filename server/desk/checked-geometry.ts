@@ -1,7 +1,7 @@
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import type { CheckedOutline } from '../geography/outline/check-outline'
-import type { RefusedOutline } from '../workers/outline-tasks'
+import { presentRefusal } from './present-outline'
 
 export type { CheckedOutline } from '../geography/outline/check-outline'
 
@@ -9,13 +9,6 @@ export type { CheckedOutline } from '../geography/outline/check-outline'
 export async function checkedGeometry(context: Context, sent: unknown, inland: boolean): Promise<CheckedOutline> {
   const outcome = await context.workers.light('checkOutline', { sent, inland })
   if ('outline' in outcome) return outcome.outline
-  throw refusedGeometry(outcome.refused)
-}
-
-export function refusedGeometry({ sentence, place, reason }: RefusedOutline['refused']): ApiError {
-  return new ApiError('not-valid', sentence, {
-    fields: { geometry: sentence },
-    ...(place && { place: { longitude: place[0]!, latitude: place[1]! } }),
-    ...(reason && { reason }),
-  })
+  const { sentence, place, reason } = presentRefusal(outcome.refused)
+  throw new ApiError('not-valid', sentence, { fields: { geometry: sentence }, ...(place && { place }), ...(reason && { reason }) })
 }

@@ -4,7 +4,7 @@ import type { Context } from '../context'
 import { gridOf } from '../pipeline/known-grids'
 import { boxesMeet } from '../pipeline/summarise-layers'
 import { feedGrids } from '../queries/feed-grids'
-import { refusedGeometry } from './checked-geometry'
+import { presentOutline, presentRefusal } from './present-outline'
 
 /** An outline as it would be kept, and what the newest grid of each feed would hold of it. Nothing is saved. */
 export async function measureOutline(context: Context, { geometry, shoreBufferKm, inland }: z.infer<typeof measureRequest>): Promise<Measurement> {
@@ -13,13 +13,11 @@ export async function measureOutline(context: Context, { geometry, shoreBufferKm
   const boxes = ids.map((id) => newest.find((feed) => feed.gridId === id)!)
   const grids = await Promise.all(boxes.map(async ({ gridId, west, south, east, north }) => ({ grid: await gridOf(context, gridId), west, south, east, north })))
   const answer = await context.workers.light('measureOutline', { sent: geometry, inland, shoreBufferKm, grids })
-  if ('refused' in answer) throw refusedGeometry(answer.refused)
+  if ('refused' in answer) return { outline: null, refusal: presentRefusal(answer.refused), feeds: [] }
   const { outline, counts } = answer
   return {
-    geometry: outline.geometry,
-    areaKm2: outline.areaKm2,
-    repairs: outline.repairs,
-    marks: outline.marks,
+    outline: presentOutline(outline),
+    refusal: null,
     feeds: newest.map((feed) => {
       const meets = boxesMeet(outline.box, feed)
       const count = counts[ids.indexOf(feed.gridId)]!

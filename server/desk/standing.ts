@@ -1,4 +1,5 @@
 import { ageText } from '../../shared/figure-text'
+import { fewestWholeCells } from '../../shared/science/whole-water'
 import { dateOf } from '../../shared/science/local-day'
 import { regionStates, severities, type RegionStateName } from '../../shared/schemas/common'
 import type { RegionStanding } from '../../shared/schemas/regions'
@@ -66,6 +67,7 @@ function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; bec
   const layerAge = facts.newestLayerAt === null ? null : (now - facts.newestLayerAt) / hourMs
   if (layerAge === null) return { state: 'stale', because: `${facts.feedName} has sent no layer.` }
   if (layerAge > facts.silentAfterHours!) return { state: 'stale', because: `${facts.feedName} has been silent for ${ageText(layerAge)}.` }
+  if (isTooSmall(facts)) return { state: 'not ready', because: tooSmallText(facts) }
   if (judged.observedAt === null) return { state: 'not seen', because: 'No view has reached the coverage floor yet.' }
   const viewAge = (now - judged.observedAt) / hourMs
   const newerLayers = facts.newestLayerAt !== null && facts.newestLayerAt > judged.observedAt
@@ -77,6 +79,18 @@ function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; bec
     return { state: 'usual', because: 'One view is above the rule; the rule asks for more before it calls the water unusual.' }
   }
   return { state: 'usual', because: 'Its newest usable view does not meet the rule.' }
+}
+
+/** Too few whole water cells for percentiles, and no rule of somebody's own that does without. */
+function isTooSmall({ wholeWater, definition }: RegionFacts): boolean {
+  if (wholeWater === null || wholeWater >= fewestWholeCells || definition === null) return false
+  const doesWithout = definition.minimumWholeCells <= wholeWater && (definition.statistic === 'mean' || definition.statistic === 'geometricMean')
+  return !doesWithout
+}
+
+function tooSmallText({ wholeWater, feedName }: RegionFacts): string {
+  const holds = wholeWater === 0 ? 'no whole water cell' : wholeWater === 1 ? 'one whole water cell' : `${wholeWater} whole water cells`
+  return `It is too small for the cells of ${feedName}: it holds ${holds}, and ${fewestWholeCells} are needed to say what is usual.`
 }
 
 /** The order of worry: state, severity, then times usual; the longest unseen first among those not seen. */

@@ -10,6 +10,7 @@ import { presentEvent } from '../desk/present-event'
 import { presentRegions } from '../desk/present-region'
 import { regionBaseline } from '../desk/region-baseline'
 import { regionSeries } from '../desk/region-series'
+import { singleCells } from '../desk/single-cells'
 import { cutAt180 } from '../exports/cut-at-180'
 import { smallFile, smallUpload } from '../middleware/small-upload'
 import type { RegionRecord } from '../models/region'
@@ -53,6 +54,7 @@ export function regionRoutes(router: Router, context: Context): void {
   serve(router, context, endpoints.region, async ({ params }) => one(await known(params.id)))
   serve(router, context, endpoints.changeRegion, async ({ person, params, body }) => one(await changeRegion(context, person, params.id, body)))
   serve(router, context, endpoints.retireRegion, ({ person, params }) => retireRegion(context, person, params.id))
+  serve(router, context, endpoints.regionCells, ({ params, query }) => singleCells(context, params.id, query.feedId))
   serve(router, context, endpoints.regionSeries, ({ params, query }) => regionSeries(context, params.id, query))
   serve(router, context, endpoints.regionBaseline, ({ params, query }) => regionBaseline(context, params.id, query))
   serve(router, context, endpoints.regionEvents, async ({ params, query }) => {

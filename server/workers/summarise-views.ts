@@ -2,6 +2,7 @@ import { figuresOf, figuresRoom, type FiguresRoom } from '../../shared/science/f
 import { packHistogram } from '../../shared/science/histogram'
 import { mergeLayers, type LayerValues } from '../../shared/science/merge-views'
 import { regionOutline, type RegionOutline } from '../../shared/science/region-outline'
+import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-water'
 import { maskedAreas } from './masked-areas'
 import type { MaskedValues } from './read-masked'
 import { readTiles } from './read-tiles'
@@ -22,6 +23,8 @@ interface Region {
   room: FiguresRoom
   /** An outline without any water here is no mask for this region: every cell counts. */
   water: Uint8Array | undefined
+  /** Too few whole water cells for percentiles to mean anything. */
+  few: boolean
 }
 
 /**
@@ -60,18 +63,21 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
 function regionOf(weights: RegionCellWeights): Region {
   const { share, areaKm2 } = weights
   const water = weights.water.some((cell) => cell === 1) ? weights.water : undefined
-  return { weights, plan: planOf(weights, weights), room: figuresRoom(share.length), outline: regionOutline({ share, areaKm2, ...(water ? { water } : {}) }), water }
+  return { weights, plan: planOf(weights, weights), room: figuresRoom(share.length), outline: regionOutline({ share, areaKm2, ...(water ? { water } : {}) }), water, few: wholeWaterCells(weights) < fewestWholeCells }
 }
 
 function madeWhen({ processingVersion, observedAt, endsAt, producedAt }: LayerPlace): Omit<LayerValues, 'values'> {
   return { processingVersion, observedAt, endsAt, producedAt }
 }
 
-function viewFigures(layers: RegionLayer[], { weights, outline, room, water }: Region, scale: Input['scale']): ViewFigures {
+const noPercentiles = { median: null, p10: null, p25: null, p75: null, p90: null, p95: null }
+
+function viewFigures(layers: RegionLayer[], { weights, outline, room, water, few }: Region, scale: Input['scale']): ViewFigures {
   const values = layers.length === 1 ? layers[0]!.values : mergeLayers(layers, scale)
   const { histogram, maxIndex, ...rest } = figuresOf(values, outline, scale, room)
   return {
     ...rest,
+    ...(few && noPercentiles),
     maxCell: maxIndex === null ? null : weights.index[maxIndex]!,
     histogram: packHistogram(histogram),
     masked: maskedAreas(layers, values, weights, water),

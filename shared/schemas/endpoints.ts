@@ -75,6 +75,7 @@ export const endpoints = {
   changeRegion: endpoint({ method: 'PATCH', path: '/regions/:id', may: 'region:edit', summary: 'Change a region', params: idParam, body: regions.regionChange, reply: regions.region }),
   retireRegion: endpoint({ method: 'DELETE', path: '/regions/:id', may: 'region:edit', summary: 'Retire a region; its history stays', params: idParam, status: 204 }),
   regionVersions: endpoint({ method: 'GET', path: '/regions/:id/versions', may: 'read', summary: 'Every version of its outline, newest first', params: idParam, reply: z.object({ items: z.array(outlines.regionVersion), nextCursor: z.null() }) }),
+  regionCells: endpoint({ method: 'GET', path: '/regions/:id/cells', may: 'read', summary: 'The single cells of its newest view, where it holds too few whole water cells for percentiles', params: idParam, query: outlines.cellsQuery, reply: outlines.singleCells }),
   regionSeries: endpoint({ method: 'GET', path: '/regions/:id/series', may: 'read', summary: 'Figures of every view', params: idParam, query: series.seriesQuery, reply: series.series }),
   regionBaseline: endpoint({ method: 'GET', path: '/regions/:id/baseline', may: 'read', summary: 'What is usual by day of year', params: idParam, query: series.baselineQuery, reply: series.baseline }),
   regionEvents: endpoint({ method: 'GET', path: '/regions/:id/events', may: 'read', summary: 'Events', params: idParam, query: series.eventsQuery, reply: z.object({ items: z.array(series.bloomEvent), nextCursor: z.null() }) }),

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { id, instant } from './common'
+import { day, id, instant } from './common'
 import { regionGeometry } from './regions'
 
 export const place = z.object({ longitude: z.number(), latitude: z.number() })
@@ -37,7 +37,12 @@ export const foundOutline = z.object({
   marks: z.array(repairMark),
 })
 
-export const measurement = foundOutline.extend({ feeds: z.array(feedCount) })
+/** Why an outline cannot be kept, and where. */
+export const outlineRefusal = z.object({ sentence: z.string(), place: place.nullable(), reason: z.enum(['all-land']).nullable() })
+export type OutlineRefusal = z.infer<typeof outlineRefusal>
+
+/** Asking is no fault: an outline that cannot be kept is answered with the reason. */
+export const measurement = z.object({ outline: foundOutline.nullable(), refusal: outlineRefusal.nullable(), feeds: z.array(feedCount) })
 export type Measurement = z.infer<typeof measurement>
 
 export const regionVersion = z.object({
@@ -60,7 +65,7 @@ export const importFormats = ['GeoJSON', 'KML', 'shapefile'] as const
 export const importedArea = z.object({
   name: z.string(),
   found: foundOutline.nullable(),
-  refusal: z.object({ sentence: z.string(), place: place.nullable(), reason: z.enum(['all-land']).nullable() }).nullable(),
+  refusal: outlineRefusal.nullable(),
   /** Set once it is saved. */
   regionId: id.nullable(),
 })
@@ -75,4 +80,16 @@ export const importQuery = z.object({
   /** Its areas of land alone are lakes or narrow inlets: take them too. */
   inland: z.enum(['true', 'false']).default('false'),
 })
+export const cellsQuery = z.object({ feedId: z.coerce.number().int().positive() })
+
+export const singleCells = z.object({
+  /** Whether it holds too few whole water cells for percentiles; otherwise no cells are given. */
+  few: z.boolean(),
+  wholeCells: z.number().int().nullable(),
+  day: day.nullable(),
+  unit: z.string().nullable(),
+  cells: z.array(z.object({ longitude: z.number(), latitude: z.number(), share: z.number(), whole: z.boolean(), water: z.boolean(), value: z.number().nullable() })),
+})
+export type SingleCells = z.infer<typeof singleCells>
+
 export const outlineQuery = z.object({ version: z.coerce.number().int().positive().optional() })

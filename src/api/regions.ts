@@ -31,6 +31,13 @@ export const regionVersionsQuery = (id: number) =>
     queryFn: ({ signal }) => call(endpoints.regionVersions, { params: { id }, signal }),
   })
 
+/** Cells of the newest view, of a region that holds too few for percentiles. */
+export const singleCellsQuery = (regionId: number, feedId: number) =>
+  queryOptions({
+    queryKey: ['regions', regionId, 'cells', feedId],
+    queryFn: ({ signal }) => call(endpoints.regionCells, { params: { id: regionId }, query: { feedId }, signal }),
+  })
+
 /** Reads the areas of a file; nothing is saved by it. */
 export function useReadAreas() {
   return useMutation({

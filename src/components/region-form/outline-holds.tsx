@@ -17,23 +17,36 @@ export function OutlineHolds({ feeds }: { feeds: readonly FeedCount[] }) {
           </tr>
         </thead>
         <tbody>
-          {feeds.map((feed) => (
+          {sameCounts(feeds).map(([feed, ...others]) => (
             <Tr key={feed.feedId}>
               <Td>
                 {feed.name}
+                {others.length > 0 && <span className="block text-fine text-ink2">the same in {others.map((other) => other.name).join('; ')}</span>}
                 {feed.wholeCells < fewestWholeCells && <span className="block text-fine text-ink2">{tooSmall(feed)}</span>}
               </Td>
               <Td figures className={feed.wholeCells < fewestWholeCells ? 'font-strong' : ''}>
                 {!feed.exact && <span className="text-ink2">about </span>}
                 {grouped(feed.exact ? feed.wholeCells : Number(feed.wholeCells.toPrecision(2)))}
               </Td>
-              <Td figures>{feed.nearLandShare !== null && `${percent(feed.nearLandShare)} %`}</Td>
+              <Td figures>{feed.nearLandShare !== null && percent(feed.nearLandShare)}</Td>
             </Tr>
           ))}
         </tbody>
       </Table>
     </section>
   )
+}
+
+/** Feeds on one grid hold the same; they share a row. */
+function sameCounts(feeds: readonly FeedCount[]): [FeedCount, ...FeedCount[]][] {
+  const groups = new Map<string, [FeedCount, ...FeedCount[]]>()
+  for (const feed of feeds) {
+    const key = JSON.stringify([feed.cells, feed.wholeCells, feed.waterAreaKm2])
+    const group = groups.get(key)
+    if (group) group.push(feed)
+    else groups.set(key, [feed])
+  }
+  return [...groups.values()]
 }
 
 function tooSmall({ cells }: FeedCount): string {

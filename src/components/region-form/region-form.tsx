@@ -51,9 +51,9 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
   const shoreBufferKm = bufferOf(useWatch({ control: form.control, name: 'shoreBufferKm' })) ?? 0
   const inland = useWatch({ control: form.control, name: 'inland' })
   const measured = useMeasured({ geometry, corners, drawing, shoreBufferKm, inland })
-  const repairs = drawing ? [] : (measured.exact?.repairs ?? [])
-  const shown = repairs.length > 0 ? measured.exact!.geometry : geometry
-  const outlineProblem = measured.problem ?? (measured.exact ? undefined : refused['geometry']) ?? (noOutline && !geometry ? 'Draw the outline, or type it.' : undefined)
+  const repairs = drawing ? [] : (measured.outline?.repairs ?? [])
+  const shown = repairs.length > 0 ? measured.outline!.geometry : geometry
+  const outlineProblem = measured.problem ?? (measured.outline ? undefined : refused['geometry']) ?? (noOutline && !geometry ? 'Draw the outline, or type it.' : undefined)
   const areaKm2 = drawing ? (corners.length >= 3 ? ringAreaKm2(corners) : null) : geometry ? polygonAreaKm2(geometry) : null
 
   function beginSiting() {
@@ -69,7 +69,7 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
   return (
     <form id={id} noValidate onSubmit={(event) => void submit(event)} className="grid grid-cols-[minmax(0,1fr)] gap-x-9 gap-y-8 desk:grid-cols-[minmax(0,1.5fr)_minmax(0,1fr)]">
       <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-4">
-        <OutlineSize areaKm2={areaKm2} drawing={drawing} corners={corners.length} />
+        <OutlineSize areaKm2={measured.problem === undefined ? areaKm2 : null} drawing={drawing} corners={corners.length} />
         {outlineProblem && (
           <p role="alert" className="flex items-start gap-2 text-small">
             <FaultMark /> {outlineProblem}
@@ -83,7 +83,7 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
             <DrawMap
               bounds={bounds}
               geometry={shown}
-              repaired={drawing ? [] : measured.exact?.marks}
+              repaired={drawing ? [] : measured.outline?.marks}
               fault={measured.place && { ...measured.place, about: measured.problem ?? '' }}
               drawing={drawing && !siting}
               onDrawing={(next) => {
@@ -104,7 +104,7 @@ export function RegionForm({ id, fields, outline, ground, onFeed, onSave, error,
             />
           </Suspense>
         </div>
-        {measured.data && <OutlineHolds feeds={measured.data.feeds} />}
+        <OutlineHolds feeds={measured.feeds} />
         <details>
           <summary className="link inline-flex min-h-11 items-center font-strong tab:min-h-0">Type or paste the outline</summary>
           <div className="mt-3">

@@ -1,11 +1,9 @@
 import { useQuery } from '@tanstack/react-query'
 import { useMemo } from 'react'
 import type { RegionGeometry } from '../../../shared/schemas/regions'
-import { ApiError } from '../../api/api-error'
-import { fieldErrors } from '../../api/field-errors'
+import { sentenceOf } from '../../api/api-error'
 import { measureQuery } from '../../api/regions'
 import { useSettled } from '../../hooks/use-settled'
-import type { Position } from '../outline/parse-position'
 
 const waitMs = 350
 
@@ -27,25 +25,19 @@ export function useMeasured({ geometry, corners, drawing, shoreBufferKm, inland 
   )
   const measured = useQuery({ ...measureQuery(asked.outline, asked.shoreBufferKm, asked.inland), enabled: asked.outline !== null })
   const current = outline !== null && asked.outline === outline
-  const error = current && measured.error instanceof ApiError ? measured.error : null
+  const answered = current && !measured.isPlaceholderData ? measured.data : undefined
+  const refusal = answered?.refusal ?? null
   return {
-    data: outline === null || error ? undefined : measured.data,
+    feeds: outline === null || refusal ? [] : (measured.data?.feeds ?? []),
     /** Only the answer to the outline as it stands may be drawn in its place. */
-    exact: current && !measured.isPlaceholderData && !error ? measured.data : undefined,
-    problem: fieldErrors(error)['geometry'] ?? (error ? error.message : undefined),
-    place: placeOf(error),
-    allLand: error?.details['reason'] === 'all-land',
+    outline: answered?.outline ?? undefined,
+    problem: refusal?.sentence ?? (current && measured.error ? sentenceOf(measured.error) : undefined),
+    place: refusal?.place ?? undefined,
+    allLand: refusal?.reason === 'all-land',
   }
 }
 
 function provisional(corners: readonly [number, number][]): RegionGeometry | null {
   const [first] = corners
   return first && corners.length >= 3 ? { type: 'Polygon', coordinates: [[...corners, first]] } : null
-}
-
-function placeOf(error: ApiError | null): Position | undefined {
-  const place = error?.details['place']
-  if (typeof place !== 'object' || place === null || !('longitude' in place) || !('latitude' in place)) return undefined
-  const { longitude, latitude } = place
-  return typeof longitude === 'number' && typeof latitude === 'number' ? { longitude, latitude } : undefined
 }

@@ -16,6 +16,8 @@ export default function FoundMap({ items, ticked }: { items: readonly ImportedAr
   const faults = items.flatMap(({ refusal }) => (refusal?.place ? [{ ...refusal.place, about: refusal.sentence }] : []))
   const pointsAsOutlines = faults.map(({ longitude, latitude }): RegionGeometry => ({ type: 'Polygon', coordinates: [[[longitude, latitude]]] }))
   const bounds = boundsAround([...found.map((one) => one.geometry), ...pointsAsOutlines], 0.3) ?? ground.bounds
+  // What the map is drawn on is settled when it is first shown.
+  if (!ground.ready) return <div className="hatch aspect-[1.2] opacity-60" />
   return (
     <SeaMap label="Map of the areas in the file" bounds={bounds} hatched={ground.layerId !== undefined} aspect={1.2}>
       {ground.layerId !== undefined && <LayerTiles layerId={ground.layerId} />}

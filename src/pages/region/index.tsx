@@ -18,6 +18,7 @@ import { RegionFigures } from './region-figures'
 import { RegionStatement } from './region-statement'
 import { RetireRegion } from './retire-region'
 import { RulePart } from './rule-part'
+import { SingleCellsPart } from './single-cells-part'
 import { useCreatedRepairs } from './use-created-repairs'
 
 const SeriesPart = lazy(() => import('./series-part'))
@@ -57,6 +58,7 @@ function RegionParts({ region }: { region: Region }) {
       {repairs.length > 0 && <Message title="The outline was put right as it was saved:">{repairs.join(' ')}</Message>}
       {progress && <Progress done={progress.done} total={progress.total} label="Reading history" unit="layers" />}
       <RegionFigures standing={region.standing} />
+      {region.standing.feedId !== null && progress === null && <SingleCellsPart regionId={region.id} feedId={region.standing.feedId} />}
       <Suspense fallback={<Waiting lines={6} />}>
         <SeriesPart region={region} />
       </Suspense>

@@ -32,10 +32,11 @@ const box = (west: number, south: number, east: number, north: number) => ({
 describe('an outline sent over HTTP', () => {
   it('is refused with its sentence and the place for the map', async () => {
     const bow = { type: 'Polygon', coordinates: [[[-12, 50], [-11, 51], [-11, 50], [-12, 51], [-12, 50]]] }
-    for (const path of ['/api/regions', '/api/regions/measure']) {
-      const { body } = await (await api()).post(path).send({ name: 'Bow', geometry: bow }).expect(422)
-      expect(body.error.details).toMatchObject({ fields: { geometry: 'The outline crosses itself near 50.500 N, 11.500 W.' }, place: { longitude: -11.5, latitude: 50.5 } })
-    }
+    const [sentence, place] = ['The outline crosses itself near 50.500 N, 11.500 W.', { longitude: -11.5, latitude: 50.5 }]
+    const { body } = await (await api()).post('/api/regions').send({ name: 'Bow', geometry: bow }).expect(422)
+    expect(body.error.details).toMatchObject({ fields: { geometry: sentence }, place })
+    const measured = await (await api()).post('/api/regions/measure').send({ geometry: bow }).expect(200)
+    expect(measured.body).toEqual({ outline: null, refusal: { sentence, place, reason: null }, feeds: [] })
   })
 
   it('of land alone is refused, and taken once it is said to be a lake', async () => {
@@ -220,5 +221,49 @@ describe('redrawing while an event is running', () => {
     await runJobs(context)
     expect((await alert()).version).toBe(before)
     expect((await standings(context, regionId)).get(regionId)!.because).toBe('Its history is being read.')
+  })
+})
+
+describe('a region of few whole cells', () => {
+  // Two whole cells of a tenth of a degree, and a strip of two more.
+  const small = box(-11.8, 50.2, -11.65, 50.4)
+  let regionId: number
+  beforeEach(async () => {
+    regionId = (await aRegion(context, person, { geometry: small, feedId: feed.id })).id
+    await send(context, await seaFile(quietYears([2022, 2023, 2024, 2025], '05-25', 30)))
+    await send(context, await seaFile([...days(['2026-06-10', 40]), { at: '2026-06-11T12:00:00Z', value: (row: number, column: number) => (row === 2 && column === 2 ? NaN : 50 + column) }]))
+    await runJobs(context)
+  })
+
+  it('keeps cells, valid cells, mean and greatest value of a view, and no percentiles', async () => {
+    const { body } = await (await api()).get(`/api/regions/${regionId}/series?feedId=${feed.id}&from=2026-06-11`).expect(200)
+    const { columns } = body
+    expect([columns.cells[0], columns.valid[0], columns.max[0]]).toEqual([4, 3, 53])
+    expect(columns.mean[0]).toBeGreaterThan(50)
+    for (const name of ['median', 'p10', 'p25', 'p75', 'p90', 'p95']) expect(columns[name]).toEqual([null])
+  })
+
+  it('raises nothing by itself however high the values are, and its standing says why', async () => {
+    expect(await context.models.alerts.count()).toBe(0)
+    expect(await context.models.events.count()).toBe(0)
+    const standing = (await standings(context, regionId)).get(regionId)!
+    expect(standing).toMatchObject({ state: 'not ready', because: 'It is too small for the cells of Chlorophyll: it holds 2 whole water cells, and 5 are needed to say what is usual.' })
+  })
+
+  it('gives the single cells of its newest view', async () => {
+    const { body } = await (await api()).get(`/api/regions/${regionId}/cells?feedId=${feed.id}`).expect(200)
+    expect(body).toMatchObject({ few: true, wholeCells: 2, day: '2026-06-11', unit: 'mg m-3' })
+    expect(body.cells.map((cell: { value: number | null; whole: boolean; longitude: number }) => [cell.longitude.toFixed(2), cell.whole, cell.value])).toEqual([
+      ['-11.75', true, null],
+      ['-11.65', false, 53],
+      ['-11.75', true, 52],
+      ['-11.65', false, 53],
+    ])
+  })
+
+  it('gives no cells of a region that holds enough', async () => {
+    const large = await aRegion(context, person, { name: 'Large Water' })
+    await runJobs(context)
+    expect((await (await api()).get(`/api/regions/${large.id}/cells?feedId=${feed.id}`)).body).toMatchObject({ few: false, wholeCells: 16, cells: [] })
   })
 })
