@@ -36,8 +36,8 @@ export function FeedsChoice({ file, proposal, form, onShow }: Props) {
       <SectionHead ruled={false} count={`${rows.filter((row) => row.taken).length} of ${rows.length}`}>
         {bands ? 'Bands to read, a feed each' : 'Feeds this file can serve'}
       </SectionHead>
-      <Table label="Feeds to make">
-        <thead>
+      <Table label="Feeds to make" role="table">
+        <thead className="max-tab:hidden">
           <tr>
             <Th className="w-14">Read</Th>
             <Th figures className="w-24">Wavelength</Th>
@@ -47,19 +47,19 @@ export function FeedsChoice({ file, proposal, form, onShow }: Props) {
         </thead>
         <tbody>
           {rows.map(({ one, taken: read, field, nameField, error }) => (
-            <tr key={one.variable} className="border-b border-rule">
-              <td className="py-1 pr-4">
+            <tr key={one.variable} role="row" className="border-b border-rule max-tab:grid max-tab:grid-cols-[auto_auto_minmax(0,1fr)] max-tab:items-center max-tab:pb-2">
+              <td role="cell" className="py-1 pr-4">
                 <label className="grid min-h-11 min-w-11 place-items-center justify-items-start tab:min-h-9 tab:min-w-9">
                   <input type="checkbox" aria-label={`Read ${one.variable}`} className="size-4.5 accent-accent" {...register(field)} />
                 </label>
               </td>
-              <td className="fig py-1 pr-4 text-right whitespace-nowrap">{wavelengthOf(file, one.variable)}</td>
-              <td className="py-1 pr-4">
+              <td role="cell" className="fig py-1 pr-4 text-right whitespace-nowrap">{wavelengthOf(file, one.variable)}</td>
+              <td role="cell" className="py-1 pr-4">
                 <button type="button" className="link fig min-h-11 break-all text-left tab:min-h-0" onClick={() => onShow(one.variable)}>
                   {one.variable}
                 </button>
               </td>
-              <td className="py-1">
+              <td role="cell" className="py-1 max-tab:col-span-3">
                 <input aria-label={`Name of the feed of ${one.variable}`} aria-invalid={Boolean(error)} disabled={!read} className={nameBox} {...register(nameField)} />
                 {error && <Fault>{error}</Fault>}
               </td>
