@@ -2,6 +2,7 @@ import { closeSync, openSync } from 'node:fs'
 import { inflateSync } from 'node:zlib'
 import type { Dataset, File } from 'h5wasm'
 import { unshuffled } from '../decoded/shuffle'
+import { LayerRefused } from '../layer-refused'
 import { readExactly } from './bytes'
 import { chunkTree, type ByteReader, type StoredChunk } from './hdf5-btree'
 import { chunkLayout, type ChunkLayout } from './hdf5-layout'
@@ -50,7 +51,8 @@ export function openChunkReader(path: string, library: { create_object_reference
     const before = kept.get(key)
     if (before) return before
     const stored = chunked.chunks.get(first)
-    const bytes = stored ? orNull(() => unpack(read(stored.address, stored.bytes), chunked)) : null
+    const packed = stored ? orNull(() => read(stored.address, stored.bytes)) : null
+    const bytes = packed && unpack(name, packed, chunked)
     if (bytes) keep(key, bytes)
     return bytes
   }
@@ -107,11 +109,22 @@ function describe(read: ByteReader, address: number, type: NumberType, dataset: 
   return tree && { ...layout, chunks: tree, shuffle: filters.includes(shuffleFilter), deflate: filters.includes(deflateFilter) }
 }
 
-function unpack(stored: Uint8Array, { chunk, cellBytes, shuffle, deflate }: Chunked): Uint8Array | null {
+/** Null where zlib cannot read it. A chunk of another size than it should be the library would cut, or fill up, and say nothing. */
+function unpack(name: string, stored: Uint8Array, { chunk, cellBytes, shuffle, deflate }: Chunked): Uint8Array | null {
   const expected = chunk.reduce((product, n) => product * n, cellBytes)
-  const plain = deflate ? inflateSync(stored, { maxOutputLength: expected, chunkSize: Math.max(64, expected) }) : stored
-  if (plain.length !== expected) return null
+  let plain = stored
+  try {
+    if (deflate) plain = inflateSync(stored, { maxOutputLength: expected, chunkSize: Math.max(64, expected) })
+  } catch (error) {
+    if (error instanceof RangeError) throw wrongSize(name, expected)
+    return null
+  }
+  if (plain.length !== expected) throw wrongSize(name, expected)
   return shuffle && cellBytes > 1 ? unshuffled(plain, cellBytes) : Uint8Array.from(plain)
+}
+
+function wrongSize(name: string, expected: number): LayerRefused {
+  return new LayerRefused('damaged', `The file is damaged: ${name} cannot be read back whole.`, { what: name, reason: `a chunk does not unpack to its ${expected} bytes` })
 }
 
 /** The block, gathered from its chunks; null as soon as one of them cannot be had. */

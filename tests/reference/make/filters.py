@@ -15,6 +15,8 @@ import tempfile
 import h5py
 import hdf5plugin  # noqa: F401 (sets where h5py finds Debian's filters)
 import numpy as np
+import rasterio
+import rasterio.transform
 import shapely
 import tables
 
@@ -27,8 +29,6 @@ grids.rng = np.random.default_rng(20250711)
 grids.expected.clear()
 REFUSED = os.path.normpath(os.path.join(OUT, '..', 'refused'))
 NUMBERS = dict(lz4=32004, bzip2=307, bitshuffle=32008, blosc=32001, zstd=32015, zfp=32013)
-# A new file carries the time it was written, unless told not to: made twice, the bytes are the same.
-h5py.get_config().track_order = False
 
 
 FINE = (58.253 + 0.1 * np.arange(36), 2.2537 + 0.12 * np.arange(42))
@@ -76,6 +76,7 @@ def by_hand(data, pipeline, chunk_of, mask=0, fill=None):
     """Chunks stored as given, under filters h5py itself may not have."""
     def create(f):
         plist = h5py.h5p.create(h5py.h5p.DATASET_CREATE)
+        plist.set_obj_track_times(False)
         plist.set_chunk((1, 6, 14))
         for number, options in pipeline:
             plist.set_filter(number, h5py.h5z.FLAG_OPTIONAL, options)
@@ -101,6 +102,7 @@ def zstd(chunk, _row):
 
 def nbit(f):
     plist = h5py.h5p.create(h5py.h5p.DATASET_CREATE)
+    plist.set_obj_track_times(False)
     plist.set_chunk((1, 12, 14))
     plist.set_filter(h5py.h5z.FILTER_NBIT, h5py.h5z.FLAG_MANDATORY)
     kind = h5py.h5t.STD_I32LE.copy()
@@ -113,6 +115,7 @@ def nbit(f):
 def nbit_float(data):
     def create(f):
         plist = h5py.h5p.create(h5py.h5p.DATASET_CREATE)
+        plist.set_obj_track_times(False)
         plist.set_chunk((1, 12, 14))
         plist.set_filter(h5py.h5z.FILTER_NBIT, h5py.h5z.FLAG_MANDATORY)
         dataset = h5py.Dataset(h5py.h5d.create(f.id, b'chlor_a', h5py.h5t.IEEE_F32LE, h5py.h5s.create_simple((1, 12, 14)), plist))
@@ -171,6 +174,7 @@ def main():
 def compact(data):
     def create(f):
         plist = h5py.h5p.create(h5py.h5p.DATASET_CREATE)
+        plist.set_obj_track_times(False)
         plist.set_layout(h5py.h5d.COMPACT)
         dataset = h5py.Dataset(h5py.h5d.create(f.id, b'chlor_a', h5py.h5t.IEEE_F32LE, h5py.h5s.create_simple(data.shape), plist))
         dataset[...] = data
@@ -181,6 +185,7 @@ def compact(data):
 def implicit(data):
     def create(f):
         plist = h5py.h5p.create(h5py.h5p.DATASET_CREATE)
+        plist.set_obj_track_times(False)
         plist.set_chunk((1, 5, 6))
         plist.set_alloc_time(h5py.h5d.ALLOC_TIME_EARLY)
         dataset = h5py.Dataset(h5py.h5d.create(f.id, b'chlor_a', h5py.h5t.IEEE_F32LE, h5py.h5s.create_simple(data.shape), plist))
@@ -211,12 +216,51 @@ def refused(data):
     file('h5-nbit-17-bits.h5', nbit, folder=REFUSED)
     fine = stored(np.ceil(grids.field(1, 36, 42) * 8) / 8)
     file('h5-blosc-zlib.h5', plain(fine, compression=NUMBERS['blosc'], compression_opts=(0, 0, 0, 0, 5, 1, 4), chunks=(1, 18, 42)), folder=REFUSED, place=FINE)
+    hostile(data)
+    with rasterio.open(os.path.join(REFUSED, 'rgb.tif'), 'w', driver='GTiff', height=8, width=8, count=3, dtype='uint8', photometric='RGB', crs='EPSG:4326',
+                       transform=rasterio.transform.from_origin(2, 62, 0.3, 0.3)) as ds:
+        ds.write((np.arange(192) % 256).reshape(3, 8, 8).astype('u1'))
     path = os.path.join(REFUSED, 'h5-lzo.h5')
     with tables.open_file(path, 'w') as f:
         f.create_carray('/', 'chlor_a', obj=data, chunkshape=(1, 6, 14), filters=tables.Filters(complevel=3, complib='lzo'))
     with h5py.File(path, 'r+') as f:
         axes(f)
         meaning(f, f['chlor_a'])
+
+
+def hostile(data):
+    import zlib
+    # 28 MB out of a chunk that says it has 336 bytes; a chunk of 1.6 GB; 4e12 cells in a few kilobytes.
+    file('h5-chunk-deflate-bomb.h5', by_hand(data, [(1, (9,))], lambda c, row: zlib.compress(bytes(28_000_000), 9) if row == 0 else zlib.compress(c.tobytes())), folder=REFUSED)
+    for name, shape, chunks in (('h5-huge-chunk.h5', (1, 20000, 20000), (1, 20000, 20000)), ('h5-absurd-dimensions.h5', (1, 2000000, 2000000), (1, 10, 10))):
+        lat, lon = (np.linspace(-80, 80, shape[1]), np.linspace(-170, 170, shape[2])) if 'chunk.' in name else (LAT, LON)
+        with h5py.File(os.path.join(REFUSED, name), 'w') as f:
+            f.create_dataset('time', data=np.array([19844.0])).attrs['units'] = 'days since 1970-01-01'
+            for axis, values, unit, n in (('lat', lat, 'degrees_north', shape[1]), ('lon', lon, 'degrees_east', shape[2])):
+                # An axis nobody wrote: its cells are all fill values.
+                a = f.create_dataset(axis, (n,), 'f8', chunks=(min(n, 1000),), compression='gzip') if n > 100000 else f.create_dataset(axis, data=np.round(values, 1) if n < 100 else values, compression='gzip')
+                a.attrs['units'] = unit
+            meaning(f, f.create_dataset('chlor_a', shape, 'f4', chunks=chunks, compression='gzip'))
+    with h5py.File(os.path.join(REFUSED, 'h5-groups-in-circles.h5'), 'w') as f:
+        group = f
+        for depth in range(60):
+            group = group.create_group(f'g{depth}')
+            group['again'] = f['/']
+            group['up'] = group.parent
+        group['data'] = data
+    kind = np.dtype('f4')
+    for depth in range(24):
+        kind = np.dtype([(f'level{depth}', kind)])
+    file('h5-deep-attributes.h5', lambda f: f.create_dataset('chlor_a', data=data), folder=REFUSED)
+    with h5py.File(os.path.join(REFUSED, 'h5-deep-attributes.h5'), 'r+') as f:
+        v = f['chlor_a']
+        v.attrs.create('deep', np.zeros(3, kind))
+        v.attrs.create('ragged', [np.arange(3.0), np.arange(2.0)], dtype=h5py.vlen_dtype('f8'))
+        v.attrs.create('points at', v.ref, dtype=h5py.ref_dtype)
+        v.attrs['empty'] = h5py.Empty('f4')
+        f.attrs['<script>alert(1)</script>'] = '"><img src=x onerror=alert(2)>'
+        for i in range(400):
+            v.attrs[f'note {i:03}'] = 'x' * 100
 
 
 if __name__ == '__main__':
