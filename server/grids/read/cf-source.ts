@@ -43,6 +43,9 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
     placed.push(one)
   }
   if (placed.length === 0) throw nothingPlaced(file, fileName, climatological)
+  if (placed.every(({ variable }) => variable.times.length === 0)) {
+    throw new LayerRefused('no-time', 'This file holds no time step: its time axis is empty.', { fileName, variables: placed.slice(0, 20).map(({ variable }) => variable.name) })
+  }
   attachFlags(file, placed, warnings)
 
   return {

@@ -99,7 +99,14 @@ describe('a classic file that means harm', () => {
     ['declares a huge grid in a few bytes', classic({ dimensions: [['lat', 2_000_000_000], ['lon', 2_000_000_000]], variables: [{ name: 'chl', on: [0, 1], notes: chl }] }), /^(damaged|too-large|truncated)$/, /declares|reach|impossible/],
     ['declares an axis that is not there', classic({ dimensions: [['lat', 900_000], ['lon', 3]], variables: [{ name: 'lat', on: [0], notes: north }] }), /^truncated$/, /lat should reach to byte/],
     ['lies about its records', Buffer.concat([classic({ dimensions: [['time', 0], ['x', 3]], variables: [{ name: 't', on: [0, 1], values: [1, 2, 3] }], records: 4_000_000 })]), /^truncated$/, /should reach to byte/],
-    ['has a dimension of no size', classic({ dimensions: [['lat', 3], ['lon', 2], ['none', 0]], variables: [...axes([1, 2, 3], [4, 5]), { name: 'chl', on: [2, 0, 1], notes: chl }] }), /^no-(grid|time)$/, /\S/],
+    ['has a dimension of no size', classic({ dimensions: [['lat', 3], ['lon', 2], ['none', 0]], variables: [...axes([1, 2, 3], [4, 5]), { name: 'chl', on: [2, 0, 1], notes: chl }] }), /^(no-grid|unknown-place)$/, /\S/],
+    ['has a time axis that is empty', classic({
+      dimensions: [['time', 0], ['lat', 3], ['lon', 2]],
+      variables: [
+        { name: 'lat', on: [1], notes: north, values: [1, 2, 3] }, { name: 'lon', on: [2], notes: east, values: [4, 5] },
+        { name: 'time', on: [0], notes: [['units', 'days since 2024-01-01']] }, { name: 'chl', on: [0, 1, 2], notes: chl },
+      ],
+    }), /^no-time$/, /its time axis is empty/],
     ['has latitudes that are no numbers', small([NaN, NaN, NaN], [4, 5]), /^unknown-place$/, /lat/],
     ['has one longitude that is no number', small([1, 2, 3], [4, NaN]), /^unknown-place$/, /lon/],
     ['has infinite longitudes', small([1, 2, 3], [4, Infinity]), /^unknown-place$/, /lon/],
