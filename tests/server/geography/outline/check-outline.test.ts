@@ -1,4 +1,5 @@
 import type { Position } from 'geojson'
+import geodesic from 'geographiclib-geodesic'
 import { describe, expect, it } from 'vitest'
 import { checkOutline } from '../../../../server/geography/outline/check-outline'
 import { OutlineRefused } from '../../../../server/geography/outline/outline-refused'
@@ -127,6 +128,23 @@ describe('an outline near or over a pole', () => {
 
   it('is not taken with a hole round the pole', () => {
     expect(sentence(polygon(box(-180, 70, 180, 90), Array.from({ length: 13 }, (_, i) => [-180 + 30 * i, 80])))).toMatch(/^Hole 1 goes round a pole/)
+  })
+})
+
+describe("Karney's published polygons of geodesics (Planimeter, GeographicLib's tests)", () => {
+  const wgs84 = geodesic.Geodesic.WGS84
+  const stepsPerEdge = 1_200
+  /** Corners along the geodesics, longitudes as the library gives them: within -180..180, jumping at 180. */
+  const followed = (corners: number[][]): Position[] =>
+    corners.flatMap(([lat = NaN, lon = NaN], i) => {
+      const [toLat = NaN, toLon = NaN] = corners[(i + 1) % corners.length]!
+      const line = wgs84.InverseLine(lat, lon, toLat, toLon)
+      return Array.from({ length: stepsPerEdge }, (_, step) => line.Position((line.s13 * step) / stepsPerEdge)).map(({ lat2, lon2 }): Position => [lon2!, lat2!])
+    })
+
+  it.each(published.geodesicPolygons.items.filter(({ pts }) => pts !== undefined))('$id, round a pole, through a pole or away from it, has its area', ({ pts, area_m2 }) => {
+    const found = checkOutline(polygon(followed(pts!)), { inland: true })
+    expect(Math.abs((found.areaKm2 * 1e6) / area_m2 - 1)).toBeLessThan(2e-6)
   })
 })
 
