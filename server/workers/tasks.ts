@@ -86,6 +86,7 @@ export interface Tasks extends PictureTasks, OutlineTasks {
     }
     output: ViewFigures[]
   }
+  decodeLayers: { input: { layers: LayerPlace[] }; output: void }
   judgeRegion: { input: JudgeRegionInput; output: RegionJudgement }
   writeDemoFile: { input: { file: DemoFile; directory: string }; output: string }
 }

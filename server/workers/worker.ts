@@ -9,10 +9,11 @@ import { judgeRegion } from './judge-region'
 import { writeDemoFile } from '../seeders/demo/write-file'
 import { comparePassword, hashPassword } from './password'
 import { readCells } from './read-cells'
+import { decodeLayers } from './read-tiles'
 import { summariseViews } from './summarise-views'
 import { surveyLayer } from './survey-layer'
-import type { Tasks } from './tasks'
 import { readAreas } from './read-areas'
+import type { Tasks } from './tasks'
 import { weighCells } from './weigh-cells'
 
 /** Errors lose their class between threads: a refusal crosses as data. `spent`: this thread should do no further task. */
@@ -25,9 +26,10 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   inspectFile,
   weighCells,
   checkOutline,
-  summariseViews,
   measureOutline,
   readAreas,
+  summariseViews,
+  decodeLayers,
   judgeRegion,
   drawTile,
   readCells,

@@ -1,4 +1,4 @@
-import { wholeShare } from './figures'
+import { wholeShare } from './region-outline'
 
 /** A region with fewer whole water cells of a grid shows the single cells: no percentiles, nothing raised by itself. */
 export const fewestWholeCells = 5
