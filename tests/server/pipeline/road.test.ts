@@ -167,6 +167,18 @@ describe('the road of a layer', () => {
     }
   })
 
+  it('keeps a refused file as it came, until somebody deletes it', async () => {
+    const bad = (await seaFile([day('2026-06-10', 2)])).replace('sea.nc', 'notes.nc')
+    await writeFile(bad, 'dear all, the data are late')
+    const file = await send(context, bad)
+    await runJobs(context)
+    const stored = storedPath(context.env, file.checksum)
+    expect(await readFile(stored, 'utf8')).toBe('dear all, the data are late')
+    await deleteFile(context, person, file.id)
+    await expect(readFile(stored)).rejects.toThrow('ENOENT')
+    expect(await context.models.files.count()).toBe(0)
+  })
+
   it('takes out what a file gave before it turned out damaged, so that no other file is refused for it', async () => {
     const feed = await aFeed(context, person)
     const region = await aRegion(context, person)
