@@ -224,7 +224,8 @@ describe('the road of a layer', () => {
   it('refuses a file that no attempt could read, so that it waits for nothing', async () => {
     await aFeed(context, person)
     const { heavy } = context.workers
-    const file = await send(context, await seaFile([day('2026-06-10', 2)]))
+    const path = await seaFile([day('2026-06-10', 2)])
+    const file = await send(context, path)
     context.workers.heavy = () => Promise.reject(new Error('no memory for it'))
     for (let attempt = 0; attempt < 5; attempt++) {
       await runJobs(context)
@@ -233,7 +234,7 @@ describe('the road of a layer', () => {
     await file.reload()
     expect(file).toMatchObject({ status: 'refused', refusal: { code: 'reading-failed', details: { attempts: 5, reason: 'no memory for it' } } })
     context.workers.heavy = heavy
-    await send(context, await seaFile([day('2026-06-10', 2)]))
+    await send(context, path)
     await runJobs(context)
     await file.reload()
     expect(file.status).toBe('processed')
