@@ -13,10 +13,14 @@ const landOutline: Plugin = {
 
 /** Bundles the server, its commands and the worker into dist/server; other packages stay in node_modules. */
 export async function buildServer(): Promise<void> {
+  await bundle({ main: 'server/index.ts', worker: 'server/workers/worker.ts', offing: 'server/commands/offing.ts' }, 'dist/server')
+}
+
+export async function bundle(entryPoints: Record<string, string>, outdir: string): Promise<void> {
   await build({
     absWorkingDir: root,
-    entryPoints: { main: 'server/index.ts', worker: 'server/workers/worker.ts', offing: 'server/commands/offing.ts' },
-    outdir: 'dist/server',
+    entryPoints,
+    outdir,
     bundle: true,
     packages: 'external',
     platform: 'node',

@@ -20,35 +20,50 @@ try {
   for (const { geometry } of shapes(200, box)) {
     weights.push({ rows: grid.rows, columns: grid.columns, ...(await workers.heavy('weighCells', { geometry, shoreBufferKm: 0, grid: grid.definition })) })
   }
-  const ours: number[] = []
-  const one: number[] = []
-  const reference: number[] = []
-  for (let turn = -1; turn < turns; turn++) {
-    const seconds = await figures(turn, weights)
-    const single = await figures(turn + 100, weights.slice(0, 1))
-    const theirs = referenceSeconds(folder, { files: [original], variable: 'chlor_a', regions: referenceRegions(weights) })
-    // The first turn warms up both sides.
-    if (turn < 0) continue
-    ours.push(seconds)
-    one.push(single)
-    reference.push(theirs)
-  }
-  const growth: Measured = { what: 'time for 200 regions over time for 1', value: median(ours) / median(one), unit: '', most: 12 }
+  const usual = await byTurns('global.nc', weights)
+  const small = await byTurns('global-small-chunks.nc', weights)
+  const growth: Measured = { what: 'time for 200 regions over time for 1', value: median(usual.ours) / median(usual.one), unit: '', most: 12 }
   const memory: Measured = { what: 'memory of the process, at its highest', value: process.resourceUsage().maxRSS / 1024, unit: 'MB', most: 600 }
-  report([ratio('a global field of 8640 x 4320, 200 regions', ours, reference, 0.5), growth, memory])
+  report([
+    ratio("a global field of 8640 x 4320 in the library's own chunks, 200 regions", usual.ours, usual.reference, 0.5),
+    growth,
+    memory,
+    ratio('the same field in chunks of 216 x 216', small.ours, small.reference, null),
+  ])
 } finally {
   await workers.close()
   rmSync(folder, { recursive: true, force: true })
 }
 
+interface Turns {
+  ours: number[]
+  one: number[]
+  reference: number[]
+}
+
+async function byTurns(name: string, weights: RegionCellWeights[]): Promise<Turns> {
+  const took: Turns = { ours: [], one: [], reference: [] }
+  for (let turn = -1; turn < turns; turn++) {
+    const ours = await figures(name, `${turn}`, weights)
+    const one = await figures(name, `${turn}-one`, weights.slice(0, 1))
+    const reference = referenceSeconds(folder, { files: [join(fields, name)], variable: 'chlor_a', regions: referenceRegions(weights) })
+    // The first turn warms up both sides.
+    if (turn < 0) continue
+    took.ours.push(ours)
+    took.one.push(one)
+    took.reference.push(reference)
+  }
+  return took
+}
+
 /** Seconds for a file nobody has opened yet. */
-async function figures(turn: number, weights: RegionCellWeights[]): Promise<number> {
-  const path = join(folder, `global-${turn}.nc`)
-  copyFileSync(join(fields, 'global.nc'), path)
+async function figures(name: string, turn: string, weights: RegionCellWeights[]): Promise<number> {
+  const path = join(folder, `${turn}-${name}`)
+  copyFileSync(join(fields, name), path)
   const { rows, columns } = weights[0]!
   const layer: LayerPlace = {
     path, fileName: 'global.nc', variable: 'chlor_a', step: 0, processingVersion: '1', observedAt: 0, endsAt: null, producedAt: null, rows, columns,
-    pack: join(folder, 'decoded', `${turn}`), reading: { hiddenFlags: [], storedLog10: false, fileUnit: null, unit: 'mg m-3' },
+    pack: join(folder, 'decoded', `${turn}-${name}`), reading: { hiddenFlags: [], storedLog10: false, fileUnit: null, unit: 'mg m-3' },
   }
   const started = performance.now()
   await workers.heavy('summariseViews', { layers: [layer], weights, views: weights.map((_, i) => ({ layers: [0], weights: i })), scale: 'log10', validMin: null, validMax: null })

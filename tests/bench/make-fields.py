@@ -41,16 +41,18 @@ def dataset(path, rows, columns, west, north, cell, days):
     return out
 
 
-def chlorophyll(out, chunks):
+def chlorophyll(out, chunks=None):
+    """Without chunks the library chooses, as it does for most who write files."""
     v = out.createVariable("chlor_a", "f4", ("time", "lat", "lon"), zlib=True, complevel=4, shuffle=True, chunksizes=chunks, fill_value=-32767.0)
     v.units, v.standard_name = "mg m-3", "mass_concentration_of_chlorophyll_a_in_sea_water"
     return v
 
 
 rows, columns = 4320, 8640
-with dataset(os.path.join(folder, "global.nc"), rows, columns, -180, 90, 360 / columns, [20000.5]) as out:
-    v = chlorophyll(out, (1, 216, 216))
-    v[0] = numpy.ma.masked_invalid(field(rows, columns))
+everywhere = numpy.ma.masked_invalid(field(rows, columns))
+for name, chunks in (("global", None), ("global-small-chunks", (1, 216, 216))):
+    with dataset(os.path.join(folder, f"{name}.nc"), rows, columns, -180, 90, 360 / columns, [20000.5]) as out:
+        chlorophyll(out, chunks)[0] = everywhere
 
 start = datetime.date(2016, 1, 1)
 kinds = [field(300, 300) for _ in range(25)]

@@ -23,7 +23,7 @@ export function percentile(values: readonly number[], share: number): number {
   return sorted[Math.max(0, Math.ceil(share * sorted.length) - 1)]!
 }
 
-export function ratio(what: string, ours: readonly number[], reference: readonly number[], most: number): Measured {
+export function ratio(what: string, ours: readonly number[], reference: readonly number[], most: number | null): Measured {
   const [mine, theirs] = [median(ours), median(reference)]
   return { what, value: mine / theirs, unit: '', most, ours: mine, reference: theirs }
 }

@@ -3,7 +3,7 @@ import { existsSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { parseArgs } from 'node:util'
-import { buildServer } from '../../server/commands/build'
+import { buildServer, bundle } from '../../server/commands/build'
 import type { Measured } from './measured'
 
 /**
@@ -15,6 +15,7 @@ const { values } = parseArgs({ options: { only: { type: 'string' }, fields: { ty
 const wanted = values.only === undefined ? parts : parts.filter((part) => values.only!.split(',').includes(part))
 
 await buildServer()
+await bundle(Object.fromEntries(parts.map((part) => [part, `tests/bench/${part}.ts`])), 'dist/bench')
 const folder = values.fields ?? mkdtempSync(join(tmpdir(), 'offing-bench-fields-'))
 try {
   if (!existsSync(join(folder, 'global.nc'))) makeFields(folder)
@@ -33,7 +34,7 @@ function makeFields(into: string): void {
 
 /** Each part runs in a process of its own, whose memory is nobody else's. */
 function measure(part: (typeof parts)[number], fields: string): Measured[] {
-  const run = spawnSync(process.execPath, ['--import', 'tsx', `tests/bench/${part}.ts`, fields], { encoding: 'utf8', stdio: ['ignore', 'pipe', 'inherit'], maxBuffer: 1e8 })
+  const run = spawnSync(process.execPath, [`dist/bench/${part}.js`, fields], { encoding: 'utf8', stdio: ['ignore', 'pipe', 'inherit'], maxBuffer: 1e8 })
   if (run.status !== 0) throw new Error(`The part "${part}" failed.\n${run.stdout}`)
   return JSON.parse(run.stdout.trim().split('\n').at(-1)!) as Measured[]
 }

@@ -22,9 +22,9 @@ interface Chunked extends ChunkLayout {
 
 const [deflateFilter, shuffleFilter] = [1, 2]
 
-/** Chunks unpacked last, of all files this thread has open: 64 MB. */
+/** Chunks unpacked last, of all files this thread has open: 100 MB hold both rows of large chunks that a window lies across. */
 const kept = new Map<string, Uint8Array>()
-const mostKeptBytes = 64 * 1024 * 1024
+const mostKeptBytes = 100 * 1024 * 1024
 let keptBytes = 0
 let readers = 0
 
