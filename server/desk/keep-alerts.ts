@@ -27,8 +27,9 @@ export async function keepAlerts(context: Context, tx: Transaction, subject: Sub
     const event = judged.events.find((one) => one.firstFlagged <= alert.triggerDay && alert.triggerDay <= one.lastFlagged)
     if (event) followed.add(event)
     // Over a redrawn outline an alert goes on with an event that is running there; else it stays with the one it had.
-    if (alert.eventId !== null && frozen.has(alert.eventId) && event?.phase !== 'running') continue
-    if (alert.state !== 'closed' && (await follow(context, tx, subject, judged, alert, event))) changed(alert)
+    const redrawn = alert.eventId !== null && frozen.has(alert.eventId)
+    if (redrawn && event?.phase !== 'running') continue
+    if (alert.state !== 'closed' && (await follow(context, tx, subject, judged, alert, event, redrawn))) changed(alert)
   }
   const event = judged.events.findLast((one) => one.phase === 'running')
   if (event && !followed.has(event) && isFresh(context, subject, judged, event) && !(await hasOpenAlert(context, tx, subject))) {
@@ -62,7 +63,7 @@ async function raise(context: Context, tx: Transaction, subject: Subject, judged
 }
 
 /** Brings an open alert to what its event is now; answers whether anything changed. */
-async function follow(context: Context, tx: Transaction, subject: Subject, judged: Judged, alert: AlertRecord, event: KeptEvent | undefined): Promise<boolean> {
+async function follow(context: Context, tx: Transaction, subject: Subject, judged: Judged, alert: AlertRecord, event: KeptEvent | undefined, redrawn: boolean): Promise<boolean> {
   if (!event) {
     if (alert.eventId === null && alert.phase === 'ended') return false
     await alert.update({ eventId: null, phase: 'ended', version: alert.version + 1 }, { transaction: tx })
@@ -78,9 +79,13 @@ async function follow(context: Context, tx: Transaction, subject: Subject, judge
     const text = `${rose ? 'Rose' : 'Judged again: went'} from ${before.severity} to ${event.severity}.`
     await addEntry(context, tx, alert, rose ? 'rose' : 'rejudged', text)
   }
-  if (before.phase !== event.phase) await addEntry(context, tx, alert, ...phaseEntry(event))
+  if (before.phase !== event.phase) await addEntry(context, tx, alert, ...(redrawn ? redrawnEntry(subject, event) : phaseEntry(event)))
   if (rose && event.phase === 'running' && isFresh(context, subject, judged, event)) await writeLetters(context, tx, { alert, subject, kind: 'rose' })
   return true
+}
+
+function redrawnEntry({ geometry }: Subject, event: KeptEvent): [EntryKind, string] {
+  return ['resumed', `Goes on over the redrawn outline, version ${geometry.version}: an event is running there since ${dateOf(event.firstFlagged)}.`]
 }
 
 function phaseEntry(event: KeptEvent): [EntryKind, string] {

@@ -21,7 +21,7 @@ export function dayWords(laid: SeriesDays, day: number, unit: string | null): Da
   const coverage = laid.coverage[i] ?? null
   const words: DayWords = { day: dayWithYear(dateOf(day)), rest: 'not seen' }
   if (usual !== null) words.usual = usualWords(laid, i, usual)
-  if (value === null) return coverage === null ? words : { ...words, rest: `not seen, ${percent(coverage)} of the water` }
+  if (value === null) return coverage === null ? words : { ...words, rest: coverage > 0 ? `no figure, ${percent(coverage)} of the water seen` : 'not seen' }
   words.value = `${threeDigits(value)} ${unitWords(unit)}`.trim()
   if (usual !== null && usual > 0) words.times = `${timesUsual(value / usual)} times usual`
   words.rest = `${percent(coverage ?? 0)} seen${laid.usable[i] == null ? ', too little to judge' : ''}`

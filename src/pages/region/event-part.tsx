@@ -65,7 +65,10 @@ function EventRow({ event }: { event: BloomEventItem }) {
   const days = daysBetween(event.firstFlagged, event.lastFlagged) + 1
   return (
     <Tr>
-      <Td className="fig whitespace-nowrap">{dayWithYear(event.firstFlagged)}</Td>
+      <Td>
+        <span className="fig whitespace-nowrap">{dayWithYear(event.firstFlagged)}</span>
+        {event.endedBecause !== null && <span className="block text-fine text-ink2">over version {event.geometryVersion}; ended as {event.endedBecause}</span>}
+      </Td>
       <Td className="hidden whitespace-nowrap tab:table-cell">
         {event.lastUnflaggedBefore && (
           <>

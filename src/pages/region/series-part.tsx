@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query'
 import { useMemo, useState } from 'react'
 import type { Region } from '../../../shared/schemas/regions'
 import { feedsQuery } from '../../api/feeds'
+import { singleCellsQuery } from '../../api/regions'
 import { rulesQuery } from '../../api/rules'
 import { baselineQuery, eventsQuery, seriesCsvHref, seriesQuery } from '../../api/series'
 import { ruleThreshold } from '../../components/charts/rule-threshold'
@@ -23,13 +24,15 @@ export default function SeriesPart({ region }: { region: Region }) {
   const [chosenFeed, setFeed] = useState<number | null>(null)
   const [chosenStatistic, setStatistic] = useState<Statistic | null>(null)
   const feedId = chosenFeed ?? region.standing.feedId ?? feeds.data?.items[0]?.id
+  const cells = useQuery({ ...singleCellsQuery(region.id, feedId ?? 0), enabled: feedId !== undefined && region.standing.progress === null })
   const failed = feeds.error ?? rules.error
   if (failed) return <Failure error={failed} />
   if (!feeds.data || !rules.data) return <Waiting lines={6} />
   if (feedId === undefined) return <Empty title="No feed yet.">A series begins with the first file that is read.</Empty>
   const definition = activeDefinition(rules.data.items, feedId)
   const judged = definition?.statistic ?? 'median'
-  const statistic = chosenStatistic ?? judged
+  // Of a region with few cells no median is said.
+  const statistic = chosenStatistic ?? (cells.data?.few && judged !== 'geometricMean' ? 'mean' : judged)
   return (
     <Chart
       region={region}

@@ -192,6 +192,8 @@ describe('redrawing while an event is running', () => {
     expect(after).toMatchObject({ state: 'open', phase: 'running' })
     expect(after.eventId).not.toBe(event.id)
     expect(await kinds()).toEqual(['raised', 'ended', 'resumed'])
+    const [newest] = await context.models.alertEntries.findAll({ order: [['id', 'DESC']], limit: 1 })
+    expect(newest!.text).toBe('Goes on over the redrawn outline, version 2: an event is running there since 2026-06-10.')
     expect((await context.models.events.findByPk(event.id))!.geometryId).toBe(first!.id)
     expect(after.evidence.geometryVersion).toBe(1)
     const { body } = await (await api()).get(`/api/regions/${regionId}/events?feedId=${feed.id}`).expect(200)
