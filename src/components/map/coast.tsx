@@ -23,12 +23,13 @@ export function Coast() {
 
   useEffect(() => {
     if (!rings) return
-    const near = rings.filter((ring) => meets(ring, around))
+    // A map over the 180th meridian shows the land of the next turn too.
+    const near = [-360, 0, 360].flatMap((turn) => rings.filter((ring) => meets(ring, around, turn)).map((ring) => ({ ring, turn })))
     const land = L.polygon(
-      near.map((ring) => latLngs(ring.points)),
+      near.map(({ ring, turn }) => latLngs(ring.points, turn)),
       { pane: landPane, className: 'map-land', interactive: false, stroke: false, smoothFactor: 0.5 },
     ).addTo(map)
-    const coast = L.polyline(near.flatMap((ring) => shoreLines(ring.points)).map(latLngs), {
+    const coast = L.polyline(near.flatMap(({ ring, turn }) => shoreLines(ring.points).map((line) => latLngs(line, turn))), {
       pane: landPane,
       className: 'map-coast',
       interactive: false,
@@ -42,12 +43,12 @@ export function Coast() {
   return null
 }
 
-function latLngs(points: Ring): L.LatLngTuple[] {
-  return points.map(([longitude, latitude]) => [latitude, longitude])
+function latLngs(points: Ring, turn: number): L.LatLngTuple[] {
+  return points.map(([longitude, latitude]) => [latitude, longitude + turn])
 }
 
-function meets(ring: LandRing, bounds: L.LatLngBounds): boolean {
-  return ring.west <= bounds.getEast() && ring.east >= bounds.getWest() && ring.south <= bounds.getNorth() && ring.north >= bounds.getSouth()
+function meets(ring: LandRing, bounds: L.LatLngBounds, turn: number): boolean {
+  return ring.west + turn <= bounds.getEast() && ring.east + turn >= bounds.getWest() && ring.south <= bounds.getNorth() && ring.north >= bounds.getSouth()
 }
 
 /** The ring without the edges that only close it along the 180th meridian or at a pole: those are no coast. */
