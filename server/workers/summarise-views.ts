@@ -1,19 +1,14 @@
 import { figuresOf, figuresRoom, type FiguresRoom } from '../../shared/science/figures'
 import { packHistogram } from '../../shared/science/histogram'
-import { mergeLayers, type LayerValues } from '../../shared/science/merge-views'
-import { regionOutline, type RegionOutline } from '../../shared/science/region-outline'
+import type { RegionOutline } from '../../shared/science/region-outline'
 import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-water'
 import { maskedAreas } from './masked-areas'
-import type { MaskedValues } from './read-masked'
 import { readTiles } from './read-tiles'
-import { cellsOf, planOf, type RegionPlan } from './region-cells'
-import type { LayerPlace, RegionCellWeights, Tasks, ViewFigures } from './tasks'
-import { withinRange } from './valid-range'
+import { planOf, type RegionPlan } from './region-cells'
+import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
+import { mergedValues, outlineOf, regionLayer, waterOf, type RegionLayer } from './view-cells'
 
 type Input = Tasks['summariseViews']['input']
-
-/** One layer's cells of a region, and what was hidden of them. */
-interface RegionLayer extends MaskedValues, Omit<LayerValues, 'values'> {}
 
 /** What stays the same for a region over all its views. */
 interface Region {
@@ -21,7 +16,6 @@ interface Region {
   plan: RegionPlan
   outline: RegionOutline
   room: FiguresRoom
-  /** An outline without any water here is no mask for this region: every cell counts. */
   water: Uint8Array | undefined
   /** Too few whole water cells for percentiles to mean anything. */
   few: boolean
@@ -47,7 +41,7 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
     for (const [i, view] of users[at]!.entries()) {
       const region = ofLayer[i]!
       const collected = cellsOfView.get(view) ?? []
-      collected.push({ ...withinRange(cellsOf(region.plan, tiles), input), ...madeWhen(layer) })
+      collected.push(regionLayer(layer, region.plan, tiles, input))
       if (collected.length < input.views[view]!.layers.length) {
         cellsOfView.set(view, collected)
         continue
@@ -61,19 +55,14 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
 }
 
 function regionOf(weights: RegionCellWeights): Region {
-  const { share, areaKm2 } = weights
-  const water = weights.water.some((cell) => cell === 1) ? weights.water : undefined
-  return { weights, plan: planOf(weights, weights), room: figuresRoom(share.length), outline: regionOutline({ share, areaKm2, ...(water ? { water } : {}) }), water, few: wholeWaterCells(weights) < fewestWholeCells }
-}
-
-function madeWhen({ processingVersion, observedAt, endsAt, producedAt }: LayerPlace): Omit<LayerValues, 'values'> {
-  return { processingVersion, observedAt, endsAt, producedAt }
+  const room = figuresRoom(weights.share.length)
+  return { weights, plan: planOf(weights, weights), room, outline: outlineOf(weights), water: waterOf(weights), few: wholeWaterCells(weights) < fewestWholeCells }
 }
 
 const noPercentiles = { median: null, p10: null, p25: null, p75: null, p90: null, p95: null }
 
 function viewFigures(layers: RegionLayer[], { weights, outline, room, water, few }: Region, scale: Input['scale']): ViewFigures {
-  const values = layers.length === 1 ? layers[0]!.values : mergeLayers(layers, scale)
+  const values = mergedValues(layers, scale)
   const { histogram, maxIndex, ...rest } = figuresOf(values, outline, scale, room)
   return {
     ...rest,

@@ -4,6 +4,7 @@ import type { Judgement, JudgeInput } from '../../shared/science/judge'
 import type { DemoFile } from '../seeders/demo/files'
 import type { Seen } from './inspect-file'
 import type { OutlineTasks } from './outline-tasks'
+import type { PatchTasks } from './patch-tasks'
 import type { PictureTasks } from './picture-tasks'
 
 /** One variable of a stored file, at one step. */
@@ -65,7 +66,7 @@ export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
 }
 
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */
-export interface Tasks extends PictureTasks, OutlineTasks {
+export interface Tasks extends PictureTasks, OutlineTasks, PatchTasks {
   /** Shows that the thread has come up. */
   greet: { input: null; output: true }
   hashPassword: { input: { password: string; cost?: number }; output: string }

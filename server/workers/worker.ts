@@ -3,6 +3,7 @@ import { hdf5Failures } from '../grids/hdf5-library'
 import { LayerRefused } from '../grids/layer-refused'
 import { checkOutline } from './check-outline'
 import { drawTile } from './draw-tile'
+import { findPatches } from './find-patches'
 import { inspectFile } from './inspect-file'
 import { measureOutline } from './measure-outline'
 import { judgeRegion } from './judge-region'
@@ -34,6 +35,7 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   drawTile,
   readCells,
   surveyLayer,
+  findPatches,
   writeDemoFile: ({ file, directory }) => writeDemoFile(file, directory),
 }
 
