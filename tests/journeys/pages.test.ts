@@ -24,7 +24,7 @@ beforeAll(async () => {
     paths.today.to(), paths.alert.to({ id: alert.id }), paths.region.to({ id: alert.regionId }), paths.newRegion.to(), paths.layers.to(),
   ]
   otherPages = [
-    paths.alerts.to(), paths.regions.to(), paths.editRegion.to({ id: alert.regionId }), paths.file.to({ id: file.id }), paths.feeds.to(),
+    paths.alerts.to(), paths.regions.to(), paths.importRegions.to(), paths.editRegion.to({ id: alert.regionId }), paths.file.to({ id: file.id }), paths.feeds.to(),
     paths.feed.to({ id: alert.feedId }), paths.account.to(), paths.people.to(), paths.subscriptions.to(), paths.jobs.to(), paths.letters.to(),
     paths.audit.to(), paths.layerMap.to(),
   ]

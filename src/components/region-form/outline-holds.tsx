@@ -22,7 +22,7 @@ export function OutlineHolds({ feeds }: { feeds: readonly FeedCount[] }) {
               <Td>
                 {feed.name}
                 {others.length > 0 && <span className="block text-fine text-ink2">the same in {others.map((other) => other.name).join('; ')}</span>}
-                {feed.wholeCells < fewestWholeCells && <span className="block text-fine text-ink2">{tooSmall(feed)}</span>}
+                {feed.wholeCells < fewestWholeCells && <span className="block text-fine text-ink2">{tooSmall(feed, others.length)}</span>}
               </Td>
               <Td figures className={feed.wholeCells < fewestWholeCells ? 'font-strong' : ''}>
                 {!feed.exact && <span className="text-ink2">about </span>}
@@ -49,7 +49,7 @@ function sameCounts(feeds: readonly FeedCount[]): [FeedCount, ...FeedCount[]][] 
   return [...groups.values()]
 }
 
-function tooSmall({ cells }: FeedCount): string {
-  if (cells === 0) return 'Its newest layer does not reach this water.'
+function tooSmall({ cells }: FeedCount, others: number): string {
+  if (cells === 0) return others > 0 ? 'Their newest layers do not reach this water.' : 'Its newest layer does not reach this water.'
   return `Fewer than ${fewestWholeCells}: Offing will show the single cells, no percentiles, and raise nothing by itself.`
 }
