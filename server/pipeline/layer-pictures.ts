@@ -84,7 +84,7 @@ export async function surveyOf(context: Context, layer: PlacedLayer, feed: FeedR
 }
 
 /** Stored bytes may go bad long after they were read: that is no fault of the one who asks, and said as it is. */
-async function readable<T>(reading: Promise<T>): Promise<T> {
+export async function readable<T>(reading: Promise<T>): Promise<T> {
   try {
     return await reading
   } catch (error) {

@@ -9,7 +9,9 @@ import { outlineVersions } from '../desk/outline-versions'
 import { presentEvent } from '../desk/present-event'
 import { presentRegions } from '../desk/present-region'
 import { regionBaseline } from '../desk/region-baseline'
+import { regionPatches } from '../desk/region-patches'
 import { regionSeries } from '../desk/region-series'
+import { regionView } from '../desk/region-view'
 import { singleCells } from '../desk/single-cells'
 import { cutAt180 } from '../exports/cut-at-180'
 import { smallFile, smallUpload } from '../middleware/small-upload'
@@ -55,6 +57,8 @@ export function regionRoutes(router: Router, context: Context): void {
   serve(router, context, endpoints.changeRegion, async ({ person, params, body }) => one(await changeRegion(context, person, params.id, body)))
   serve(router, context, endpoints.retireRegion, ({ person, params }) => retireRegion(context, person, params.id))
   serve(router, context, endpoints.regionCells, ({ params, query }) => singleCells(context, params.id, query.feedId))
+  serve(router, context, endpoints.regionView, ({ params, query }) => regionView(context, params.id, query))
+  serve(router, context, endpoints.regionPatches, ({ params, query }) => regionPatches(context, params.id, query))
   serve(router, context, endpoints.regionSeries, ({ params, query }) => regionSeries(context, params.id, query))
   serve(router, context, endpoints.regionBaseline, ({ params, query }) => regionBaseline(context, params.id, query))
   serve(router, context, endpoints.regionEvents, async ({ params, query }) => {

@@ -1,17 +1,17 @@
 import { cellBox, columnsRound } from '../../shared/science/cell-box'
-import { awayFrom, MiddleOf, nearestOf, type Place } from '../../shared/science/geodesic'
+import { awayFrom, MiddleOf, nearestOf, type Place } from '../geography/geodesic'
 import type { Grid } from '../../shared/science/grid'
 import { patchChanges, type PatchFamily, type SeenPatches } from '../../shared/science/patch-changes'
 import { patchOutlines } from '../../shared/science/patch-outlines'
 import { findPatches as patchesAbove } from '../../shared/science/patches'
-import type { RegionOutline } from '../../shared/science/region-outline'
+import { outlineOf, type RegionOutline } from '../../shared/science/region-outline'
 import { cellCentre } from '../grids/cell-centre'
 import { decodeGrid } from '../grids/grid-text'
 import { outlineLines } from '../grids/outline-lines'
 import { projectTo } from '../grids/read/project'
 import { cellFinder } from '../pictures/cell-finder'
 import type { FoundPatches, GonePatch, PatchChange, PatchTasks, PlacedPatch, ViewAsked } from './patch-tasks'
-import { outlineOf, readView } from './view-cells'
+import { readView } from './view-cells'
 
 type Input = PatchTasks['findPatches']['input']
 

@@ -1,5 +1,5 @@
 import type { Scale } from '../../shared/science/figures'
-import type { Away, Place } from '../../shared/science/geodesic'
+import type { Away, Place } from '../geography/geodesic'
 import type { PatchChangeKind } from '../../shared/science/patch-changes'
 import type { Patch } from '../../shared/science/patches'
 import type { ValidRange } from './picture-tasks'

@@ -1,12 +1,12 @@
 import { figuresOf, figuresRoom, type FiguresRoom } from '../../shared/science/figures'
 import { packHistogram } from '../../shared/science/histogram'
-import type { RegionOutline } from '../../shared/science/region-outline'
+import { outlineOf, waterOf, type RegionOutline } from '../../shared/science/region-outline'
 import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-water'
 import { maskedAreas } from './masked-areas'
 import { readTiles } from './read-tiles'
 import { planOf, type RegionPlan } from './region-cells'
 import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
-import { mergedValues, outlineOf, regionLayer, waterOf, type RegionLayer } from './view-cells'
+import { mergedValues, regionLayer, type RegionLayer } from './view-cells'
 
 type Input = Tasks['summariseViews']['input']
 

@@ -1,6 +1,5 @@
 import type { Scale } from '../../shared/science/figures'
 import { mergeLayers, type LayerValues } from '../../shared/science/merge-views'
-import { regionOutline, type RegionOutline } from '../../shared/science/region-outline'
 import type { ValidRange } from './picture-tasks'
 import type { MaskedValues } from './read-masked'
 import { readTiles, type LayerTiles } from './read-tiles'
@@ -10,17 +9,6 @@ import { withinRange } from './valid-range'
 
 /** One layer's cells of a region, and what was hidden of them. */
 export interface RegionLayer extends MaskedValues, Omit<LayerValues, 'values'> {}
-
-/** An outline without any water here is no mask for this region: every cell counts. */
-export function waterOf({ water }: Pick<RegionCellWeights, 'water'>): Uint8Array | undefined {
-  return water.includes(1) ? water : undefined
-}
-
-export function outlineOf(weights: RegionCellWeights): RegionOutline {
-  const { share, areaKm2 } = weights
-  const water = waterOf(weights)
-  return regionOutline({ share, areaKm2, ...(water ? { water } : {}) })
-}
 
 /** The cells of a region in a layer that has been read, within the feed's valid range. */
 export function regionLayer({ processingVersion, observedAt, endsAt, producedAt }: LayerPlace, plan: RegionPlan, tiles: LayerTiles, range: ValidRange): RegionLayer {

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { day, id, instant, severity, version } from './common'
+import { evidencePatch } from './patches'
 import { bloomEvent, eventPhases } from './series'
 import { shownView } from './regions'
 
@@ -40,6 +41,8 @@ export const evidence = z.object({
   softwareVersion: z.string(),
   /** Formula, version and bands of a derived figure. */
   formula: z.string().nullable().optional(),
+  /** The largest patch above the region's level; null where nothing reached it, left out in alerts of before. */
+  largestPatch: evidencePatch.nullable().optional(),
 })
 export type Evidence = z.infer<typeof evidence>
 

@@ -89,3 +89,14 @@ export function areasAboveKm2(packed: Uint8Array, lengths: readonly number[], le
     return sum
   })
 }
+
+/** Bins from the first to the last that holds any area, with the values they begin at (included) and end at; null: no such end. */
+export function binsInUse(histogram: AreaHistogram): { from: number | null; to: number | null; areaKm2: number }[] {
+  const [first, last] = [histogram.findIndex((area) => area > 0), histogram.findLastIndex((area) => area > 0)]
+  if (first < 0) return []
+  const edge = (bin: number) => 10 ** (lowestExponent + bin / binsPerDecade)
+  return Array.from(histogram.subarray(first, last + 1), (areaKm2, i) => {
+    const bin = first + i
+    return { from: bin === 0 ? null : edge(bin - 1), to: bin === bins + 1 ? null : edge(bin), areaKm2 }
+  })
+}

@@ -44,3 +44,14 @@ export function regionOutline({ share, areaKm2, water }: RegionShares): RegionOu
   }
   return outline
 }
+
+/** A mask without any water here is no mask for this region: every cell counts. */
+export function waterOf({ water }: { water: Uint8Array }): Uint8Array | undefined {
+  return water.includes(1) ? water : undefined
+}
+
+/** The outline as figures and patches take it, with that rule for its mask. */
+export function outlineOf({ share, areaKm2, water: mask }: Required<RegionShares>): RegionOutline {
+  const water = waterOf({ water: mask })
+  return regionOutline({ share, areaKm2, ...(water ? { water } : {}) })
+}

@@ -1,3 +1,4 @@
+import { compassPoint } from '../../shared/compass'
 import { figureText, percentText, timesText } from '../../shared/figure-text'
 
 /** Three significant digits, as in the letters, with the thousands apart. */
@@ -43,13 +44,11 @@ export function degrees(value: number, axis: 'latitude' | 'longitude'): string {
   return `${whole}°${rest ? `${String(rest).padStart(2, '0')}′` : ''}${half}`
 }
 
-const compass = ['N', 'NNE', 'NE', 'ENE', 'E', 'ESE', 'SE', 'SSE', 'S', 'SSW', 'SW', 'WSW', 'W', 'WNW', 'NW', 'NNW']
-
 /** "256° WSW": three digits and the compass point. */
 export function bearing(degreesFromNorth: number): string {
   const turned = ((degreesFromNorth % 360) + 360) % 360
   const whole = Math.round(turned) % 360
-  return `${String(whole).padStart(3, '0')}° ${compass[Math.round(turned / 22.5) % 16] ?? ''}`
+  return `${String(whole).padStart(3, '0')}° ${compassPoint(turned)}`
 }
 
 export function countWords(count: number, one: string, many = `${one}s`): string {

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { cellBox } from '../../shared/science/cell-box'
-import { awayFrom, MiddleOf, nearestOf, type Place } from '../../shared/science/geodesic'
+import { awayFrom, MiddleOf, nearestOf, type Place } from '../../server/geography/geodesic'
 import { patchOutlines } from '../../shared/science/patch-outlines'
 import { findPatches } from '../../shared/science/patches'
 import { regionOutline } from '../../shared/science/region-outline'

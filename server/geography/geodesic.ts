@@ -1,5 +1,5 @@
 import geodesic from 'geographiclib-geodesic'
-import { eccentricitySquared, semiMajorAxisM } from './wgs84'
+import { eccentricitySquared, semiMajorAxisM } from '../../shared/science/wgs84'
 
 export type Place = readonly [longitude: number, latitude: number]
 
