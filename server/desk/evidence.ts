@@ -5,6 +5,7 @@ import type { Context } from '../context'
 import type { Transaction } from '../db'
 import type { Subject } from '../pipeline/active-rule'
 import type { Judged } from '../pipeline/keep-standing'
+import { maskText } from '../pipeline/masks/mask-in-force'
 import { softwareVersion } from '../software-version'
 
 interface LayerSource {
@@ -57,7 +58,7 @@ export async function evidenceOn(context: Context, tx: Transaction, subject: Sub
     baselineVersion: baseline?.version ?? null,
     baselineYears: baseline ? (JSON.parse(baseline.years) as number[]) : [],
     geometryVersion: subject.geometry.version,
-    waterMask: `${source.maskKind}, version ${source.maskVersion}`,
+    waterMask: maskText({ kind: source.maskKind, version: source.maskVersion }),
     softwareVersion,
     formula: source.formula,
   }

@@ -19,7 +19,7 @@ export async function explainAlert(context: Context, alert: AlertRecord): Promis
   if (!geometry || !version) throw new ApiError('not-found', 'The outline or the rule this alert rests on is gone.')
   const rule = version.definition
   const views = (await judgeableViews(context, geometry.id, alert.feedId)).filter((view) => view.day <= day)
-  const again = await freshFigures(context, { geometryId: geometry.id, feedId: alert.feedId, day })
+  const again = await freshFigures(context, { geometryId: geometry.id, feedId: alert.feedId, day }, stored.waterMask)
   const replaced = views.map((view) =>
     view.day === day && again
       ? { ...view, coverage: again.coverage, wholeValid: again.wholeValid, statistics: { median: again.median, geometricMean: again.geometricMean, mean: again.mean, p90: again.p90 } }

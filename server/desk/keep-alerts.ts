@@ -9,6 +9,7 @@ import type { Subject } from '../pipeline/active-rule'
 import type { KeptEvent } from '../pipeline/keep-events'
 import type { Judged } from '../pipeline/keep-standing'
 import { evidenceOn } from './evidence'
+import { sinceWhat } from './since-what'
 import { writeLetters } from './write-letters'
 
 const hourMs = 3_600_000
@@ -67,7 +68,7 @@ async function follow(context: Context, tx: Transaction, subject: Subject, judge
   if (!event) {
     if (alert.eventId === null && alert.phase === 'ended') return false
     await alert.update({ eventId: null, phase: 'ended', version: alert.version + 1 }, { transaction: tx })
-    await addEntry(context, tx, alert, 'rejudged', 'After late or corrected layers the rule no longer finds an event here.')
+    await addEntry(context, tx, alert, 'rejudged', `${await sinceWhat(context, tx, subject, alert)} the rule no longer finds an event here.`)
     return true
   }
   const before = { phase: alert.phase, severity: alert.severity, eventId: alert.eventId }

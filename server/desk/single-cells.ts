@@ -6,8 +6,8 @@ import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-wa
 import { ApiError } from '../api-error'
 import type { Context } from '../context'
 import { cellCentre } from '../grids/cell-centre'
-import { cellWeights } from '../pipeline/cell-weights'
 import { gridOf } from '../pipeline/known-grids'
+import { maskedWeights, maskInForce } from '../pipeline/masks/mask-in-force'
 import { rangeOf } from '../pipeline/layer-pictures'
 import { placeOf } from '../pipeline/layer-place'
 import { layersById, type PlacedLayer } from '../queries/layers'
@@ -28,7 +28,8 @@ export async function singleCells(context: Context, regionId: number, feedId: nu
   const layers = view ? await layersById(context, view.layerIds) : []
   const [first] = layers
   if (!view || !first) return { few: false, wholeCells: null, day: null, unit: feed.unit, cells: [] }
-  const weights = await cellWeights(context, region.geometryId, first.gridId, first)
+  const mask = await maskInForce(context, feedId, first.gridId)
+  const weights = await maskedWeights(context, region.geometryId, mask, first)
   const wholeCells = wholeWaterCells(weights)
   const head = { wholeCells, day: dateOf(view.day), unit: feed.unit }
   if (wholeCells >= fewestWholeCells || weights.index.length > mostCells) return { few: wholeCells < fewestWholeCells, ...head, cells: [] }

@@ -8,6 +8,7 @@ const kindNames: Record<string, string> = {
   'backfill-feed': 'make the history of a feed anew',
   'pull-feed': 'fetch for a feed',
   'reread-views': 'make views anew',
+  'make-mask': 'make a water mask',
 }
 
 export function presentJob(job: JobRecord): Job {

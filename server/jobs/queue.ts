@@ -15,7 +15,7 @@ export interface NewJob {
 
 /** Jobs of one lane run one after another. Fetching waits for servers elsewhere, so it has a lane that holds up no other. */
 export const jobLanes = {
-  road: ['process-file', 'judge-region', 'backfill-region', 'backfill-feed', 'reread-views'],
+  road: ['process-file', 'judge-region', 'backfill-region', 'backfill-feed', 'reread-views', 'make-mask'],
   pull: ['pull-feed'],
 } as const
 export type JobLane = keyof typeof jobLanes

@@ -5,6 +5,7 @@ import { backfillFeed } from '../pipeline/backfill-feed'
 import { backfillRegion } from '../pipeline/backfill-region'
 import { LayerRefused } from '../grids/layer-refused'
 import { judgeRegionJob } from '../pipeline/judge-region'
+import { makeMask } from '../pipeline/masks/make-mask'
 import { processFile } from '../pipeline/process-file'
 import { refuseFile, refuseStored } from '../pipeline/refuse-file'
 import { rereadViews } from '../pipeline/reread-views'
@@ -17,6 +18,7 @@ const handlers: Record<JobKind, (context: Context, job: JobRecord) => Promise<'d
   'backfill-feed': backfillFeed,
   'reread-views': rereadViews,
   'judge-region': judgeRegionJob,
+  'make-mask': makeMask,
   'pull-feed': pullFeed,
 }
 

@@ -6,6 +6,7 @@ import { sql as feedPulls } from './003-feed-pulls'
 import { sql as quality } from './004-quality'
 import { sql as madeAndReplaced } from './005-made-and-replaced'
 import { sql as outlineVersions } from './006-outline-versions'
+import { sql as masks } from './008-masks'
 
 const migrations = [
   { name: '001-first-schema', sql: firstSchema },
@@ -14,6 +15,7 @@ const migrations = [
   { name: '004-quality', sql: quality },
   { name: '005-made-and-replaced', sql: madeAndReplaced },
   { name: '006-outline-versions', sql: outlineVersions },
+  { name: '008-masks', sql: masks },
 ]
 
 /** Brings the database to the newest schema; answers the names of what was applied. */

@@ -2,7 +2,7 @@ import { wholeWaterCells } from '../../shared/science/whole-water'
 import type { Context } from '../context'
 import type { RegionCellWeights } from '../workers/tasks'
 
-type GridSize = Pick<RegionCellWeights, 'rows' | 'columns'>
+export type GridSize = Pick<RegionCellWeights, 'rows' | 'columns'>
 
 interface Kept {
   cellIndex: Buffer
@@ -11,7 +11,7 @@ interface Kept {
   outlineWater: Buffer
 }
 
-/** The weights of a region's cells on a grid: made once, then kept. */
+/** The weights of a region's cells on a grid, water as the land outline has it: made once, then kept. */
 export async function cellWeights(context: Context, geometryId: number, gridId: number, { rows, columns }: GridSize): Promise<RegionCellWeights> {
   const kept = await context.db.first<Kept>(
     `SELECT cell_index AS cellIndex, share, area_km2 AS areaKm2, outline_water AS outlineWater FROM cell_weights

@@ -6,10 +6,10 @@ import { compareVersions } from '../../shared/science/merge-views'
 import { trustedLayers, type PlacedLayer } from '../queries/layers'
 import { writeSummaries, type SummaryRow } from '../queries/summaries'
 import { cellCentre } from '../grids/cell-centre'
-import { cellWeights } from './cell-weights'
 import { gridOf } from './known-grids'
 import { placeOf } from './layer-place'
-import { maskFor, provenanceFor } from './provenance'
+import { maskedWeights, maskInForce, maskNamed, noteWholeWater, type KnownMask } from './masks/mask-in-force'
+import { provenanceFor } from './provenance'
 import { viewDay } from './view-day'
 
 export interface ViewKey {
@@ -62,12 +62,16 @@ export async function keepViews(context: Context, { rows, empty }: MadeViews, al
   })
 }
 
-/** The figures of one view read anew from its stored files, nothing written; null when no trusted layer is left. */
-export async function freshFigures(context: Context, key: ViewKey): Promise<(ViewFigures & { checksum: string }) | null> {
+/**
+ * The figures of one view read anew from its stored files, nothing written; null when no trusted layer is left. By the
+ * water mask that is named, as an alert's evidence does, though another may be in force by now; else by that in force.
+ */
+export async function freshFigures(context: Context, key: ViewKey, waterMask?: string): Promise<(ViewFigures & { checksum: string }) | null> {
   const feed = await context.models.feeds.findByPk(key.feedId, { rejectOnEmpty: true })
   const [view] = await viewsOf(context, key.feedId, [key])
   if (!view || view.layers.length === 0) return null
-  const [row] = await figuresOf(context, feed, [view], 'the original')
+  const mask = waterMask === undefined ? null : await maskNamed(context, key.feedId, view.gridId, waterMask)
+  const [row] = await figuresOf(context, feed, [view], 'the original', mask)
   return row ? { ...row.figures, checksum: view.layers[0]!.checksum } : null
 }
 
@@ -93,18 +97,24 @@ async function viewsOf(context: Context, feedId: number, keys: readonly ViewKey[
   })
 }
 
-async function figuresOf(context: Context, feed: FeedRecord, views: readonly View[], from: 'anywhere' | 'the original' = 'anywhere'): Promise<SummaryRow[]> {
+async function figuresOf(context: Context, feed: FeedRecord, views: readonly View[], from: 'anywhere' | 'the original' = 'anywhere', named: KnownMask | null = null): Promise<SummaryRow[]> {
   if (views.length === 0) return []
   const layers = [...new Map(views.flatMap((view) => view.layers).map((layer) => [layer.id, layer])).values()]
   const places = new Map(layers.map((layer, at) => [layer.id, at]))
   const weights: RegionCellWeights[] = []
   const weightsAt = new Map<string, number>()
   const tasks: ViewTask[] = []
+  // Asked once, so that the figures and what they say they rest on are of one mask.
+  const masks = new Map<number, KnownMask>()
+  for (const gridId of new Set(views.map((view) => view.gridId))) masks.set(gridId, named ?? (await maskInForce(context, feed.id, gridId)))
   for (const view of views) {
     const name = `${view.geometryId}:${view.gridId}`
     if (!weightsAt.has(name)) {
       weightsAt.set(name, weights.length)
-      weights.push(await cellWeights(context, view.geometryId, view.gridId, view.layers[0]!))
+      const mask = masks.get(view.gridId)!
+      const masked = await maskedWeights(context, view.geometryId, mask, view.layers[0]!)
+      await noteWholeWater(context, view.geometryId, mask, masked)
+      weights.push(masked)
     }
     tasks.push({ layers: view.layers.map((layer) => places.get(layer.id)!), weights: weightsAt.get(name)! })
   }
@@ -118,14 +128,14 @@ async function figuresOf(context: Context, feed: FeedRecord, views: readonly Vie
     validMin: feed.validMin,
     validMax: feed.validMax,
   })
-  return rowsOf(context, kept, figures)
+  return rowsOf(context, kept, figures, masks)
 }
 
-async function rowsOf(context: Context, views: readonly View[], figures: readonly ViewFigures[]): Promise<SummaryRow[]> {
+async function rowsOf(context: Context, views: readonly View[], figures: readonly ViewFigures[], masks: ReadonlyMap<number, KnownMask>): Promise<SummaryRow[]> {
   const rows: SummaryRow[] = []
   for (const [i, view] of views.entries()) {
     const first = view.layers[0]!
-    const maskId = await maskFor(context, view.feedId, view.gridId)
+    const maskId = masks.get(view.gridId)!.id
     const processingVersion = view.layers.map((layer) => layer.processingVersion).reduce((a, b) => (compareVersions(a, b) >= 0 ? a : b))
     const { maxCell } = figures[i]!
     const [maxLon, maxLat] = maxCell === null ? [null, null] : cellCentre(await gridOf(context, view.gridId), maxCell)

@@ -71,6 +71,13 @@ export async function trustedLayers(context: Context, feedId: number, from: numb
   return rows.map(placedLayer)
 }
 
+/** Of some layers those that people still trust, in the order given. */
+export async function trustedAmong(context: Context, ids: readonly number[]): Promise<number[]> {
+  const rows = await context.db.all<{ id: number }>(`SELECT l.id FROM layers l WHERE l.id IN (SELECT value FROM json_each($ids)) AND ${isTrusted}`, { ids: JSON.stringify(ids) })
+  const trusted = new Set(rows.map((row) => row.id))
+  return ids.filter((id) => trusted.has(id))
+}
+
 /** Every layer of a feed, the last observed first. */
 export async function layerIdsFromNewest(context: Context, feedId: number): Promise<number[]> {
   const rows = await context.db.all<{ id: number }>('SELECT id FROM layers WHERE feed_id = $feedId ORDER BY observed_at DESC, id DESC', { feedId })

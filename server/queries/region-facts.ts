@@ -16,7 +16,7 @@ export interface RegionFacts {
   definition: RuleDefinition | null
   /** Of the layers observed by now: one dated ahead by mistake must not hide that a feed has gone silent. */
   newestLayerAt: number | null
-  /** Whole water cells it holds of the newest view's grid; null while nothing was seen. */
+  /** Whole water cells it holds of the newest view's grid, by that view's mask; null while nothing was seen. */
   wholeWater: number | null
   alertId: number | null
   alertSeverity: Severity | null
@@ -48,8 +48,9 @@ export async function regionFacts(context: Context, regionId?: number): Promise<
     `SELECT r.id AS regionId, r.geometry_id AS geometryId, f.id AS feedId, f.name AS feedName, f.unit, f.cadence,
        f.silent_after_hours AS silentAfterHours, f.gap_filled AS gapFilled, ru.id AS ruleId, rv.definition,
        (SELECT max(ifnull(l.ends_at, l.observed_at)) FROM layers l WHERE l.feed_id = f.id AND l.observed_at <= $now) AS newestLayerAt,
-       (SELECT w.whole_water FROM summaries v JOIN provenances p ON p.id = v.provenance_id
+       (SELECT ifnull(m.whole_water, w.whole_water) FROM summaries v JOIN provenances p ON p.id = v.provenance_id
           JOIN cell_weights w ON w.geometry_id = v.geometry_id AND w.grid_id = p.grid_id
+          LEFT JOIN region_masks m ON m.geometry_id = v.geometry_id AND m.mask_id = p.mask_id
         WHERE v.geometry_id = r.geometry_id AND v.feed_id = f.id ORDER BY v.day DESC LIMIT 1) AS wholeWater,
        a.id AS alertId, a.severity AS alertSeverity, j.done AS jobDone, j.total AS jobTotal,
        CASE WHEN s.rule_id IS NULL THEN NULL ELSE json_object('state', s.state, 'inEvent', s.in_event, 'severity', s.severity, 'day', s.day,

@@ -15,6 +15,7 @@ import { feedRoutes } from './feeds'
 import { fileRoutes } from './files'
 import { jobRoutes } from './jobs'
 import { layerRoutes } from './layers'
+import { maskRoutes } from './masks'
 import { pullRoutes } from './pulls'
 import { regionRoutes } from './regions'
 import { ruleRoutes } from './rules'
@@ -37,6 +38,7 @@ const routes: ((router: Router, context: Context) => void)[] = [
   fileRoutes,
   jobRoutes,
   layerRoutes,
+  maskRoutes,
   pullRoutes,
   regionRoutes,
   ruleRoutes,

@@ -1,5 +1,6 @@
 import type { Grid } from '../../shared/science/grid'
 import { polygonAreaKm2 } from '../../shared/science/ring-area'
+import { bitAt } from '../../shared/science/water-mask'
 import { wholeWaterCells } from '../../shared/science/whole-water'
 import { isLand } from '../geography/land'
 import { cellCentre } from '../grids/cell-centre'
@@ -18,8 +19,10 @@ export function measureOutline({ sent, inland, shoreBufferKm, grids }: OutlineTa
   const counts = grids.map((one): GridCount => {
     const expected = (one.grid.rows * one.grid.columns * areaKm2) / boxAreaKm2(one)
     if (expected > mostCells) return { exact: false, cells: Math.round(expected), wholeCells: Math.round(expected), waterAreaKm2: null, nearLandShare: null }
+    const { mask } = one
     const weights = weighGrid(geometry, one.grid, shoreBufferKm)
-    return { exact: true, cells: weights.index.length, wholeCells: wholeWaterCells(weights), ...waterOf(one.grid, weights) }
+    if (mask) weights.water = Uint8Array.from(weights.index, (cell) => bitAt(mask, cell))
+    return { exact: true, cells: weights.index.length, wholeCells: wholeWaterCells(weights), ...waterOf(one, weights) }
   })
   return { outline: outcome.outline, counts }
 }
@@ -28,13 +31,13 @@ function boxAreaKm2({ west, south, east, north }: MeasuredGrid): number {
   return polygonAreaKm2({ type: 'Polygon', coordinates: [[[west, south], [east, south], [east, north], [west, north], [west, south]]] })
 }
 
-/** Water of the region, and the share of it in cells beside which (corners too) a cell has its centre on land. */
-function waterOf(grid: Grid, { index, share, areaKm2, water }: GridWeights): Pick<GridCount, 'waterAreaKm2' | 'nearLandShare'> {
+/** Water of the region, and the share of it in cells beside which (corners too) a cell is land by the mask. */
+function waterOf({ grid, mask }: MeasuredGrid, { index, share, areaKm2, water }: GridWeights): Pick<GridCount, 'waterAreaKm2' | 'nearLandShare'> {
   const landOf = new Map<number, boolean>()
   const land = (cell: number) => {
     const known = landOf.get(cell)
     if (known !== undefined) return known
-    const found = isLand(...cellCentre(grid, cell))
+    const found = mask ? bitAt(mask, cell) === 0 : isLand(...cellCentre(grid, cell))
     landOf.set(cell, found)
     return found
   }

@@ -32,6 +32,8 @@ export interface MeasuredGrid {
   south: number
   east: number
   north: number
+  /** The water mask in force, a bit a cell; left out where that is the land outline. */
+  mask?: Uint8Array
 }
 
 /** What a grid holds of a region. Not exact: an estimate from areas. */

@@ -3,6 +3,7 @@ import type { Figures } from '../../shared/science/figures'
 import type { Judgement, JudgeInput } from '../../shared/science/judge'
 import type { DemoFile } from '../seeders/demo/files'
 import type { Seen } from './inspect-file'
+import type { MaskTasks } from './mask-tasks'
 import type { OutlineTasks } from './outline-tasks'
 import type { PatchTasks } from './patch-tasks'
 import type { PictureTasks } from './picture-tasks'
@@ -66,7 +67,7 @@ export type ViewFigures = Omit<Figures, 'histogram' | 'maxIndex'> & {
 }
 
 /** Every task a worker can do. Each takes and answers plain data and typed arrays; none opens the database. */
-export interface Tasks extends PictureTasks, OutlineTasks, PatchTasks {
+export interface Tasks extends PictureTasks, OutlineTasks, PatchTasks, MaskTasks {
   /** Shows that the thread has come up. */
   greet: { input: null; output: true }
   hashPassword: { input: { password: string; cost?: number }; output: string }

@@ -2,6 +2,9 @@ import type { RefusalCode } from '../../shared/errors'
 import { hdf5Failures } from '../grids/hdf5-library'
 import { LayerRefused } from '../grids/layer-refused'
 import { checkOutline } from './check-outline'
+import { composeMask } from './compose-mask'
+import { countCells, findLandMarks } from './count-cells'
+import { drawMaskTile } from './draw-mask-tile'
 import { drawTile } from './draw-tile'
 import { findPatches } from './find-patches'
 import { inspectFile } from './inspect-file'
@@ -35,6 +38,10 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   drawTile,
   readCells,
   surveyLayer,
+  findLandMarks,
+  countCells,
+  composeMask,
+  drawMaskTile,
   findPatches,
   writeDemoFile: ({ file, directory }) => writeDemoFile(file, directory),
 }

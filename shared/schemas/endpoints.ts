@@ -8,8 +8,8 @@ import * as feeds from './feeds'
 import * as files from './files'
 import { layerLegend } from './layer-legend'
 import * as layers from './layers'
+import * as masks from './masks'
 import * as outlines from './outlines'
-import * as patches from './patches'
 import * as pulls from './pulls'
 import * as regions from './regions'
 import * as rules from './rules'
@@ -53,6 +53,12 @@ export const endpoints = {
   dropPull: endpoint({ method: 'DELETE', path: '/feeds/:id/pull', may: 'feed:edit', summary: 'Fetch nothing any more', params: idParam, status: 204 }),
   pullNow: endpoint({ method: 'POST', path: '/feeds/:id/pull/now', may: 'feed:edit', summary: 'Fetch now', params: idParam, reply: pulls.feedPull, status: 202 }),
 
+  feedMasks: endpoint({ method: 'GET', path: '/feeds/:id/masks', may: 'read', summary: 'The water masks of a feed, by grid: which is in force, and what each was made from', params: idParam, reply: masks.feedMasks }),
+  makeMask: endpoint({ method: 'POST', path: '/feeds/:id/masks', may: 'feed:confirm', summary: 'Make a water mask from the trusted layers of a period; nothing changes until it is put in force', params: idParam, body: masks.newMask, reply: masks.feedMasks, status: 202 }),
+  maskChange: endpoint({ method: 'GET', path: '/masks/:id/change', may: 'read', summary: 'What putting this water mask in force would change', params: idParam, reply: masks.maskChange }),
+  putMaskInForce: endpoint({ method: 'POST', path: '/masks/:id/in-force', may: 'feed:edit', summary: 'Put this water mask in force: the history of its feed is made and judged anew', params: idParam, body: masks.maskInForce, reply: masks.feedMasks, status: 202 }),
+  maskTile: endpoint({ method: 'GET', path: '/masks/:id/tiles/:z/:x/:y.png', may: 'read', summary: 'A map tile of a water mask: water, land, and where it differs from the land outline', params: tileParams, query: z.object({ theme: z.enum(['light', 'night']).default('light') }), contentType: 'image/png' }),
+
   uploadFiles: endpoint({ method: 'POST', path: '/files', may: 'file:upload', summary: 'Send files', multipart: true, reply: z.object({ items: z.array(files.receipt) }), status: 202 }),
   listFiles: endpoint({ method: 'GET', path: '/files', may: 'read', summary: 'Files, newest first', query: page.extend({ status: files.fileStatus.optional() }), reply: list(files.fileItem) }),
   file: endpoint({ method: 'GET', path: '/files/:id', may: 'read', summary: 'One file: what was understood, or why it was refused', params: idParam, reply: files.file }),
@@ -77,8 +83,6 @@ export const endpoints = {
   retireRegion: endpoint({ method: 'DELETE', path: '/regions/:id', may: 'region:edit', summary: 'Retire a region; its history stays', params: idParam, status: 204 }),
   regionVersions: endpoint({ method: 'GET', path: '/regions/:id/versions', may: 'read', summary: 'Every version of its outline, newest first', params: idParam, reply: z.object({ items: z.array(outlines.regionVersion), nextCursor: z.null() }) }),
   regionCells: endpoint({ method: 'GET', path: '/regions/:id/cells', may: 'read', summary: 'The single cells of its newest view, where it holds too few whole water cells for percentiles', params: idParam, query: outlines.cellsQuery, reply: outlines.singleCells }),
-  regionView: endpoint({ method: 'GET', path: '/regions/:id/view', may: 'read', summary: 'One view: its figures, where the greatest value is, area by value, water masked by reason', params: idParam, query: patches.viewQuery, reply: patches.regionView }),
-  regionPatches: endpoint({ method: 'GET', path: '/regions/:id/patches', may: 'read', summary: 'Connected patches of a view at or above a level: area, greatest value, distance and bearing from the site, change since the view before', params: idParam, query: patches.patchesQuery, reply: patches.regionPatches }),
   regionSeries: endpoint({ method: 'GET', path: '/regions/:id/series', may: 'read', summary: 'Figures of every view', params: idParam, query: series.seriesQuery, reply: series.series }),
   regionBaseline: endpoint({ method: 'GET', path: '/regions/:id/baseline', may: 'read', summary: 'What is usual by day of year', params: idParam, query: series.baselineQuery, reply: series.baseline }),
   regionEvents: endpoint({ method: 'GET', path: '/regions/:id/events', may: 'read', summary: 'Events', params: idParam, query: series.eventsQuery, reply: z.object({ items: z.array(series.bloomEvent), nextCursor: z.null() }) }),
