@@ -10,6 +10,7 @@ import { layerLegend } from './layer-legend'
 import * as layers from './layers'
 import * as masks from './masks'
 import * as outlines from './outlines'
+import * as patches from './patches'
 import * as pulls from './pulls'
 import * as regions from './regions'
 import * as rules from './rules'
@@ -83,6 +84,8 @@ export const endpoints = {
   retireRegion: endpoint({ method: 'DELETE', path: '/regions/:id', may: 'region:edit', summary: 'Retire a region; its history stays', params: idParam, status: 204 }),
   regionVersions: endpoint({ method: 'GET', path: '/regions/:id/versions', may: 'read', summary: 'Every version of its outline, newest first', params: idParam, reply: z.object({ items: z.array(outlines.regionVersion), nextCursor: z.null() }) }),
   regionCells: endpoint({ method: 'GET', path: '/regions/:id/cells', may: 'read', summary: 'The single cells of its newest view, where it holds too few whole water cells for percentiles', params: idParam, query: outlines.cellsQuery, reply: outlines.singleCells }),
+  regionView: endpoint({ method: 'GET', path: '/regions/:id/view', may: 'read', summary: 'One view: its figures, where the greatest value is, area by value, water masked by reason', params: idParam, query: patches.viewQuery, reply: patches.regionView }),
+  regionPatches: endpoint({ method: 'GET', path: '/regions/:id/patches', may: 'read', summary: 'Connected patches of a view at or above a level: area, greatest value, distance and bearing from the site, change since the view before', params: idParam, query: patches.patchesQuery, reply: patches.regionPatches }),
   regionSeries: endpoint({ method: 'GET', path: '/regions/:id/series', may: 'read', summary: 'Figures of every view', params: idParam, query: series.seriesQuery, reply: series.series }),
   regionBaseline: endpoint({ method: 'GET', path: '/regions/:id/baseline', may: 'read', summary: 'What is usual by day of year', params: idParam, query: series.baselineQuery, reply: series.baseline }),
   regionEvents: endpoint({ method: 'GET', path: '/regions/:id/events', may: 'read', summary: 'Events', params: idParam, query: series.eventsQuery, reply: z.object({ items: z.array(series.bloomEvent), nextCursor: z.null() }) }),
