@@ -17,11 +17,19 @@ export function areaText({ areaKm2, atLeast }: { areaKm2: number; atLeast: boole
   return `${atLeast ? 'at least ' : ''}${figureText(areaKm2)} km²`
 }
 
-/** The largest patch of a view in one sentence. */
+/** The largest patch of a view in one sentence: area, greatest value, and where it lies from the site. */
 export function patchSentence(patch: EvidencePatch, unit: string | null): string {
+  const { nearest, peakAway, siteName, latitude, longitude } = patch
   const inUnit = (value: number) => `${figureText(value)}${unit && unit !== '1' ? ` ${unitWords(unit)}` : ''}`
-  const site = patch.siteName ? patch.siteName : 'the site'
-  const where = patch.nearest ? `, ${awayText(patch.nearest, site)}` : ''
-  const peak = patch.peakAway && patch.peakAway.bearing !== null && patch.nearest ? `, the greatest value ${awayText(patch.peakAway, 'it')}` : ''
-  return `The largest patch at or above ${inUnit(patch.level)} covers ${areaText(patch)} and reaches ${inUnit(patch.greatest)}${where}${peak}.`
+  const reaches = `reaches ${inUnit(patch.greatest)}`
+  const covers = `The largest patch at or above ${inUnit(patch.level)} covers ${areaText(patch)}`
+  const site = siteName ?? 'the site'
+  if (!nearest || !peakAway) return `${covers} and ${reaches} at ${placeText(latitude, longitude)}.`
+  if (nearest.bearing === null) return `${covers}, holds ${site} and ${reaches}, ${awayText(peakAway, siteName ? 'it' : site)}.`
+  if (nearest.km === peakAway.km) return `${covers} and ${reaches}, ${awayText(peakAway, site)}.`
+  return `${covers}, begins ${awayText(nearest, site)} and ${reaches} ${awayText(peakAway, siteName ? 'it' : site)}.`
+}
+
+function placeText(latitude: number, longitude: number): string {
+  return `${Math.abs(latitude).toFixed(2)}° ${latitude < 0 ? 'S' : 'N'}, ${Math.abs(longitude).toFixed(2)}° ${longitude < 0 ? 'W' : 'E'}`
 }

@@ -1,6 +1,7 @@
 import { ruleText } from '../../shared/rule-text'
 import { dateOf } from '../../shared/science/local-day'
 import type { Evidence } from '../../shared/schemas/alerts'
+import type { EvidencePatch } from '../../shared/schemas/patches'
 import type { Context } from '../context'
 import type { Transaction } from '../db'
 import type { Subject } from '../pipeline/active-rule'
@@ -18,8 +19,13 @@ interface LayerSource {
   formula: string | null
 }
 
+/** What a judgement found, with the largest patch of the days that may be told of. */
+export interface JudgedToTell extends Judged {
+  largestPatches: ReadonlyMap<number, EvidencePatch | null>
+}
+
 /** What one day's view says, with everything needed to compute it again. */
-export async function evidenceOn(context: Context, tx: Transaction, subject: Subject, judged: Judged, day: number): Promise<Evidence> {
+export async function evidenceOn(context: Context, tx: Transaction, subject: Subject, judged: JudgedToTell, day: number): Promise<Evidence> {
   const view = judged.views.find((one) => one.day === day)!
   const verdict = judged.judgement.judged.find((one) => one.day === day)!
   const source = (await context.db.first<LayerSource>(
@@ -32,6 +38,7 @@ export async function evidenceOn(context: Context, tx: Transaction, subject: Sub
   ))!
   const baseline = judged.baselineId === null ? null : await context.db.first<{ version: number; years: string }>('SELECT version, years FROM baselines WHERE id = $id', { id: judged.baselineId }, tx)
   const { feed, rule, definition } = subject
+  const largestPatch = judged.largestPatches.get(day)
   return {
     statistic: definition.statistic,
     unit: feed.unit,
@@ -61,5 +68,6 @@ export async function evidenceOn(context: Context, tx: Transaction, subject: Sub
     waterMask: maskText({ kind: source.maskKind, version: source.maskVersion }),
     softwareVersion,
     formula: source.formula,
+    ...(largestPatch === undefined ? {} : { largestPatch }),
   }
 }

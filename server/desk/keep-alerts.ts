@@ -7,8 +7,7 @@ import type { EntryKind } from '../models/alert-entry'
 import type { Change } from '../news'
 import type { Subject } from '../pipeline/active-rule'
 import type { KeptEvent } from '../pipeline/keep-events'
-import type { Judged } from '../pipeline/keep-standing'
-import { evidenceOn } from './evidence'
+import { evidenceOn, type JudgedToTell } from './evidence'
 import { sinceWhat } from './since-what'
 import { writeLetters } from './write-letters'
 
@@ -18,7 +17,7 @@ const hourMs = 3_600_000
  * Alerts follow events. An alert stays with the event that holds its trigger day; a running event seen recently that no
  * alert belongs to raises one, unless the region has an open alert already. Letters go into the same transaction.
  */
-export async function keepAlerts(context: Context, tx: Transaction, subject: Subject, judged: Judged): Promise<Change[]> {
+export async function keepAlerts(context: Context, tx: Transaction, subject: Subject, judged: JudgedToTell): Promise<Change[]> {
   const alerts = await context.models.alerts.findAll({ where: { ruleId: subject.rule.id }, transaction: tx })
   const changes: Change[] = []
   const changed = (alert: AlertRecord) => changes.push({ topic: 'alerts', id: alert.id })
@@ -39,7 +38,7 @@ export async function keepAlerts(context: Context, tx: Transaction, subject: Sub
   return changes
 }
 
-async function raise(context: Context, tx: Transaction, subject: Subject, judged: Judged, event: KeptEvent): Promise<AlertRecord> {
+async function raise(context: Context, tx: Transaction, subject: Subject, judged: JudgedToTell, event: KeptEvent): Promise<AlertRecord> {
   const evidence = await evidenceOn(context, tx, subject, judged, event.lastFlagged)
   const now = context.clock.now()
   const alert = await context.models.alerts.create(
@@ -64,7 +63,7 @@ async function raise(context: Context, tx: Transaction, subject: Subject, judged
 }
 
 /** Brings an open alert to what its event is now; answers whether anything changed. */
-async function follow(context: Context, tx: Transaction, subject: Subject, judged: Judged, alert: AlertRecord, event: KeptEvent | undefined, redrawn: boolean): Promise<boolean> {
+async function follow(context: Context, tx: Transaction, subject: Subject, judged: JudgedToTell, alert: AlertRecord, event: KeptEvent | undefined, redrawn: boolean): Promise<boolean> {
   if (!event) {
     if (alert.eventId === null && alert.phase === 'ended') return false
     await alert.update({ eventId: null, phase: 'ended', version: alert.version + 1 }, { transaction: tx })
@@ -110,7 +109,7 @@ async function eventsOverOtherOutlines(context: Context, tx: Transaction, { rule
 }
 
 /** Only recent views raise anything: history that arrives late wakes nobody. */
-function isFresh(context: Context, { feed }: Subject, judged: Judged, event: KeptEvent): boolean {
+function isFresh(context: Context, { feed }: Subject, judged: JudgedToTell, event: KeptEvent): boolean {
   const view = judged.views.find((one) => one.day === event.lastFlagged)
   return view !== undefined && context.clock.now() - (view.endsAt ?? view.observedAt) <= feed.freshnessLimitHours * hourMs
 }

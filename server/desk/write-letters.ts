@@ -1,4 +1,5 @@
 import { ageText } from '../../shared/figure-text'
+import { patchSentence } from '../../shared/patch-text'
 import { paths } from '../../shared/paths'
 import { severities } from '../../shared/schemas/common'
 import type { Context } from '../context'
@@ -50,12 +51,14 @@ function letterOf(context: Context, { alert, subject, kind }: Occasion): { subje
   const age = ageText((context.clock.now() - Date.parse(evidence.layerObservedAt)) / 3_600_000)
   const rose = kind === 'rose' ? 'It rose. ' : ''
   const why = `${evidence.ruleText} View of ${evidence.day}, ${age} old.`
+  const patch = evidence.largestPatch ? patchSentence(evidence.largestPatch, evidence.unit) : null
   const warnings = [...cautions, ...(opticallyComplex ? [opticallyComplexCaution] : [])]
   const demo = context.env.mode === 'demo'
   const text = [
     `${statement.lead} ${statement.rest}`,
     '',
     `${rose}${evidenceLine(evidence)}`,
+    ...(patch ? [patch] : []),
     `Why: ${why}`,
     '',
     `See why and acknowledge: ${url}`,
@@ -67,7 +70,7 @@ function letterOf(context: Context, { alert, subject, kind }: Occasion): { subje
     title: statement.rest,
     markWord: severity,
     preheader: evidenceLine(evidence),
-    bodyHtml: letterParagraph(escapeHtml(`${rose}${evidenceLine(evidence)}`)) + letterParagraph(escapeHtml(`Why: ${why}`)),
+    bodyHtml: letterParagraph(escapeHtml(`${rose}${evidenceLine(evidence)}`)) + (patch ? letterParagraph(escapeHtml(patch)) : '') + letterParagraph(escapeHtml(`Why: ${why}`)),
     button: { label: 'See why and acknowledge', url },
     footer: warnings.join('\n'),
     headNote: `alert ${alert.id}, view of ${evidence.day}, ${age} old`,

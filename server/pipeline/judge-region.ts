@@ -1,6 +1,7 @@
 import { localSolarDay } from '../../shared/science/local-day'
 import type { Context } from '../context'
 import { keepAlerts } from '../desk/keep-alerts'
+import { patchesToTell } from '../desk/patches-to-tell'
 import type { JobRecord } from '../models/job'
 import { judgeableViews } from '../queries/judgeable-views'
 import type { RegionJudgement } from '../workers/tasks'
@@ -28,11 +29,12 @@ export async function judgeRegion(context: Context, ruleId: number): Promise<voi
   const today = Math.max(nowDay, Math.min(newest, nowDay + 1))
   const found = await context.workers.heavy('judgeRegion', { views, rule: subject.definition, today })
   const judgement = subject.feed.gapFilled ? unsure(found) : found
+  const largestPatches = await patchesToTell(context, subject, judgement.events)
   const changes = await context.db.write(async (tx) => {
     const baselineId = await keepBaseline(context, tx, subject, views, judgement)
     const events = await keepEvents(context, tx, subject, judgement.events, baselineId)
     await keepStanding(context, tx, subject, { views, judgement, events, baselineId })
-    return keepAlerts(context, tx, subject, { views, judgement, events, baselineId })
+    return keepAlerts(context, tx, subject, { views, judgement, events, baselineId, largestPatches })
   })
   context.news.tell({ topic: 'regions', id: subject.region.id }, ...changes)
 }

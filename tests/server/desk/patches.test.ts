@@ -3,8 +3,9 @@ import request from 'supertest'
 import type { Person } from '../../../server/accounts/person'
 import type { FeedRecord } from '../../../server/models/feed'
 import type { RegionRecord } from '../../../server/models/region'
-import type { RegionPatches, RegionView } from '../../../shared/schemas/patches'
-import { aFeed, aPerson, aRegion, cleanSea, runJobs, seaFile, send, type SeaStep } from '../../support/sea'
+import { awayText, patchSentence } from '../../../shared/patch-text'
+import type { EvidencePatch, RegionPatches, RegionView } from '../../../shared/schemas/patches'
+import { aFeed, aPerson, aRegion, cleanSea, quietYears, runJobs, seaFile, send, type SeaStep } from '../../support/sea'
 import { createTestContext, type TestContext } from '../../support/test-context'
 import { aUser, bearer } from '../../support/people'
 
@@ -160,5 +161,36 @@ describe('one view of a region', () => {
     expect(bounded.id).not.toBe(feed.id)
     expect(shown.view!.masked).toEqual([{ reason: 'outside the valid range', areaKm2: expect.any(Number), share: expect.closeTo(2 / 64, 3) }])
     expect(shown.view!.max!.value).toBe(4)
+  })
+})
+
+describe('an alert', () => {
+  const bloom = drawn('44444444 '.repeat(3) + '44444477 ' + '44444444 '.repeat(2) + '00000000 00000000')
+
+  it('keeps the largest patch of the day it was raised on, and its letter names it in one sentence', async () => {
+    const officer = await aUser(context, { roles: ['officer'] })
+    await context.models.subscriptions.create({ userId: officer.id, allRegions: true, minimumSeverity: 'Minor', delivery: 'at once' })
+    await arrive(quietYears([2022, 2023, 2024, 2025], '05-25', 30))
+    await arrive([{ at: '2026-06-10T12:00:00Z', value: bloom }, { at: '2026-06-11T12:00:00Z', value: bloom }])
+    const [alert] = await context.models.alerts.findAll()
+    const { patches: found } = await patches()
+    const kept = alert!.evidence.largestPatch!
+    expect(kept).toMatchObject({ level: 1, cells: 48, greatest: 7, atLeast: true, siteName: 'Crow Rock', nearest: { km: 0, bearing: null }, patches: 1 })
+    expect([kept.areaKm2, kept.peakAway]).toEqual([found[0]!.areaKm2, found[0]!.peakAway])
+    const sentence = patchSentence(kept, 'mg m-3')
+    expect(sentence).toMatch(/^The largest patch at or above 1 mg m⁻³ covers at least 3\d{3} km², holds Crow Rock and reaches 7 mg m⁻³, 21\.3 km E of it\.$/)
+    const [letter] = await context.models.letters.findAll()
+    expect(letter!.textPart).toContain(sentence)
+    expect(letter!.htmlPart).toContain(sentence)
+    await arrive([{ at: '2026-06-11T12:30:00Z', value: drawn(calm) }])
+    expect((await context.models.alerts.findAll())[0]!.evidence.largestPatch).toEqual(kept)
+  })
+
+  it('says where it is in plain words', () => {
+    const patch: EvidencePatch = { level: 1, areaKm2: 21.4, atLeast: false, cells: 3, greatest: 6.44, latitude: 51.2, longitude: -10.35, siteName: null, nearest: { km: 6.21, bearing: 44 }, peakAway: { km: 9.13, bearing: 70 }, patches: 2 }
+    expect(patchSentence(patch, 'mg m-3')).toBe('The largest patch at or above 1 mg m⁻³ covers 21.4 km², begins 6.2 km NE of the site and reaches 6.44 mg m⁻³ 9.1 km ENE of the site.')
+    expect(patchSentence({ ...patch, nearest: patch.peakAway, siteName: 'Crow Rock' }, null)).toBe('The largest patch at or above 1 covers 21.4 km² and reaches 6.44, 9.1 km ENE of Crow Rock.')
+    expect(patchSentence({ ...patch, nearest: null, peakAway: null }, 'mg m-3')).toBe('The largest patch at or above 1 mg m⁻³ covers 21.4 km² and reaches 6.44 mg m⁻³ at 51.20° N, 10.35° W.')
+    expect(awayText({ km: 130.4, bearing: 359 })).toBe('130 km N of the site')
   })
 })
