@@ -9,6 +9,10 @@ interface Source {
   imports: string[]
 }
 
+/** Statements begin a line, and no quote stands before the name: a path such as '/regions/import' is no import. */
+const statements = /^ *(?:import|export)\b(?:[^'"]*?\bfrom)?\s*['"]([^'"]+)['"]/gm
+const calls = /(?<![/\w])import\(\s*['"]([^'"]+)['"]/g
+
 const rooms = ['shared', 'server', 'src']
 const sources = rooms.flatMap((room) =>
   readdirSync(room, { recursive: true, encoding: 'utf8' })
@@ -21,7 +25,7 @@ const sources = rooms.flatMap((room) =>
 )
 
 function importsOf(path: string, text: string): string[] {
-  const found = [...text.matchAll(/(?<!\/)(?:\bfrom|\bimport\(|\bimport)\s*\(?\s*['"]([^'"]+)['"]/g)].map((match) => match[1]!)
+  const found = [statements, calls].flatMap((pattern) => [...text.matchAll(pattern)].map((match) => match[1]!))
   return found.map((name) => (name.startsWith('.') ? normalize(join(dirname(path), name)) : name))
 }
 
@@ -32,6 +36,11 @@ const serverOutside = (...places: string[]) => inside('server').filter(({ path }
 describe('the rooms', () => {
   it('were found', () => {
     for (const room of rooms) expect(inside(room).length).toBeGreaterThan(20)
+  })
+
+  it('are read by their statements, not by words that look like them', () => {
+    const text = "import { a,\n  b } from './two'\nimport './look.css'\nexport * from 'zod'\nconst path = '/areas/import', from = 'x'\nconst { c } = await import('./late')\n"
+    expect(importsOf('src/one.ts', text)).toEqual(['src/two', 'src/look.css', 'zod', 'src/late'])
   })
 
   it('let imports run one way: client and server know shared, and nobody else', () => {

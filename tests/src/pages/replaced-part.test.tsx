@@ -1,6 +1,7 @@
 import { render, screen } from '@testing-library/react'
 import { MemoryRouter } from 'react-router-dom'
 import { describe, expect, it } from 'vitest'
+import { paths } from '../../../shared/paths'
 import { ReplacedPart } from '../../../src/pages/file/replaced-part'
 import { aWaitingFile } from '../support/file-fixtures'
 
@@ -19,7 +20,7 @@ describe('a file and the one that replaced it', () => {
     expect(container.textContent).toBe(
       'This file was replaced. Replaced by west_chl_2026.nc on 11 Jun 2026. It is kept, but takes no part in any figure.',
     )
-    expect(screen.getByRole('link').getAttribute('href')).toBe('/files/12')
+    expect(screen.getByRole('link').getAttribute('href')).toBe(paths.file.to({ id: 12 }))
   })
 
   it('says so when only some of its layers were', () => {
