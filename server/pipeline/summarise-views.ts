@@ -10,7 +10,7 @@ import { gridOf } from './known-grids'
 import { placeOf } from './layer-place'
 import { maskedWeights, maskInForce, maskNamed, noteWholeWater, type KnownMask } from './masks/mask-in-force'
 import { provenanceFor } from './provenance'
-import { viewDay } from './view-day'
+import { layersOfDays, viewDay } from './view-day'
 
 export interface ViewKey {
   geometryId: number
@@ -22,8 +22,6 @@ interface View extends ViewKey {
   layers: PlacedLayer[]
   gridId: number
 }
-
-const dayMs = 86_400_000
 
 /** Figures that are worked out and wait to be written. */
 export interface MadeViews {
@@ -77,9 +75,7 @@ export async function freshFigures(context: Context, key: ViewKey, waterMask?: s
 
 /** The layers of each view, all on one grid: that of the latest processing version. */
 async function viewsOf(context: Context, feedId: number, keys: readonly ViewKey[]): Promise<View[]> {
-  const days = keys.map((key) => key.day)
-  const from = (Math.min(...days) - 1) * dayMs
-  const to = (Math.max(...days) + 2) * dayMs
+  const { from, to } = layersOfDays(keys.map((key) => key.day))
   const layers = await trustedLayers(context, feedId, from, to)
   const geometries = new Map(
     (await context.models.geometries.findAll({ where: { id: [...new Set(keys.map((key) => key.geometryId))] }, attributes: ['id', 'centreLongitude'] })).map(
