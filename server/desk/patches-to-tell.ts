@@ -6,7 +6,7 @@ import { LayerRefused } from '../grids/layer-refused'
 import type { Subject } from '../pipeline/active-rule'
 import { storedView } from '../queries/stored-views'
 import { levelOf, plainLevel } from './region-level'
-import { patchesOfLayers } from './view-patches'
+import { patchesOfView } from './view-patches'
 
 /**
  * The largest patch of every day an alert may speak of once these events are kept: the newest day of a running event
@@ -42,7 +42,7 @@ async function daysToTell(context: Context, { rule }: Subject, events: readonly 
 async function largestPatch(context: Context, { region, geometry, feed, definition }: Subject, day: number): Promise<EvidencePatch | null | undefined> {
   const view = await storedView(context, { geometryId: geometry.id, feedId: feed.id }, day)
   const level = levelOf(definition.test) ?? plainLevel
-  const found = view && (await patchesOfLayers(context, context.workers.heavy, { region, geometry, feed, level, minimumCells: 1, most: 1 }, view.layerIds))
+  const found = view && (await patchesOfView(context, context.workers.heavy, { region, geometry, feed, level, minimumCells: 1, most: 1 }, view))
   if (!found) return undefined
   const [patch] = found.patches
   if (!patch) return null

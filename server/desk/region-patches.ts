@@ -8,7 +8,7 @@ import { readable } from '../pipeline/layer-pictures'
 import { storedView, usableDayBefore, type StoredFigures } from '../queries/stored-views'
 import type { FoundPatches, PlacedPatch } from '../workers/patch-tasks'
 import { placeWords, viewSubject, type ViewSubject } from './view-subject'
-import { patchesOfLayers } from './view-patches'
+import { patchesOfView } from './view-patches'
 
 /** As many as a person reads; the others are counted. */
 const mostListed = 40
@@ -27,7 +27,7 @@ export async function regionPatches(context: Context, regionId: number, query: z
   if (!view) return { ...noView, sentence: asked === null ? 'This feed has no view of this region yet.' : `This feed has no view of this region on ${query.day}.` }
   const before = await viewBefore(context, subject, view.day)
   const wanted = { ...subject, level: level.level, minimumCells: query.minimumCells, most: mostListed }
-  const found = await readable(patchesOfLayers(context, context.workers.light, wanted, view.layerIds, before?.layerIds))
+  const found = await readable(patchesOfView(context, context.workers.light, wanted, view, before))
   if (!found) return { ...noView, sentence: 'The layers of this view have been deleted.' }
   return {
     ...head,

@@ -31,9 +31,9 @@ export async function regionView(context: Context, regionId: number, query: z.in
 }
 
 async function presentView(context: Context, { region, geometry, feed, level }: ViewSubject, view: StoredFigures): Promise<RegionView['view']> {
-  const { day, observedAt, endsAt, histogram: packed, max, maxLat, maxLon, ...figures } = view
+  const { day, observedAt, endsAt, histogram: packed, max, maxLat, maxLon, maskId: _, ...figures } = view
   const histogram = unpackHistogram(packed)
-  const waterKm2 = await waterAreaKm2(context, geometry.id, view.layerIds)
+  const waterKm2 = await waterAreaKm2(context, geometry.id, view)
   const reasons = await reasonsOf(context, { geometryId: geometry.id, feedId: feed.id }, day)
   const { site } = region
   return {

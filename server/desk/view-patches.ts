@@ -1,13 +1,14 @@
-import type { Place } from '../geography/geodesic'
 import { outlineOf } from '../../shared/science/region-outline'
 import type { Context } from '../context'
+import type { Place } from '../geography/geodesic'
 import type { FeedRow } from '../models/feed'
 import type { GeometryRow } from '../models/geometry'
 import type { RegionRow } from '../models/region'
-import { cellWeights } from '../pipeline/cell-weights'
 import { rangeOf } from '../pipeline/layer-pictures'
 import { placeOf } from '../pipeline/layer-place'
+import { maskedWeights } from '../pipeline/masks/mask-in-force'
 import { layersById } from '../queries/layers'
+import type { StoredFigures } from '../queries/stored-views'
 import type { FoundPatches, ViewAsked } from '../workers/patch-tasks'
 
 export interface PatchesWanted {
@@ -19,20 +20,23 @@ export interface PatchesWanted {
   most: number
 }
 
-/** Patches of the view that was made from some layers; null where the layers are gone. `before` are those of the view before. */
-export async function patchesOfLayers(
+/** What a stored view rests on. */
+type Ground = Pick<StoredFigures, 'layerIds' | 'maskId'>
+
+/** Patches of a stored view, by the layers and the mask its figures rest on; null where the layers are gone. */
+export async function patchesOfView(
   context: Context,
   run: Context['workers']['light'],
   { region, geometry, feed, level, minimumCells, most }: PatchesWanted,
-  layerIds: readonly number[],
-  before: readonly number[] = [],
+  view: Ground,
+  before: Ground | null = null,
 ): Promise<FoundPatches | null> {
-  const now = await viewAsked(context, geometry.id, layerIds)
+  const now = await viewAsked(context, geometry.id, view)
   if (!now) return null
   const site: Place | null = region.site && [region.site.longitude, region.site.latitude]
   return run('findPatches', {
     now,
-    before: await viewAsked(context, geometry.id, before),
+    before: before && (await viewAsked(context, geometry.id, before)),
     level,
     minimumCells,
     most,
@@ -42,17 +46,17 @@ export async function patchesOfLayers(
   })
 }
 
-async function viewAsked(context: Context, geometryId: number, layerIds: readonly number[]): Promise<ViewAsked | null> {
+async function viewAsked(context: Context, geometryId: number, { layerIds, maskId }: Ground): Promise<ViewAsked | null> {
   const layers = await layersById(context, layerIds)
   const [first] = layers
   if (!first) return null
   const grid = await context.db.first<{ definition: string }>('SELECT definition FROM grids WHERE id = $id', { id: first.gridId })
-  const weights = await cellWeights(context, geometryId, first.gridId, first)
+  const weights = await maskedWeights(context, geometryId, { id: maskId, gridId: first.gridId }, first)
   return { layers: layers.map((layer) => placeOf(context, layer)), weights, grid: grid!.definition }
 }
 
 /** Water of the outline on the grid of a view; 0 where its layers are gone. */
-export async function waterAreaKm2(context: Context, geometryId: number, layerIds: readonly number[]): Promise<number> {
+export async function waterAreaKm2(context: Context, geometryId: number, { layerIds, maskId }: Ground): Promise<number> {
   const [first] = await layersById(context, layerIds.slice(0, 1))
-  return first ? outlineOf(await cellWeights(context, geometryId, first.gridId, first)).waterAreaKm2 : 0
+  return first ? outlineOf(await maskedWeights(context, geometryId, { id: maskId, gridId: first.gridId }, first)).waterAreaKm2 : 0
 }

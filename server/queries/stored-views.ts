@@ -18,6 +18,8 @@ export interface StoredFigures {
   maxLat: number | null
   maxLon: number | null
   histogram: Buffer
+  /** The water mask its coverage was told by. */
+  maskId: number
   layerIds: number[]
 }
 
@@ -30,9 +32,10 @@ interface Of {
 export async function storedView(context: Context, { geometryId, feedId }: Of, day: number | null): Promise<StoredFigures | undefined> {
   const row = await context.db.first<Omit<StoredFigures, 'layerIds'> & { layerIds: string }>(
     `SELECT s.day, s.observed_at AS observedAt, s.ends_at AS endsAt, s.coverage, s.cells, s.valid, s.valid_area_km2 AS validAreaKm2, s.mean,
-       s.geometric_mean AS geometricMean, s.median, s.p10, s.p90, s.max, s.max_lat AS maxLat, s.max_lon AS maxLon, s.histogram,
+       s.geometric_mean AS geometricMean, s.median, s.p10, s.p90, s.max, s.max_lat AS maxLat, s.max_lon AS maxLon, s.histogram, p.mask_id AS maskId,
        (SELECT json_group_array(v.layer_id) FROM view_layers v WHERE v.geometry_id = s.geometry_id AND v.feed_id = s.feed_id AND v.day = s.day) AS layerIds
-     FROM summaries s WHERE s.geometry_id = $geometryId AND s.feed_id = $feedId AND ($day IS NULL OR s.day = $day) ORDER BY s.day DESC LIMIT 1`,
+     FROM summaries s JOIN provenances p ON p.id = s.provenance_id
+     WHERE s.geometry_id = $geometryId AND s.feed_id = $feedId AND ($day IS NULL OR s.day = $day) ORDER BY s.day DESC LIMIT 1`,
     { geometryId, feedId, day },
   )
   return row && { ...row, layerIds: (JSON.parse(row.layerIds) as number[]).sort((a, b) => a - b) }
