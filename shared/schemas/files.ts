@@ -10,11 +10,15 @@ export type FileStatus = z.infer<typeof fileStatus>
 export const reportVariable = z.object({
   name: z.string(),
   longName: z.string().nullable(),
+  standardName: z.string().nullable().optional(),
   quantity: z.string(),
   wavelengthNm: z.number().nullable().optional(),
   unit: z.string().nullable(),
   fileUnit: z.string().nullable(),
   conversion: z.string().nullable(),
+  /** In the unit of the values, inclusive; null: the file sets no limit. */
+  validMin: z.number().nullable().optional(),
+  validMax: z.number().nullable().optional(),
   dimensions: z.array(z.object({ name: z.string(), size: z.number() })),
   grid: z.object({
     kind: z.string(),
@@ -25,6 +29,9 @@ export const reportVariable = z.object({
     east: z.number(),
     north: z.number(),
     crs: z.string().nullable(),
+    /** Size of a cell in degrees; null where cells differ and for grids without such axes. */
+    latStep: z.number().nullable().optional(),
+    lonStep: z.number().nullable().optional(),
   }),
   times: z.object({
     count: z.number(),
@@ -32,6 +39,8 @@ export const reportVariable = z.object({
     last: instant.nullable(),
     hasClock: z.boolean(),
     from: z.string(),
+    /** Steps that stand for a period rather than an instant. */
+    composites: z.number().int().optional(),
   }),
   /** It is the error, bias, uncertainty, count or flags of another variable: never proposed. */
   tellsOfAnother: z.boolean().optional(),

@@ -8,7 +8,7 @@ import type { Region } from '../../shared/schemas/regions'
 import { openBrowser, type Watched } from '../support/browser'
 import { startOwnDemo, type OwnDemo } from '../support/demo-server'
 import { apiOf, type JourneyApi } from '../support/journey-api'
-import { daysFrom, writeSurvey, type Box } from '../support/journey-files'
+import { boxAround, daysFrom, writeSurvey } from '../support/journey-files'
 import { drawByMouse, fillSignIn, isSamePage, markPage, noteStatuses, openAs, openLetter, statusesSeen } from '../support/journey-steps'
 
 const fewSeconds = { timeout: 8_000 }
@@ -147,7 +147,7 @@ describe('a region and its files', () => {
 
   it('gets figures from a NetCDF-4, a classic NetCDF and a GeoTIFF file; what cannot be read is refused with a sentence', async () => {
     const [netcdf4, classic, picture, notes] = ['survey-20220101.nc', 'survey-20180101.nc', 'picture.tif', 'notes.nc'] as const
-    const wish = { box: around(region), variable: 'chl_survey' }
+    const wish = { box: boxAround(region.geometry), variable: 'chl_survey' }
     // Four years a file: long enough in the reading to be watched.
     await writeSurvey(folder, netcdf4, 'netcdf4', { ...wish, days: daysFrom('2022-01-01', 1461), value: (day) => 1 + (day % 10) / 10 })
     await writeSurvey(folder, classic, 'classic', { ...wish, days: daysFrom('2018-01-01', 1461), value: () => 3.25 })
@@ -198,11 +198,3 @@ describe('a region and its files', () => {
     expect(await isSamePage(page)).toBe(true)
   })
 })
-
-/** A box with room to spare round a region, so that its grid sees the whole of it. */
-function around({ geometry }: Region): Box {
-  const positions = geometry.type === 'Polygon' ? geometry.coordinates.flat() : geometry.coordinates.flat(2)
-  const longitudes = positions.map(([longitude = Number.NaN]) => longitude)
-  const latitudes = positions.map(([, latitude = Number.NaN]) => latitude)
-  return { west: Math.min(...longitudes) - 0.02, east: Math.max(...longitudes) + 0.02, south: Math.min(...latitudes) - 0.02, north: Math.max(...latitudes) + 0.02 }
-}

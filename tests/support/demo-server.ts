@@ -15,10 +15,10 @@ export interface DemoServer {
 }
 
 /** Starts the demo on a data folder and waits until it has printed how to get in. */
-export async function startDemoServer(dataDir: string, withinMs: number): Promise<DemoServer> {
+export async function startDemoServer(dataDir: string, withinMs: number, env: Record<string, string> = {}): Promise<DemoServer> {
   const port = await freePort()
   const began = performance.now()
-  const offing = startOffing('demo', { PORT: String(port), DATA_DIR: dataDir, LOG_LEVEL: 'warn' })
+  const offing = startOffing('demo', { PORT: String(port), DATA_DIR: dataDir, LOG_LEVEL: 'warn', ...env })
   try {
     await offing.until(/Letters are caught here: \S+/, withinMs)
   } catch (error) {
@@ -47,10 +47,10 @@ export interface OwnDemo extends DemoServer {
  * A demo of one's own on a copy of the seeded folder: ready in seconds, and the layer of its "today" arrives 20 seconds
  * after the start, however long ago the scenario was made. `stop` also removes the copy.
  */
-export async function startOwnDemo(seededDir: string): Promise<OwnDemo> {
+export async function startOwnDemo(seededDir: string, env: Record<string, string> = {}): Promise<OwnDemo> {
   const dataDir = await mkdtemp(join(tmpdir(), 'offing-demo-'))
   await cp(seededDir, dataDir, { recursive: true })
-  const server = await startDemoServer(dataDir, 60_000)
+  const server = await startDemoServer(dataDir, 60_000, env)
   return {
     ...server,
     dataDir,
