@@ -1,4 +1,5 @@
 import type { Context } from '../context'
+import { sweepDecoded } from '../pipeline/sweep-decoded'
 import { removeDoneJobs, removeOldAddresses } from '../queries/old-rows'
 import { keepSetting, settingOf } from '../queries/settings'
 
@@ -7,7 +8,7 @@ const keptDaysOfJobs = 30
 const spareDaysOfAddresses = 60
 const lastTidied = 'tidied-at'
 
-/** Once a day takes away rows that nobody needs any more. When it did so last is kept, so a restart does not put it off. */
+/** Once a day takes away rows and decoded tiles that nobody needs any more. When it did so last is kept, so a restart does not put it off. */
 export async function tidy(context: Context): Promise<void> {
   const now = context.clock.now()
   const last = Number((await settingOf(context.db, lastTidied)) ?? -Infinity)
@@ -18,4 +19,5 @@ export async function tidy(context: Context): Promise<void> {
     await removeOldAddresses(context.db, tx, { now, spareDays: spareDaysOfAddresses })
     await keepSetting(context.db, tx, lastTidied, String(now))
   })
+  await sweepDecoded(context)
 }

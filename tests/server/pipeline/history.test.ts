@@ -1,4 +1,4 @@
-import { readdir, rm, writeFile } from 'node:fs/promises'
+import { readdir, rm, utimes, writeFile } from 'node:fs/promises'
 import { join } from 'node:path'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import type { Person } from '../../../server/accounts/person'
@@ -7,6 +7,7 @@ import { runNextJob } from '../../../server/jobs/run-job'
 import { voidLeases } from '../../../server/jobs/queue'
 import { decodedFolder } from '../../../server/pipeline/decoded-layers'
 import { nextViews, type Share } from '../../../server/pipeline/backfill-order'
+import { sweepDecoded } from '../../../server/pipeline/sweep-decoded'
 import { freshFigures } from '../../../server/pipeline/summarise-views'
 import type { Polygon } from 'geojson'
 import { drawRegion } from '../../../server/desk/draw-region'
@@ -145,6 +146,23 @@ describe('decoded tiles', () => {
     expect(await allSummaries()).toEqual(first)
     const fresh = await freshFigures(context, { geometryId: geometry.id, feedId: feed.id, day: Number(first[0]!['day']) })
     expect(fresh).toMatchObject({ median: first[0]!['median'], mean: first[0]!['mean'] })
+  })
+
+  it('that no layer asks for any more are swept, the others stay', async () => {
+    await aFeed(context, person)
+    await send(context, await seaFile(steps('05', 3)))
+    await runJobs(context)
+    const folder = decodedFolder(context.env)
+    const packs = async () => (await readdir(folder, { recursive: true, withFileTypes: true })).filter((entry) => entry.isFile()).map((entry) => join(entry.parentPath, entry.name)).sort()
+    const before = await packs()
+    const old = new Date(Date.now() - 7_200_000)
+    await writeFile(join(before[0]!, '..', 'of-an-earlier-version'), 'no longer')
+    await writeFile(join(before[0]!, '..', 'just-written'), 'its layer comes soon')
+    for (const path of await packs()) if (!path.endsWith('just-written')) await utimes(path, old, old)
+    expect(await sweepDecoded(context)).toBe(1)
+    expect(await packs()).toEqual([...before, join(before[0]!, '..', 'just-written')].sort())
+    await context.db.write((tx) => context.db.run('DELETE FROM files', {}, tx))
+    expect(await sweepDecoded(context)).toBe(3)
   })
 
   async function drawAgain(geometryId: number, regionId: number) {
