@@ -3,6 +3,7 @@ import type { GridWindow } from '../../shared/science/grid'
 import { openPack, writePack, type OpenPack } from '../grids/decoded/pack-file'
 import { packTile, tileBox, tileCount, type PackShape, type PackedTile, type TileCells } from '../grids/decoded/tile-pack'
 import { tileRectangles } from '../grids/decoded/tile-rectangles'
+import { pendingPacks } from './pending-packs'
 import { readMasked, type MaskedValues } from './read-masked'
 import type { LayerPlace } from './tasks'
 
@@ -43,16 +44,14 @@ export async function readTiles(layer: LayerPlace, wanted: readonly number[], ke
 
 /** Decodes layers that nobody watches yet, so that a region drawn later finds them; very large ones wait for it. */
 export async function decodeLayers({ layers }: { layers: readonly LayerPlace[] }): Promise<void> {
-  let kept: Promise<void> | undefined
+  const pending = pendingPacks()
   for (const layer of layers) {
     const [cells, tiles] = [layer.rows * layer.columns, [...Array(tileCount(layer)).keys()]]
     if (cells <= wholeGridCells && layer.pack !== null && !decodedTiles(layer, tiles.slice(0, 1))) {
-      const read = await readTiles(layer, tiles, true)
-      await kept
-      kept = read.kept
+      await pending.add((await readTiles(layer, tiles, true)).kept)
     }
   }
-  await kept
+  await pending.all()
 }
 
 /** The wanted tiles where all of them have been decoded before; else null, and nothing was read. */

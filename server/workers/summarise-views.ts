@@ -3,6 +3,7 @@ import { packHistogram } from '../../shared/science/histogram'
 import { outlineOf, waterOf, type RegionOutline } from '../../shared/science/region-outline'
 import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-water'
 import { maskedAreas } from './masked-areas'
+import { pendingPacks } from './pending-packs'
 import { readTiles } from './read-tiles'
 import { planOf, type RegionPlan } from './region-cells'
 import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
@@ -30,14 +31,13 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
   const figures: ViewFigures[] = new Array(input.views.length)
   const users = viewsOfLayers(input)
   const cellsOfView = new Map<number, RegionLayer[]>()
-  let kept: Promise<void> | undefined
+  const pending = pendingPacks()
   for (const [at, layer] of input.layers.entries()) {
     const ofLayer = users[at]!.map((view) => regions[input.views[view]!.weights]!)
     const wanted = new Set(ofLayer.flatMap(({ plan }) => plan.tiles))
     if (wanted.size === 0) continue
     const tiles = await readTiles(layer, [...wanted], true)
-    await kept
-    kept = tiles.kept
+    await pending.add(tiles.kept)
     for (const [i, view] of users[at]!.entries()) {
       const region = ofLayer[i]!
       const collected = cellsOfView.get(view) ?? []
@@ -50,7 +50,7 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
       cellsOfView.delete(view)
     }
   }
-  await kept
+  await pending.all()
   return figures
 }
 

@@ -17,7 +17,9 @@ describe('GDAL, which takes a cell wholly or not at all', () => {
   const grid = axes(lat, lon)
   const polygons = shares.polygons as unknown as Record<string, Polygon | MultiPolygon>
 
-  it.each(Object.entries(reference.rasters))('%s: burns every cell that has a share, and more only where the outline merely touches one', (name, { touched, centreInside }) => {
+  const rasters: Record<string, { touched: number[]; centreInside: number[] }> = reference.rasters
+
+  it.each(Object.entries(rasters))('%s: burns every cell that has a share, and more only where the outline merely touches one', (name, { touched, centreInside }) => {
     const found = cellShares(polygons[name]!, grid)
     const cells = [...found.index].filter((_, i) => found.share[i]! > 1e-12)
     expect(cells.filter((cell) => !touched.includes(cell))).toEqual([])

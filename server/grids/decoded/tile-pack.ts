@@ -63,22 +63,31 @@ export function tileBox(shape: PackShape, tile: number): { row: number; column: 
  * which compressing would make a seventh smaller and four times slower to read. Float64 (unpacked integers) is deflated.
  */
 export function packTile({ values, reasons }: TileCells): PackedTile {
-  const { count, narrow } = countValues(values)
-  if (!reasons && count === 0) return { flags: present, bytes: empty }
-  const seen = narrow ? new Float32Array(count) : new Float64Array(count)
   const mask = new Uint8Array(Math.ceil(values.length / 8))
-  for (let i = 0, at = 0; i < values.length; i++) {
-    if (Number.isNaN(values[i]!)) continue
-    seen[at++] = values[i]!
-    mask[i >> 3]! |= 1 << (i & 7)
-  }
-  const numbers = narrow ? bytesOf(seen) : deflated(bytesOf(seen), 8)
-  const head = Uint32Array.of(numbers.length, count)
+  const narrow = seenValues(values, mask, new Float32Array(values.length))
+  const seen = narrow ?? seenValues(values, mask, new Float64Array(values.length))!
+  if (!reasons && seen.length === 0) return { flags: present, bytes: empty }
+  const numbers = narrow ? bytesOf(narrow) : deflated(bytesOf(seen), 8)
+  const head = Uint32Array.of(numbers.length, seen.length)
   const why = reasons ? deflated(bytesOf(reasons), 4) : empty
   return {
     flags: present | (narrow ? 0 : wide) | (reasons ? withReasons : 0),
     bytes: Buffer.concat([bytesOf(head), numbers, mask, why]),
   }
+}
+
+/** The seen values close together, and a bit in the mask for each; null where `room` cannot hold one exactly. */
+function seenValues<T extends Float32Array | Float64Array>(values: Float64Array, mask: Uint8Array, room: T): T | null {
+  let count = 0
+  for (let i = 0; i < values.length; i++) {
+    const value = values[i]!
+    if (Number.isNaN(value)) continue
+    room[count] = value
+    if (room[count] !== value) return null
+    count++
+    mask[i >> 3]! |= 1 << (i & 7)
+  }
+  return room.subarray(0, count) as T
 }
 
 /** RangeError (or zlib's own error) for bytes that are not this tile. */
@@ -105,17 +114,6 @@ function spread(seen: Float32Array | Float64Array, mask: Uint8Array, values: Flo
     if (bits === 255) for (let i = 0; i < 8; i++) values[first + i] = seen[at++]!
     else for (let i = 0; i < 8; i++) if (bits & (1 << i)) values[first + i] = seen[at++]!
   }
-}
-
-function countValues(values: Float64Array): { count: number; narrow: boolean } {
-  let [count, narrow] = [0, true]
-  for (let i = 0; i < values.length; i++) {
-    const value = values[i]!
-    if (Number.isNaN(value)) continue
-    count++
-    if (Math.fround(value) !== value) narrow = false
-  }
-  return { count, narrow }
 }
 
 function bytesOf({ buffer, byteOffset, byteLength }: Uint32Array | Float32Array | Float64Array): Uint8Array {
