@@ -29,6 +29,7 @@ interface Row {
   formula: string | null
   formulaVersion: string | null
   bands: string | null
+  replacedBy: number | null
 }
 
 export interface LayersWanted {
@@ -49,7 +50,9 @@ export async function layerRows(context: Context, wanted: LayersWanted, after: n
        l.suspect_at AS suspectAt, u.name AS suspectBy, l.suspect_note AS suspectNote,
        fe.formula, fe.formula_version AS formulaVersion,
        (SELECT json_group_array(json_object('wavelengthNm', s.wavelength_nm, 'variable', s.variable, 'fileId', s.file_id))
-         FROM (SELECT * FROM layer_sources WHERE layer_id = l.id ORDER BY slot) s) AS bands
+         FROM (SELECT * FROM layer_sources WHERE layer_id = l.id ORDER BY slot) s) AS bands,
+       coalesce(l.replaced_by, (SELECT b.replaced_by FROM layer_sources s JOIN layers b ON b.file_id = s.file_id AND b.step = s.step AND b.variable = s.variable
+         WHERE s.layer_id = l.id AND b.replaced_by IS NOT NULL LIMIT 1)) AS replacedBy
      FROM layers l JOIN files f ON f.id = l.file_id JOIN feeds fe ON fe.id = l.feed_id JOIN grids g ON g.id = l.grid_id
        LEFT JOIN users u ON u.id = l.suspect_by
      WHERE ($id IS NULL OR l.id = $id) AND ($feedId IS NULL OR l.feed_id = $feedId)

@@ -29,6 +29,8 @@ export const layer = z.object({
     .object({ formula: z.string(), formulaVersion: z.string(), bands: z.array(z.object({ wavelengthNm: z.number(), variable: z.string(), fileId: id })) })
     .nullable(),
   suspect: z.object({ at: instant, by: z.string(), note: z.string() }).nullable(),
+  /** The newer file that took its place, or that of a band it is worked out from: it takes no part in any figure. */
+  replacedBy: id.nullable().optional(),
 })
 export type Layer = z.infer<typeof layer>
 

@@ -38,7 +38,7 @@ export function PullForm({ feedId, settings, onDone }: Props) {
         hint={
           <>
             {'{yyyy} {MM} {dd} {DDD} {HH} {mm} are the date, in UTC. Everybody here can read the address.'}
-            {example && <span className="fig mt-1 block break-all text-ink2">Today: {example}</span>}
+            {example && <span className="fig mt-1 block wrap-anywhere text-ink2">Today: {example}</span>}
           </>
         }
         error={errors.address?.message ?? told['address']}

@@ -13,11 +13,11 @@ export function PullState({ pull, settings }: { pull: FeedPull; settings: NonNul
     <>
       <dl className="grid grid-cols-[auto_minmax(0,1fr)] text-small">
         <Fact name="Address">
-          <span className="fig break-all">{settings.address}</span>
+          <span className="fig wrap-anywhere">{settings.address}</span>
         </Fact>
         {pull.example && pull.example !== settings.address && (
           <Fact name="Today">
-            <span className="fig break-all">{pull.example}</span>
+            <span className="fig wrap-anywhere">{pull.example}</span>
           </Fact>
         )}
         <Fact name="Asked">{everyWords(settings)}</Fact>

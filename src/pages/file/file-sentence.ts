@@ -26,7 +26,8 @@ function readAs({ proposal, others, report, waitingFor }: OffingFile): string | 
   return `Understood as ${what}, ${countWords(variable.times.count, 'time step')}. No layer is made before a feed is confirmed.`
 }
 
-function figuresDetail({ summaries }: OffingFile): string {
+function figuresDetail({ layers, summaries }: OffingFile): string {
+  if (layers.length > 0 && layers.every((layer) => layer.replaced)) return 'It gives no figures any more.'
   const regions = new Set(summaries.map((summary) => summary.regionId)).size
   return regions === 0 ? 'It meets no region.' : `It gave figures for ${countWords(regions, 'region')}.`
 }

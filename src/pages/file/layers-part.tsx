@@ -45,6 +45,7 @@ export function LayersPart({ file }: { file: OffingFile }) {
                   <Link className="link" to={paths.feed.to({ id: layer.feedId })}>
                     {feeds?.find((feed) => feed.id === layer.feedId)?.name ?? `feed ${layer.feedId}`}
                   </Link>
+                  {layer.replaced && <span className="block text-fine text-ink2">replaced by a newer file</span>}
                 </Td>
                 <Td className="text-right">
                   {layer.id === shownId ? (

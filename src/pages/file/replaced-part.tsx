@@ -12,12 +12,14 @@ export function ReplacedPart({ file }: { file: OffingFile }) {
     <>
       {file.replacedBy?.map((newer) => (
         <Message key={newer.id} title={all ? 'This file was replaced.' : `${countWords(newer.layers, 'layer')} of this file ${newer.layers === 1 ? 'was' : 'were'} replaced.`}>
-          Replaced by <FileLink file={newer} /> on {dayWithYear(newer.at)}. {all ? 'It' : 'What was replaced'} is kept, but takes no part in any figure.
+          Replaced by <FileLink file={newer} />
+          {newer.name === file.name && ', a newer file of the same name,'} on {dayWithYear(newer.at)}. {all ? 'It' : 'What was replaced'} is kept, but takes no part in any figure.
         </Message>
       ))}
       {file.replaces && file.status === 'processed' && (
         <p className="text-small text-ink2">
-          It came under the same address as <FileLink file={file.replaces} /> and took its place.
+          It came under the same address as <FileLink file={file.replaces} />
+          {file.replaces.name === file.name && ', an older file of the same name,'} and took its place.
         </p>
       )}
     </>
@@ -26,7 +28,7 @@ export function ReplacedPart({ file }: { file: OffingFile }) {
 
 function FileLink({ file }: { file: { id: number; name: string } }) {
   return (
-    <Link className="link fig break-all" to={paths.file.to({ id: file.id })}>
+    <Link className="link fig wrap-anywhere" to={paths.file.to({ id: file.id })}>
       {file.name}
     </Link>
   )

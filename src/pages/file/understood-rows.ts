@@ -22,7 +22,7 @@ export function understoodRows(format: string, variable: ReportVariable, timeFro
     unitRow(variable),
     { item: 'Grid', understood: `${grouped(grid.columns)} × ${grouped(grid.rows)} cells`, how: 'read', note: gridNote(variable), mono: true },
     { item: 'Time', understood: timeWords(variable), how: times.first ? 'read' : 'worked out', note: timeNote(times, timeFrom) },
-    { item: 'Kept of the first step', understood: `${percent(variable.cells > 0 ? variable.valid / variable.cells : 0)} of the cells`, how: 'worked out', note: `${grouped(variable.valid)} of ${grouped(variable.cells)} cells looked at; the rest is missing`, mono: true },
+    cellsRow(variable),
   ]
   const values = valueRow(variable)
   return values ? [...rows, values] : rows
@@ -66,6 +66,13 @@ function timeWords({ times }: ReportVariable): string {
 function timeNote({ from, hasClock, first }: ReportVariable['times'], timeFrom: string | undefined): string {
   if (!first) return timeFrom === undefined ? 'the file names no time' : `the file names no time; it came from ${timeFrom}`
   return `${from}${hasClock ? '' : '; no clock time'}`
+}
+
+/** Before any flag hides a cell: what is kept then stands in a bar of its own. */
+function cellsRow({ valid, cells, flags = [] }: ReportVariable): UnderstoodRow {
+  const looked = `${valid === cells ? 'all' : `${grouped(valid)} of`} ${grouped(cells)} looked at in the first step`
+  const notes = [looked, flags.length > 0 && 'whatever flags they carry', valid < cells && 'the rest is missing'].filter(Boolean)
+  return { item: 'Cells with a value', understood: percent(cells > 0 ? valid / cells : 0), how: 'worked out', note: notes.join('; '), mono: true }
 }
 
 function valueRow({ min, median, max, unit }: ReportVariable): UnderstoodRow | undefined {

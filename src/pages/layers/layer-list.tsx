@@ -90,6 +90,14 @@ function LayerRow({ layer }: { layer: Layer }) {
             {layer.suspect.note && `: ${layer.suspect.note}`}
           </span>
         )}
+        {layer.replacedBy != null && (
+          <span className="block text-fine text-ink2">
+            replaced by a{' '}
+            <Link className="link" to={paths.file.to({ id: layer.replacedBy })}>
+              newer file
+            </Link>
+          </span>
+        )}
       </Td>
       <Td className="hidden tab:table-cell">{layer.stage}</Td>
       <Td className="fig hidden tab:table-cell">{layer.processingVersion}</Td>

@@ -14,6 +14,7 @@ import { keepPull, pullNow } from '../../../server/pull/keep-pull'
 import { networkOf, useNetwork } from '../../../server/pull/network'
 import { presentPull } from '../../../server/pull/present-pull'
 import { queueDuePulls } from '../../../server/pull/queue-pulls'
+import { layerRows } from '../../../server/queries/layer-rows'
 import { deleteFile } from '../../../server/pipeline/delete-file'
 import { changeFeed } from '../../../server/pipeline/feeds'
 import { presentFile } from '../../../server/pipeline/present-file'
@@ -118,6 +119,7 @@ describe('a feed that fetches for itself', () => {
     const shown = await presentFile(context, older!)
     expect(shown.layers).toMatchObject([{ feedId: feed.id, replaced: true }])
     expect(shown.replacedBy).toEqual([{ id: newer!.id, name: 'chl-20260610.nc', at: expect.stringMatching(/^2026-06-11T15/), layers: 1 }])
+    expect((await layerRows(context, { feedId: feed.id }, null, 10)).map((row) => [row.fileId, row.replacedBy])).toEqual([[newer!.id, null], [older!.id, newer!.id]])
     expect((await presentFile(context, newer!)).replaces).toEqual({ id: older!.id, name: 'chl-20260610.nc' })
     // Without the correction the older file is what there is.
     await deleteFile(context, person, newer!.id)
