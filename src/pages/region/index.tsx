@@ -20,6 +20,7 @@ import { RetireRegion } from './retire-region'
 import { RulePart } from './rule-part'
 import { SingleCellsPart } from './single-cells-part'
 import { useCreatedRepairs } from './use-created-repairs'
+import { ViewPart } from './view-part'
 
 const SeriesPart = lazy(() => import('./series-part'))
 
@@ -62,6 +63,7 @@ function RegionParts({ region }: { region: Region }) {
       <Suspense fallback={<Waiting lines={6} />}>
         <SeriesPart region={region} />
       </Suspense>
+      {region.standing.feedId !== null && progress === null && <ViewPart region={region} feedId={region.standing.feedId} />}
       <div className="grid grid-cols-[minmax(0,1fr)] gap-x-9 gap-y-8 desk:grid-cols-[minmax(0,1.5fr)_minmax(0,1fr)]">
         <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-8">
           <EventPart regionId={region.id} feedId={region.standing.feedId} />
