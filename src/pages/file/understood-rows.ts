@@ -71,8 +71,8 @@ function timeNote({ from, hasClock, first }: ReportVariable['times'], timeFrom: 
 /** Before any flag hides a cell: what is kept then stands in a bar of its own. */
 function cellsRow({ valid, cells, flags = [] }: ReportVariable): UnderstoodRow {
   const looked = `${valid === cells ? 'all' : `${grouped(valid)} of`} ${grouped(cells)} looked at in the first step`
-  const notes = [looked, flags.length > 0 && 'whatever flags they carry', valid < cells && 'the rest is missing'].filter(Boolean)
-  return { item: 'Cells with a value', understood: percent(cells > 0 ? valid / cells : 0), how: 'worked out', note: notes.join('; '), mono: true }
+  const note = `${looked}${flags.length > 0 ? ', whatever flags they carry' : ''}${valid < cells ? '; the rest is missing' : ''}`
+  return { item: 'Cells with a value', understood: percent(cells > 0 ? valid / cells : 0), how: 'worked out', note, mono: true }
 }
 
 function valueRow({ min, median, max, unit }: ReportVariable): UnderstoodRow | undefined {
