@@ -2,7 +2,7 @@ import { ageText } from '../../shared/figure-text'
 import { fewestWholeCells } from '../../shared/science/whole-water'
 import { dateOf } from '../../shared/science/local-day'
 import { regionStates, severities, type RegionStateName } from '../../shared/schemas/common'
-import type { RegionStanding } from '../../shared/schemas/regions'
+import type { HistoryState, RegionStanding } from '../../shared/schemas/regions'
 import type { Context } from '../context'
 import { regionFacts, seenDays, type RegionFacts, type SeenDay } from '../queries/region-facts'
 
@@ -54,13 +54,21 @@ export function standingOf(facts: RegionFacts, seen: readonly SeenDay[], now: nu
       return { day: dateOf(day), coverage: coverageOf.get(day) ?? null }
     }),
     coverageFloor: facts.definition?.coverageFloor ?? 0.25,
-    progress: facts.jobDone === null ? null : { done: facts.jobDone, total: facts.jobTotal ?? 0 },
+    progress: facts.jobState === null ? null : { state: facts.jobState, done: facts.jobDone ?? 0, total: facts.jobTotal ?? 0 },
   }
+}
+
+const historyText: Record<HistoryState, string> = {
+  waiting: 'Its history is being read.',
+  running: 'Its history is being read.',
+  paused: 'The reading of its history is paused.',
+  cancelled: 'The reading of its history was stopped before its end.',
+  failed: 'The reading of its history failed. What was read is kept.',
 }
 
 function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; because: string } {
   const { judged } = facts
-  if (facts.jobDone !== null) return { state: 'not ready', because: 'Its history is being read.' }
+  if (facts.jobState !== null) return { state: 'not ready', because: historyText[facts.jobState] }
   if (facts.feedId === null) return { state: 'not ready', because: 'No feed has seen this water yet.' }
   if (facts.ruleId === null || judged === null) return { state: 'not ready', because: 'It has not been judged yet.' }
   if (judged.inEvent) return { state: 'unusual', because: 'Its newest usable views meet the rule.' }

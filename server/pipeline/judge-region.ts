@@ -42,7 +42,8 @@ export async function judgeRegion(context: Context, ruleId: number): Promise<voi
 /** Half a history is no history: an outline is judged when the last of it has been read, which queues judging itself. */
 async function isBeingRead(context: Context, geometryId: number): Promise<boolean> {
   const reading = await context.db.first(
-    `SELECT 1 AS one FROM jobs WHERE kind = 'backfill-region' AND job_key = $key AND state IN ('waiting', 'running', 'paused') AND (total = 0 OR done < total)`,
+    `SELECT 1 AS one FROM jobs WHERE state <> 'done' AND (total = 0 OR done < total)
+       AND id = (SELECT max(id) FROM jobs WHERE kind = 'backfill-region' AND job_key = $key)`,
     { key: String(geometryId) },
   )
   return reading !== undefined

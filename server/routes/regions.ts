@@ -12,6 +12,7 @@ import { regionBaseline } from '../desk/region-baseline'
 import { regionPatches } from '../desk/region-patches'
 import { regionSeries } from '../desk/region-series'
 import { regionView } from '../desk/region-view'
+import { steerHistory } from '../desk/steer-history'
 import { singleCells } from '../desk/single-cells'
 import { cutAt180 } from '../exports/cut-at-180'
 import { smallFile, smallUpload } from '../middleware/small-upload'
@@ -51,6 +52,10 @@ export function regionRoutes(router: Router, context: Context): void {
   serve(router, context, endpoints.measureOutline, ({ body }) => measureOutline(context, body))
   serve(router, context, endpoints.importRegions, ({ person, query, req }) => importRegions(context, person, smallFile(req), { save: query.save === 'true', inland: query.inland === 'true' }), {
     before: [smallUpload(mostImportMegabytes)],
+  })
+  serve(router, context, endpoints.steerHistory, async ({ person, params, body }) => {
+    await steerHistory(context, person, params.id, body.act)
+    return one(await known(params.id))
   })
   serve(router, context, endpoints.regionVersions, async ({ params }) => ({ items: await outlineVersions(context, params.id), nextCursor: null }))
   serve(router, context, endpoints.region, async ({ params }) => one(await known(params.id)))

@@ -82,6 +82,7 @@ export const endpoints = {
   region: endpoint({ method: 'GET', path: '/regions/:id', may: 'read', summary: 'One region', params: idParam, reply: regions.region }),
   changeRegion: endpoint({ method: 'PATCH', path: '/regions/:id', may: 'region:edit', summary: 'Change a region', params: idParam, body: regions.regionChange, reply: regions.region }),
   retireRegion: endpoint({ method: 'DELETE', path: '/regions/:id', may: 'region:edit', summary: 'Retire a region; its history stays', params: idParam, status: 204 }),
+  steerHistory: endpoint({ method: 'POST', path: '/regions/:id/history', may: 'region:edit', summary: 'Pause or stop the reading of its history, or go on with it', params: idParam, body: regions.historySteering, reply: regions.region }),
   regionVersions: endpoint({ method: 'GET', path: '/regions/:id/versions', may: 'read', summary: 'Every version of its outline, newest first', params: idParam, reply: z.object({ items: z.array(outlines.regionVersion), nextCursor: z.null() }) }),
   regionCells: endpoint({ method: 'GET', path: '/regions/:id/cells', may: 'read', summary: 'The single cells of its newest view, where it holds too few whole water cells for percentiles', params: idParam, query: outlines.cellsQuery, reply: outlines.singleCells }),
   regionView: endpoint({ method: 'GET', path: '/regions/:id/view', may: 'read', summary: 'One view: its figures, where the greatest value is, area by value, water masked by reason', params: idParam, query: patches.viewQuery, reply: patches.regionView }),

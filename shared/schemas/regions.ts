@@ -74,6 +74,14 @@ export const shownView = z.object({
 })
 export type ShownView = z.infer<typeof shownView>
 
+/** A reading that is neither under way nor done says so until somebody goes on with it. */
+export const historyStates = ['waiting', 'running', 'paused', 'cancelled', 'failed'] as const
+export type HistoryState = (typeof historyStates)[number]
+
+export const historyActs = ['pause', 'go-on', 'stop'] as const
+export type HistoryAct = (typeof historyActs)[number]
+export const historySteering = z.object({ act: z.enum(historyActs) })
+
 export const regionStanding = z.object({
   state: regionState,
   /** Why it is in that state, in one sentence. */
@@ -88,8 +96,8 @@ export const regionStanding = z.object({
   /** The last 14 days, oldest first: share of the water seen, null where no layer came. */
   seen: z.array(z.object({ day, coverage: z.number().nullable() })),
   coverageFloor: z.number(),
-  /** How much of the region's history has been read, while it is being read. */
-  progress: z.object({ done: z.number().int(), total: z.number().int() }).nullable(),
+  /** How much of the region's history has been read, until all of it is. */
+  progress: z.object({ state: z.enum(historyStates), done: z.number().int(), total: z.number().int() }).nullable(),
 })
 export type RegionStanding = z.infer<typeof regionStanding>
 

@@ -1,6 +1,7 @@
 import { keepPreviousData, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query'
 import { endpoints } from '../../shared/schemas/endpoints'
 import type { BodyInputOf } from '../../shared/schemas/endpoint'
+import type { HistoryAct } from '../../shared/schemas/regions'
 import { addressOf, call } from './call'
 
 export const regionsQuery = () =>
@@ -79,5 +80,14 @@ export function useRetireRegion(id: number) {
       client.removeQueries({ queryKey: ['regions', id] })
       await client.invalidateQueries({ queryKey: ['regions'], exact: true })
     },
+  })
+}
+
+/** Pauses or stops the reading of a region's history, or goes on with it. */
+export function useSteerHistory(id: number) {
+  const client = useQueryClient()
+  return useMutation({
+    mutationFn: (act: HistoryAct) => call(endpoints.steerHistory, { params: { id }, body: { act } }),
+    onSettled: () => client.invalidateQueries({ queryKey: ['regions'] }),
   })
 }

@@ -140,7 +140,7 @@ describe('a region and its files', () => {
     )
     expect(region.geometry).toMatchObject({ type: 'Polygon', coordinates: [{ length: 5 }] })
     expect(region.areaKm2).toBeGreaterThan(50)
-    await page.getByText('Reading history').waitFor({ state: 'hidden' })
+    await page.getByText(/Reading history|History waits/).waitFor({ state: 'hidden' })
     await page.getByText(/10 years|ten years|3[, ]?6\d\d views/i).first().waitFor(fewSeconds)
     expect(await isSamePage(page)).toBe(true)
   })

@@ -9,10 +9,10 @@ import { ButtonLink } from '../../components/ui/button'
 import { Failure } from '../../components/ui/failure'
 import { Message } from '../../components/ui/message'
 import { Page } from '../../components/ui/page'
-import { Progress } from '../../components/ui/progress'
 import { Waiting } from '../../components/ui/waiting'
 import { ContactsPart } from './contacts-part'
 import { EventPart } from './event-part'
+import { HistoryPart } from './history-part'
 import { OutlinePart } from './outline-part'
 import { RegionFigures } from './region-figures'
 import { RegionStatement } from './region-statement'
@@ -57,7 +57,7 @@ function RegionParts({ region }: { region: Region }) {
       />
       {region.retired && <Message title="This region is retired.">Its history stays; nothing new is judged or told.</Message>}
       {repairs.length > 0 && <Message title="The outline was put right as it was saved:">{repairs.join(' ')}</Message>}
-      {progress && <Progress done={progress.done} total={progress.total} label="Reading history" unit="layers" />}
+      <HistoryPart region={region} />
       <RegionFigures standing={region.standing} />
       {region.standing.feedId !== null && progress === null && <SingleCellsPart regionId={region.id} feedId={region.standing.feedId} />}
       <Suspense fallback={<Waiting lines={6} />}>

@@ -222,7 +222,7 @@ describe('redrawing while an event is running', () => {
     await send(context, await seaFile(days(['2026-06-12', 1])))
     await runJobs(context)
     expect((await alert()).version).toBe(before)
-    expect((await standings(context, regionId)).get(regionId)!.because).toBe('Its history is being read.')
+    expect((await standings(context, regionId)).get(regionId)!.because).toBe('The reading of its history is paused.')
   })
 })
 

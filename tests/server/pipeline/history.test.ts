@@ -2,6 +2,8 @@ import { readdir, rm, utimes, writeFile } from 'node:fs/promises'
 import { join } from 'node:path'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import type { Person } from '../../../server/accounts/person'
+import { steerHistory } from '../../../server/desk/steer-history'
+import { standings } from '../../../server/desk/standing'
 import { steerJob } from '../../../server/jobs/steer-job'
 import { runNextJob } from '../../../server/jobs/run-job'
 import { voidLeases } from '../../../server/jobs/queue'
@@ -103,6 +105,28 @@ describe('history', () => {
     await steerJob(context, person, job.id, 'retry')
     await runJobs(context)
     expect(await allSummaries()).toHaveLength(12)
+  })
+
+  it('is steered from its region: paused, gone on with, stopped, and the region says so', async () => {
+    await aFeed(context, person)
+    await send(context, await seaFile(steps('05', 6)))
+    await runJobs(context)
+    const { id } = await draw('Here', 0)
+    const said = async () => {
+      const { state, because, progress } = (await standings(context, id)).get(id)!
+      return { state, because, progress: progress?.state ?? null }
+    }
+    await steerHistory(context, person, id, 'pause')
+    await runJobs(context)
+    expect(await said()).toEqual({ state: 'not ready', because: 'The reading of its history is paused.', progress: 'paused' })
+    await steerHistory(context, person, id, 'stop')
+    expect(await said()).toMatchObject({ because: 'The reading of its history was stopped before its end.', progress: 'cancelled' })
+    await expect(steerHistory(context, person, id, 'pause')).rejects.toMatchObject({ code: 'conflict' })
+    await steerHistory(context, person, id, 'go-on')
+    await runJobs(context)
+    expect(await said()).toMatchObject({ progress: null })
+    expect(await allSummaries()).toHaveLength(6)
+    await expect(steerHistory(context, person, id, 'pause')).rejects.toMatchObject({ code: 'conflict', message: 'All of its history has been read.' })
   })
 
   it('goes on from its last mark after the process was killed in the middle', async () => {
