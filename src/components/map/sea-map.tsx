@@ -18,6 +18,8 @@ interface Props {
   bounds: MapBounds
   /** Hatch the ground: set where a layer is drawn, so that what it misses shows as missing. */
   hatched?: boolean
+  /** Only the coastline, not the land: set where the cells themselves say what is land. */
+  bareLand?: boolean
   /** Width over height of the map itself. */
   aspect?: number
   /** One finger or the mouse moves the map. On a phone two fingers do, so that the page can be scrolled past it. */
@@ -28,7 +30,7 @@ interface Props {
 }
 
 /** A piece of sea in its graduated frame: coast, graticule, scale bar, and whatever is laid on it as children. */
-export function SeaMap({ label, bounds, hatched = false, aspect = 1.15, draggable, scaleBar = true, onReady, children }: Props) {
+export function SeaMap({ label, bounds, hatched = false, bareLand = false, aspect = 1.15, draggable, scaleBar = true, onReady, children }: Props) {
   const wide = useWide()
   const [frame, setFrame] = useState<HTMLElement | null>(null)
   return (
@@ -38,7 +40,7 @@ export function SeaMap({ label, bounds, hatched = false, aspect = 1.15, draggabl
           <MapContainer
             bounds={bounds}
             boundsOptions={{ padding: [0, 0] }}
-            className={`sea-map size-full ${hatched ? 'sea-map-hatched' : ''}`}
+            className={`sea-map size-full ${hatched ? 'sea-map-hatched' : ''} ${bareLand ? 'sea-map-bare-land' : ''}`}
             zoomSnap={0}
             zoomDelta={0.5}
             minZoom={1}

@@ -14,6 +14,7 @@ import { LayerList } from '../layers/layer-list'
 import { DeriveFeed } from './derive-feed'
 import { FeedFacts } from './feed-facts'
 import { FeedForm } from './feed-form'
+import { MaskPart } from './mask-part'
 import { PullPart } from './pull-part'
 import { QualityForm } from './quality-form'
 import { RetireFeed } from './retire-feed'
@@ -67,6 +68,7 @@ function FeedParts({ feed }: { feed: Feed }) {
         <div className="order-first grid grid-cols-[minmax(0,1fr)] content-start gap-8 desk:order-none">
           <FeedFacts feed={feed} />
           {feed.derivedFrom === null && <PullPart feed={feed} />}
+          <MaskPart feed={feed} />
           {mayDerive && <DeriveFeed feed={feed} />}
           {mayEdit && <FeedForm key={feed.version} feed={feed} />}
           {mayEdit && <QualityForm key={`quality ${feed.version}`} feed={feed} />}
