@@ -24,12 +24,14 @@ export async function definitionInForce(context: Context, regionId: number, feed
 
 /** The level a region is looked at with: the one asked for, else the floor its rule in force names, else 1 in the feed's unit. */
 export function regionLevel(unit: string | null, rule: RuleInForce | null, asked?: number): ShownLevel {
-  const text = (level: number) => `${figureText(level)}${unit && unit !== '1' ? ` ${unitWords(unit)}` : ''}`
+  const text = (level: number) => levelText(level, unit)
   if (asked !== undefined) return { level: asked, from: 'asked', why: `${text(asked)}, the level asked for.` }
   const level = rule && levelOf(rule.definition.test)
   if (rule && level !== null) return { level, from: 'rule', why: `${text(level)}, the floor of the rule in force here (${rule.name}, version ${rule.version}).` }
   return { level: plainLevel, from: 'no rule', why: `${text(plainLevel)}, as no rule in force here names a level of this feed.` }
 }
+
+export const levelText = (level: number, unit: string | null): string => `${figureText(level)}${unit && unit !== '1' ? ` ${unitWords(unit)}` : ''}`
 
 /** The level a test names; the first where it names several. */
 export function levelOf(test: RuleTest): number | null {

@@ -1,12 +1,13 @@
 import type { z } from 'zod'
 import { figureText, percentText } from '../../shared/figure-text'
-import type { RegionPatches, patchesQuery, ShownLevel } from '../../shared/schemas/patches'
+import type { RegionPatches, patchesQuery } from '../../shared/schemas/patches'
 import { dateOf, epochDayOf } from '../../shared/science/local-day'
 import { defaultRule } from '../../shared/science/rule'
 import type { Context } from '../context'
 import { readable } from '../pipeline/layer-pictures'
 import { storedView, usableDayBefore, type StoredFigures } from '../queries/stored-views'
 import type { FoundPatches, PlacedPatch } from '../workers/patch-tasks'
+import { levelText } from './region-level'
 import { placeWords, viewSubject, type ViewSubject } from './view-subject'
 import { patchesOfView } from './view-patches'
 
@@ -31,7 +32,7 @@ export async function regionPatches(context: Context, regionId: number, query: z
   if (!found) return { ...noView, sentence: 'The layers of this view have been deleted.' }
   return {
     ...head,
-    ...answerOf(found, level, view),
+    ...answerOf(found, levelText(level.level, feed.unit), view),
     view: { day: dateOf(view.day), observedAt: new Date(view.observedAt).toISOString(), layerIds: view.layerIds, coverage: view.coverage },
     before: before && found.areaAboveBeforeKm2 !== null ? { day: dateOf(before.day), coverage: before.coverage, areaAboveKm2: found.areaAboveBeforeKm2 } : null,
     areaAboveKm2: found.areaAboveKm2,
@@ -48,12 +49,12 @@ async function viewBefore(context: Context, { geometry, feed, definition }: View
   return before === null ? null : ((await storedView(context, of, before)) ?? null)
 }
 
-function answerOf({ seenCells, patches, others, areaAboveKm2 }: FoundPatches, { level }: ShownLevel, { coverage }: StoredFigures): Pick<RegionPatches, 'answer' | 'sentence'> {
+function answerOf({ seenCells, patches, others, areaAboveKm2 }: FoundPatches, level: string, { coverage }: StoredFigures): Pick<RegionPatches, 'answer' | 'sentence'> {
   if (seenCells === 0) return { answer: 'nothing seen', sentence: 'No water of this region was seen in this view.' }
   const seen = coverage === null ? 'what was seen' : `the ${percentText(coverage)} of the water that was seen`
-  if (areaAboveKm2 === 0) return { answer: 'none above', sentence: `Nothing in ${seen} reaches ${figureText(level)}.` }
+  if (areaAboveKm2 === 0) return { answer: 'none above', sentence: `Nothing in ${seen} reaches ${level}.` }
   const count = patches.length + others.patches
-  return { answer: 'patches', sentence: `${count === 1 ? 'One patch' : `${count} patches`} at or above ${figureText(level)} in ${seen}, ${figureText(areaAboveKm2)} km² together.` }
+  return { answer: 'patches', sentence: `${count === 1 ? 'One patch' : `${count} patches`} at or above ${level} in ${seen}, ${figureText(areaAboveKm2)} km² together.` }
 }
 
 function presentPatch({ peak, centre, outline, ...patch }: PlacedPatch, i: number): RegionPatches['patches'][number] {

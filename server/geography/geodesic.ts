@@ -21,18 +21,20 @@ export function awayFrom(from: Place, to: Place): Away {
 /** Chords order places as geodesics do but for the flattening, which moves none by this share of its distance. */
 const chordSlack = 4e-3
 
-/** The nearest of some places, by its position in the list; null for an empty list. Of equals the first. */
-export function nearestOf(from: Place, places: readonly Place[]): { at: number; away: Away } | null {
+/** The nearest of some places, by its position in the two lists; null for empty ones. Of equals the first. */
+export function nearestOf(from: Place, longitudes: Float64Array, latitudes: Float64Array): { at: number; away: Away } | null {
   const [x, y, z] = inSpace(from)
-  const chords = Float64Array.from(places, (place) => {
-    const [u, v, w] = inSpace(place)
-    return Math.hypot(u - x, v - y, w - z)
-  })
-  const least = chords.reduce((a, b) => Math.min(a, b), Infinity)
+  const chords = new Float64Array(longitudes.length)
+  let least = Infinity
+  for (let at = 0; at < chords.length; at++) {
+    const [u, v, w] = inSpace([longitudes[at]!, latitudes[at]!])
+    chords[at] = Math.sqrt((u - x) ** 2 + (v - y) ** 2 + (w - z) ** 2)
+    if (chords[at]! < least) least = chords[at]!
+  }
   let best: { at: number; away: Away } | null = null
-  for (const [at, chord] of chords.entries()) {
-    if (chord > least * (1 + chordSlack)) continue
-    const away = awayFrom(from, places[at]!)
+  for (let at = 0; at < chords.length; at++) {
+    if (!(chords[at]! <= least * (1 + chordSlack))) continue
+    const away = awayFrom(from, [longitudes[at]!, latitudes[at]!])
     if (!best || away.km < best.away.km) best = { at, away }
   }
   return best

@@ -1,5 +1,5 @@
 import { cellBox, columnsRound } from '../../shared/science/cell-box'
-import { awayFrom, MiddleOf, nearestOf, type Place } from '../geography/geodesic'
+import { awayFrom, MiddleOf, nearestOf, type Away, type Place } from '../geography/geodesic'
 import type { Grid } from '../../shared/science/grid'
 import { patchChanges, type PatchFamily, type SeenPatches } from '../../shared/science/patch-changes'
 import { patchOutlines } from '../../shared/science/patch-outlines'
@@ -21,8 +21,11 @@ interface SeenView extends SeenPatches {
   round: number | null
   outline: RegionOutline
   box: ReturnType<typeof cellBox>
-  /** Middles of the cells of each patch, and which cells they are. */
-  cells: { at: number[]; places: Place[]; middle: MiddleOf }[]
+  /** Middles of the cells that are in a patch, by position. */
+  longitudes: Float64Array
+  latitudes: Float64Array
+  /** Middle of each patch. */
+  middles: MiddleOf[]
 }
 
 /** The patches of one view above a level, where they lie, and what became of those of the view before. */
@@ -32,22 +35,20 @@ export async function findPatches(input: Input): Promise<FoundPatches> {
   const families = before && patchChanges(before, now, cellsBefore(before, now), now.outline.weightKm2)
   const shown = now.patches.slice(0, input.most)
   const rings = patchOutlines(now.labels, shown.length, now.box, now.grid.kind !== 'axes')
-  const siteCell = input.site && cellHolding(now.grid, input.site)
+  const siteLabel = input.site && labelAt(now, input.site)
   const changes = changesOf(families ?? [], before, now)
   const others = now.patches.slice(input.most)
   return {
-    seenCells: now.values.reduce((count, value, i) => count + Number(Number.isFinite(value) && now.outline.kind[i] !== 0), 0),
+    seenCells: seenCells(now),
     areaAboveKm2: areaOf(now),
     areaAboveBeforeKm2: before && areaOf(before),
     patches: shown.map(({ greatestAt, ...patch }, i): PlacedPatch => {
-      const { at, places, middle } = now.cells[i]!
       const peak = cellCentre(now.grid, now.index[greatestAt]!)
-      const inPatch = siteCell !== null && at.some((cell) => now.index[cell] === siteCell)
       return {
         ...patch,
         peak,
-        centre: middle.place() ?? peak,
-        nearest: input.site && (inPatch ? { km: 0, bearing: null } : (nearestOf(input.site, places)?.away ?? null)),
+        centre: now.middles[i]!.place() ?? peak,
+        nearest: input.site && (siteLabel === i ? { km: 0, bearing: null } : nearestCell(now, i, patch.cells, input.site)),
         peakAway: input.site && awayFrom(input.site, peak),
         change: changes[i] ?? null,
         outline: outlineLines(now.grid, rings[i]!, now.round, input.nearLongitude),
@@ -69,16 +70,40 @@ async function seenView({ layers, weights, grid: text }: ViewAsked, { reading, l
   const outline = outlineOf(weights)
   const box = cellBox(weights.index, grid.columns, round)
   const found = patchesAbove(values, outline, box, level, minimumCells)
-  const cells: SeenView['cells'] = found.patches.map(() => ({ at: [], places: [], middle: new MiddleOf() }))
-  for (const [at, label] of found.labels.entries()) {
+  const [longitudes, latitudes] = [new Float64Array(values.length), new Float64Array(values.length)]
+  const middles = found.patches.map(() => new MiddleOf())
+  for (let at = 0; at < values.length; at++) {
+    const label = found.labels[at]!
     if (label < 0) continue
     const place = cellCentre(grid, weights.index[at]!)
-    const patch = cells[label]!
-    patch.at.push(at)
-    patch.places.push(place)
-    patch.middle.add(place, outline.weightKm2[at]!)
+    longitudes[at] = place[0]
+    latitudes[at] = place[1]
+    middles[label]!.add(place, outline.weightKm2[at]!)
   }
-  return { ...found, values, index: weights.index, grid, round, outline, box, cells }
+  return { ...found, values, index: weights.index, grid, round, outline, box, longitudes, latitudes, middles }
+}
+
+/** The patch that holds a place; null for none. */
+function labelAt({ grid, index, labels }: SeenView, place: Place): number | null {
+  const cell = cellHolding(grid, place)
+  const at = cell === null ? -1 : index.indexOf(cell)
+  return at < 0 || labels[at]! < 0 ? null : labels[at]!
+}
+
+function nearestCell({ labels, longitudes, latitudes }: SeenView, label: number, cells: number, site: Place): Away | null {
+  const [lons, lats] = [new Float64Array(cells), new Float64Array(cells)]
+  for (let at = 0, to = 0; at < labels.length; at++) {
+    if (labels[at] !== label) continue
+    lons[to] = longitudes[at]!
+    lats[to++] = latitudes[at]!
+  }
+  return nearestOf(site, lons, lats)?.away ?? null
+}
+
+function seenCells({ values, outline }: SeenView): number {
+  let count = 0
+  for (let at = 0; at < values.length; at++) if (Number.isFinite(values[at]) && outline.kind[at] !== 0) count++
+  return count
 }
 
 const areaOf = ({ patches, dropped }: SeenView) => patches.reduce((sum, patch) => sum + patch.areaKm2, dropped.areaKm2)
@@ -90,14 +115,21 @@ function cellHolding(grid: Grid, [longitude, latitude]: Place): number | null {
 
 /** For each cell now its position in the view before: on another grid the cell that holds its middle. */
 function cellsBefore(before: SeenView, now: SeenView): Int32Array {
-  if (before.index.length === now.index.length && before.index.every((cell, i) => cell === now.index[i]) && sameGrid(before.grid, now.grid)) {
-    return Int32Array.from(now.index.keys())
+  if (sameCells(before.index, now.index) && sameGrid(before.grid, now.grid)) {
+    const same = new Int32Array(now.index.length)
+    for (let at = 0; at < same.length; at++) same[at] = at
+    return same
   }
   const positions = new Map(Array.from(before.index, (cell, at) => [cell, at]))
   return Int32Array.from(now.index, (cell) => {
     const then = cellHolding(before.grid, cellCentre(now.grid, cell))
     return then === null ? -1 : (positions.get(then) ?? -1)
   })
+}
+
+function sameCells(a: Uint32Array, b: Uint32Array): boolean {
+  for (let at = 0; at < a.length; at++) if (a[at] !== b[at]) return false
+  return a.length === b.length
 }
 
 function sameGrid(a: Grid, b: Grid): boolean {
@@ -108,7 +140,7 @@ function sameGrid(a: Grid, b: Grid): boolean {
 function changesOf(families: readonly PatchFamily[], before: SeenView | null, now: SeenView): PatchChange[] {
   const changes: PatchChange[] = []
   for (const family of families) {
-    const middle = (view: SeenView, patches: readonly number[]) => patches.reduce((sum, at) => sum.join(view.cells[at]!.middle), new MiddleOf()).place()
+    const middle = (view: SeenView, patches: readonly number[]) => patches.reduce((sum, at) => sum.join(view.middles[at]!), new MiddleOf()).place()
     const [from, to] = [before && middle(before, family.before), middle(now, family.now)]
     const { kind, beforeKm2, nowKm2 } = family
     const change = { kind, together: family.now.map((at) => at + 1), beforeKm2, changeKm2: nowKm2 - beforeKm2, moved: from && to && awayFrom(from, to) }

@@ -3,7 +3,6 @@ import { unitWords } from '../../../shared/figure-text'
 import type { RegionView } from '../../../shared/schemas/patches'
 import { threeDigits } from '../../lib/format'
 import { Button } from '../ui/button'
-import { SectionHead } from '../ui/page'
 import { Table, Td, Th, Tr } from '../ui/table'
 import { inUnit, squareKm } from './patch-words'
 import { valueAxis, type ValueAxis } from './value-axis'
@@ -23,19 +22,15 @@ export function AreaByValue({ shown }: { shown: RegionView }) {
   const aboveWords = above === null ? 'The level lies beyond what is counted by value.' : `${squareKm(above)}${share} at or above ${inUnit(level, unit)}.`
   return (
     <section className="grid grid-cols-[minmax(0,1fr)] content-start gap-2">
-      <SectionHead
-        ruled={false}
-        aside={
-          <Button kind="text" size="small" aria-expanded={asTable} onClick={() => setAsTable(!asTable)}>
-            {asTable ? 'Hide table' : 'Table'}
-          </Button>
-        }
-      >
-        Area by value
-      </SectionHead>
+      <div className="flex flex-wrap items-baseline justify-between gap-x-4">
+        <h3 className="text-body font-heading">Area by value</h3>
+        <Button kind="text" size="small" aria-expanded={asTable} onClick={() => setAsTable(!asTable)}>
+          {asTable ? 'Hide table' : 'Table'}
+        </Button>
+      </div>
       {axis && <Instrument axis={axis} level={level} label={`Area by value. ${aboveWords}`} />}
       <p className="text-small text-ink2">
-        {aboveWords} {unit && unit !== '1' && `${unitWords(unit)}, `}logarithmic, 20 bins a decade; bars in ink are at or above the level.
+        {aboveWords} Values{unit && unit !== '1' && ` in ${unitWords(unit)}`}, logarithmic, 20 bins a decade; the strong bars are at or above the level.
         {axis && axis.belowKm2 > 0 && ` Not drawn: ${squareKm(axis.belowKm2)} below 0.001, zero or negative.`}
         {axis && axis.aboveKm2 > 0 && ` Not drawn: ${squareKm(axis.aboveKm2)} from 1000 on.`}
       </p>

@@ -85,7 +85,7 @@ describe('the patches of a view', () => {
     expect(back).toMatchObject({ view: { day: '2026-06-08' }, before: null })
     await arrive([{ at: '2026-06-11T12:00:00Z', value: drawn(calm) }])
     const after = await patches()
-    expect(after).toMatchObject({ answer: 'none above', patches: [], areaAboveKm2: 0, sentence: 'Nothing in the 100 % of the water that was seen reaches 1.' })
+    expect(after).toMatchObject({ answer: 'none above', patches: [], areaAboveKm2: 0, sentence: 'Nothing in the 100 % of the water that was seen reaches 1 mg m⁻³.' })
     expect(after.gone.map(({ kind, greatest }) => [kind, greatest])).toEqual([['gone', 6], ['gone', 3]])
   })
 
@@ -98,7 +98,7 @@ describe('the patches of a view', () => {
   it('another level and a least number of cells can be asked for, and are named', async () => {
     await arrive([{ at: '2026-06-10T12:00:00Z', value: drawn(grown) }])
     expect(await patches('&level=5')).toMatchObject({ level: { level: 5, from: 'asked', why: '5 mg m⁻³, the level asked for.' }, patches: [{ cells: 2 }] })
-    expect(await patches('&minimumCells=2')).toMatchObject({ patches: [{ cells: 6 }], others: { patches: 1, cells: 1 }, sentence: expect.stringMatching(/^2 patches at or above 1/) })
+    expect(await patches('&minimumCells=2')).toMatchObject({ patches: [{ cells: 6 }], others: { patches: 1, cells: 1 }, sentence: expect.stringMatching(/^2 patches at or above 1 mg m⁻³ in/) })
     await get(`patches?feedId=${feed.id}&level=much`).expect(422)
     await get(`patches?feedId=${feed.id}&day=11 June`).expect(422)
   })
