@@ -153,6 +153,20 @@ describe('a derived feed', () => {
     expect((await medians(region.id, feed.id)).day).toEqual(['2026-06-09', '2026-06-10'])
   })
 
+  it('is replaced with the bands it is worked out from, and the lists of layers and the page of the file say so', async () => {
+    const source = await aBandFeed(context, person, 443)
+    const region = await aRegion(context, person)
+    const older = await send(context, await reflectanceFile([step('2026-06-10', blueWater)]))
+    await runJobs(context)
+    const feed = await aDerivedFeed(context, person, source.id)
+    await runJobs(context)
+    const newer = await send(context, await reflectanceFile([step('2026-06-10', greenWater)]), { replaces: { fileId: older.id, wholly: true } })
+    await runJobs(context)
+    expect((await medians(region.id, feed.id)).median![0]).toBeCloseTo(chlorophyllOfRatio(1, oc4), 6)
+    for (const { id } of [source, feed]) expect((await layerRows(context, { feedId: id }, null, 9)).map((row) => [row.fileId, row.replacedBy])).toEqual([[newer.id, null], [older.id, newer.id]])
+    expect((await presentFile(context, older)).layers.map(({ replaced }) => replaced)).toEqual([true, true])
+  })
+
   it('goes with the deleted file that held its bands', async () => {
     const source = await aBandFeed(context, person, 443)
     const region = await aRegion(context, person)
