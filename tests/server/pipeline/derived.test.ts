@@ -167,6 +167,28 @@ describe('a derived feed', () => {
     expect((await presentFile(context, older)).layers.map(({ replaced }) => replaced)).toEqual([true, true])
   })
 
+  it('is worked out anew from a band that comes in a newer file of its own', async () => {
+    for (const nm of [490, 510, 555]) await aBandFeed(context, person, nm)
+    const source = await aBandFeed(context, person, 443)
+    const region = await aRegion(context, person)
+    const feed = await aDerivedFeed(context, person, source.id)
+    const one = (nm: number, date: string, rrs: Spectrum, older?: { id: number }) =>
+      reflectanceFile([step(date, rrs)], { bands: [nm], name: `rrs${nm}.nc` }).then((path) => send(context, path, { replaces: older ? { fileId: older.id, wholly: true } : null }))
+    const replacers = async () => (await layerRows(context, { feedId: feed.id }, null, 9)).map((row) => row.replacedBy)
+    for (const nm of [443, 490, 555]) await one(nm, '2026-06-10', greenWater)
+    const first = await one(510, '2026-06-10', greenWater)
+    await runJobs(context)
+    const second = await one(510, '2026-06-10', { 510: 0.004 }, first)
+    await runJobs(context)
+    expect((await medians(region.id, feed.id)).median![0]).toBeCloseTo(chlorophyllOfRatio(2, oc4), 6)
+    expect(await replacers()).toEqual([null])
+    // A correction that is of another day leaves the layer without a band that counts, and it says by which file.
+    const third = await one(510, '2026-06-09', greenWater, second)
+    await runJobs(context)
+    expect((await medians(region.id, feed.id)).day).toEqual([])
+    expect(await replacers()).toEqual([third.id])
+  })
+
   it('goes with the deleted file that held its bands', async () => {
     const source = await aBandFeed(context, person, 443)
     const region = await aRegion(context, person)
