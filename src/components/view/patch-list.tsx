@@ -29,7 +29,7 @@ export function PatchList({ found, marked, onMark }: Props) {
                 <Th figures>Area, km²</Th>
                 <Th figures>Greatest{unit && unit !== '1' && `, ${unitWords(unit)}`}</Th>
                 <Th>{hasSite ? 'From the site' : 'Where'}</Th>
-                {found.before && <Th>{sinceWord(found)}</Th>}
+                {found.before && <Th className="hidden tab:table-cell">{sinceWord(found)}</Th>}
               </tr>
             </thead>
             <tbody>
@@ -54,8 +54,9 @@ export function PatchList({ found, marked, onMark }: Props) {
                   <Td className="min-w-32">
                     <span className="fig">{whereWords(patch)}</span>
                     {peakWords(patch) && <span className="block text-fine text-ink2">{peakWords(patch)}</span>}
+                    {patch.change && <span className="block text-fine tab:hidden">{changeWords(patch.change)}</span>}
                   </Td>
-                  {found.before && <Td className="min-w-36">{changeWords(patch.change)}</Td>}
+                  {found.before && <Td className="hidden min-w-36 tab:table-cell">{changeWords(patch.change)}</Td>}
                 </Tr>
               ))}
             </tbody>

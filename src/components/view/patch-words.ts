@@ -48,15 +48,20 @@ export function changeWords(change: PatchChange | null): string {
 }
 
 /** What the view before had that is not here now, and how well it saw. */
-export function beforeWords({ before, gone, areaAboveKm2 }: RegionPatches): string | undefined {
+export function beforeWords({ before, gone, areaAboveKm2, answer }: RegionPatches): string | undefined {
   if (!before) return undefined
   const seen = before.coverage === null ? '' : `, which saw ${percent(before.coverage)} of the water`
-  const whole = areaAboveKm2 === null ? '' : ` Together ${squareKm(before.areaAboveKm2)} then, ${squareKm(areaAboveKm2)} now.`
-  const lost = (kind: 'gone' | 'not seen now') => {
-    const them = gone.filter((one) => one.kind === kind)
-    return them.length === 0 ? '' : ` ${countWords(them.length, 'patch', 'patches')} of then ${them.length === 1 ? 'is' : 'are'} ${kind === 'gone' ? 'gone' : 'not seen now'} (${them.slice(0, 3).map((one) => squareKm(one.areaKm2)).join(', ')}${them.length > 3 ? ' and smaller' : ''}).`
-  }
-  return `Changes are since the view of ${dayWithYear(before.day)}${seen}.${whole}${lost('gone')}${lost('not seen now')}`
+  const head = answer === 'patches' ? `Changes are since the view of ${dayWithYear(before.day)}${seen}.` : `The usable view before is of ${dayWithYear(before.day)}${seen}.`
+  // A view that saw nothing has no area to compare.
+  const then = answer === 'nothing seen' || areaAboveKm2 === null ? ` ${squareKm(before.areaAboveKm2)} at or above the level then.` : ` Together ${squareKm(before.areaAboveKm2)} then, ${squareKm(areaAboveKm2)} now.`
+  return `${head}${then}${lostWords(gone, 'gone')}${lostWords(gone, 'not seen now')}`
+}
+
+function lostWords(gone: RegionPatches['gone'], kind: 'gone' | 'not seen now'): string {
+  const them = gone.filter((one) => one.kind === kind)
+  if (them.length === 0) return ''
+  const areas = them.slice(0, 3).map((one) => squareKm(one.areaKm2)).join(', ')
+  return ` ${countWords(them.length, 'patch', 'patches')} of then ${them.length === 1 ? 'is' : 'are'} ${kind} (${areas}${them.length > 3 ? ' and smaller' : ''}).`
 }
 
 export const sinceWord = ({ before }: RegionPatches): string => (before ? `Since ${shortDay(before.day)}` : 'Since the view before')

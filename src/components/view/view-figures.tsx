@@ -15,15 +15,17 @@ export function ViewFigures({ shown }: { shown: RegionView }) {
   const away = max?.away ? `, ${awayText(max.away)}` : ''
   return (
     <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-5">
-      <div className="grid grid-cols-2 gap-x-6 gap-y-4">
-        <Figure
-          label="Greatest value"
-          value={figure(max?.value)}
-          unit={unit && unit !== '1' ? unitWords(unit) : undefined}
-          note={max && `${degrees(max.latitude, 'latitude')} ${degrees(max.longitude, 'longitude')}${away}`}
-        />
-        <Figure label="Median" value={figure(view.median)} unit={unit && unit !== '1' ? unitWords(unit) : undefined} note={view.p10 !== null && view.p90 !== null && `${threeDigits(view.p10)} to ${threeDigits(view.p90)}, p10 to p90`} />
-      </div>
+      {max && (
+        <div className="grid grid-cols-2 gap-x-6 gap-y-4">
+          <Figure
+            label="Greatest value"
+            value={figure(max.value)}
+            unit={unit && unit !== '1' ? unitWords(unit) : undefined}
+            note={`${degrees(max.latitude, 'latitude')} ${degrees(max.longitude, 'longitude')}${away}`}
+          />
+          <Figure label="Median" value={figure(view.median)} unit={unit && unit !== '1' ? unitWords(unit) : undefined} note={view.p10 !== null && view.p90 !== null && `${threeDigits(view.p10)} to ${threeDigits(view.p90)}, p10 to p90`} />
+        </div>
+      )}
       <AreaByValue shown={shown} />
       <Unseen view={view} coverage={coverage} />
     </div>

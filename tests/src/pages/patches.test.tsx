@@ -63,6 +63,8 @@ describe('a patch in words', () => {
     expect([changeWords(aChange({ kind: 'new' })), changeWords(aChange({ kind: 'not seen before' })), changeWords(null)]).toEqual(['new', 'not seen before', ''])
     expect(beforeWords(aFinding())).toBe('Changes are since the view of 8 Jun 2026, which saw 90 % of the water. Together 12 km² then, 25.4 km² now. 1 patch of then is gone (2 km²).')
     expect(beforeWords(aFinding({ before: null }))).toBeUndefined()
+    const lost = aFinding().gone.map((one) => ({ ...one, kind: 'not seen now' as const }))
+    expect(beforeWords(aFinding({ answer: 'nothing seen', patches: [], areaAboveKm2: 0, gone: lost }))).toBe('The usable view before is of 8 Jun 2026, which saw 90 % of the water. 12 km² at or above the level then. 1 patch of then is not seen now (2 km²).')
   })
 })
 
@@ -71,7 +73,8 @@ describe('the list of patches', () => {
     const onMark = vi.fn()
     render(<PatchList found={aFinding()} marked={1} onMark={onMark} />)
     const [, first, second] = within(screen.getByRole('table', { name: 'Patches of this view' })).getAllByRole('row')
-    expect(first).toHaveTextContent('121.46.446.2 km NEgreatest 9.1 km ENEgrown by 11.4 km², moved 3.1 km NE')
+    expect(first).toHaveTextContent('121.46.446.2 km NEgreatest 9.1 km ENE')
+    expect(within(first!).getAllByText('grown by 11.4 km², moved 3.1 km NE')).toHaveLength(2)
     expect(second).toHaveTextContent('at least4')
     expect(screen.getByText(/the floor of the rule in force here/)).toBeInTheDocument()
     expect(screen.getByRole('columnheader', { name: 'Since 8 Jun' })).toBeInTheDocument()
@@ -96,6 +99,13 @@ describe('the figures of a view', () => {
     expect(screen.getByText('51°12′N 10°21′W, 9.1 km ENE of the site')).toBeInTheDocument()
     const rows = within(screen.getByRole('table', { name: 'Water that was not seen, by reason' })).getAllByRole('row').map((row) => row.textContent)
     expect(rows.slice(1)).toEqual(['CLOUD14028 %', 'GLINT2under 1 %', 'Not seen in all14529 %'])
+  })
+
+  test('of a view that saw nothing have no greatest value, and say that all of it was not seen', () => {
+    render(<ViewFigures shown={aView({ coverage: 0, valid: 0, validAreaKm2: 0, max: null, median: null, histogram: [], areaAboveKm2: 0, masked: [] })} />)
+    expect(screen.queryByText('Greatest value')).toBeNull()
+    expect(screen.getByText('100 %')).toBeInTheDocument()
+    expect(screen.getByText('The file says no reason. The region holds 500 km² of water.')).toBeInTheDocument()
   })
 
   test('area by value is drawn with the level marked, and the same is in a table', async () => {
