@@ -98,8 +98,8 @@ export const maskInForce = z.object({ insteadOf: id })
 export const maskChange = z.object({
   maskId: id,
   insteadOf: id,
-  /** Regions whose water would be other than now. */
-  regions: z.array(z.object({ id, name: z.string(), waterKm2Now: z.number(), waterKm2Then: z.number() })),
+  /** Regions whose water would be other than now. One that the mask leaves without any counts all its cells: `allThen`. */
+  regions: z.array(z.object({ id, name: z.string(), waterKm2Now: z.number(), waterKm2Then: z.number(), allThen: z.boolean() })),
   /** All regions whose figures are made anew, and how many of them. */
   regionsInAll: z.number().int(),
   views: z.number().int(),

@@ -26,7 +26,7 @@ export async function maskChangeOf(context: Context, id: number): Promise<MaskCh
     const before = await maskedWeights(context, geometry.id, now, size)
     const after = await maskedWeights(context, geometry.id, mask, size)
     if (Buffer.compare(countedAs(before), countedAs(after)) === 0) continue
-    regions.push({ id: geometry.regionId, name, waterKm2Now: waterKm2(before), waterKm2Then: waterKm2(after) })
+    regions.push({ id: geometry.regionId, name, waterKm2Now: waterKm2(before), waterKm2Then: waterKm2(after), allThen: !after.water.includes(1) })
   }
   return { maskId: id, insteadOf: now.id, regions, ...(await restingOn(context, feed.id, mask.gridId)), freshnessLimitHours: feed.freshnessLimitHours }
 }

@@ -10,10 +10,10 @@ export function MaskFacts({ mask, cells }: { mask: WaterMaskShown; cells: number
     [mask.inForce ? 'In force' : 'Shown, not in force', <b className="font-heading">{maskName(mask)}</b>],
     ['Water is', maskMeaning(mask)],
   ]
-  if (mask.from) facts.push(['Layers of', <span className="fig">{periodWords(mask)}</span>])
+  if (mask.from) facts.push(['Layers of', <span className="tabular-nums">{periodWords(mask)}</span>])
   if (mask.layers !== null) facts.push([mask.kind === 'own' ? 'Layers asked' : 'Layers counted', <span className="fig">{grouped(mask.layers)}</span>])
   if (mask.waterCells !== null) {
-    facts.push(['Water cells', <><span className="fig">{grouped(mask.waterCells)}</span> of <span className="fig">{grouped(cells)}</span>, <span className="fig">{percent(mask.waterCells / cells)}</span></>])
+    facts.push(['Water cells', <><span className="fig">{grouped(mask.waterCells)}</span> of <span className="fig">{grouped(cells)}</span>, {percent(mask.waterCells / cells)}</>])
     facts.push(['Against the outline', <><span className="fig">{grouped(mask.gained ?? 0)}</span> cells more water, <span className="fig">{grouped(mask.lost ?? 0)}</span> less</>])
   }
   if (mask.kind !== 'land outline') facts.push(['Made', `${dayWithYear(mask.madeAt)}${mask.madeBy ? ` for ${mask.madeBy}` : ''}`])

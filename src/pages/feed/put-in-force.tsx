@@ -56,10 +56,13 @@ function WhatHappens({ change, inForce }: { change: MaskChange; inForce: WaterMa
       ) : (
         <div>
           <p>{countWords(regions.length, 'region has', 'regions have')} other water by it:</p>
-          <ul className="mt-1 max-h-48 overflow-y-auto border-t border-rule text-small">
+          <ul aria-label="Water of regions, now and then" tabIndex={0} className="mt-1 max-h-56 overflow-y-auto border-t border-rule text-small">
             {regions.map((region) => (
               <li key={region.id} className="flex flex-wrap justify-between gap-x-4 border-b border-rule py-1.5">
-                <span>{region.name}</span>
+                <span>
+                  {region.name}
+                  {region.allThen && <span className="block text-fine text-ink2">no water by it: every cell counts</span>}
+                </span>
                 <span className="fig">
                   {threeDigits(region.waterKm2Now)} → {threeDigits(region.waterKm2Then)} km²
                 </span>

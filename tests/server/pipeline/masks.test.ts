@@ -2,6 +2,7 @@ import { join } from 'node:path'
 import request from 'supertest'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import type { Person } from '../../../server/accounts/person'
+import { explainAlert } from '../../../server/desk/explain-alert'
 import { regionSeries } from '../../../server/desk/region-series'
 import { singleCells } from '../../../server/desk/single-cells'
 import { isLand } from '../../../server/geography/land'
@@ -18,7 +19,7 @@ import { markSuspect } from '../../../server/pipeline/mark-suspect'
 import { bitAt } from '../../../shared/science/water-mask'
 import { newMask, type GridMasks } from '../../../shared/schemas/masks'
 import { aUser, bearer } from '../../support/people'
-import { aFeed, aPerson, aRegion, cleanSea, runJobs, seaFolder, send } from '../../support/sea'
+import { aFeed, aPerson, aRegion, cleanSea, quietYears, runJobs, seaFile, seaFolder, send } from '../../support/sea'
 import { createTestContext, type TestContext } from '../../support/test-context'
 
 let context: TestContext
@@ -237,6 +238,64 @@ describe('a region that a mask leaves without water', () => {
     await make(feed.id)
     await force(feed.id, 2)
     expect((await coverage(region.id, feed.id)).at(-1)).toBeCloseTo(0.5, 3)
+  })
+})
+
+describe('a mask that takes the ground from under an alert', () => {
+  it('ends it with the mask named, sends no letter, and the alert can still be computed again by the mask it was raised by', async () => {
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person)
+    const west = (_row: number, column: number) => (column < 4 ? 20 : NaN)
+    const east = (_row: number, column: number) => (column < 4 ? NaN : 1)
+    await send(context, await seaFile(Array.from({ length: 10 }, (_, i) => ({ at: `2020-01-${10 + i}T12:00:00Z`, value: east })), { name: 'east.nc' }))
+    await send(context, await seaFile([...quietYears([2021, 2022, 2023, 2024, 2025], '05-20', 40), { at: '2026-06-09T12:00:00Z', value: west }, { at: '2026-06-10T12:00:00Z', value: west }]))
+    await runJobs(context)
+    const alert = await context.models.alerts.findOne({ where: { regionId: region.id }, rejectOnEmpty: true })
+    expect(alert).toMatchObject({ state: 'open', phase: 'running' })
+    expect(alert.evidence.waterMask).toBe('land outline, version 1')
+    const letters = await context.models.letters.count()
+    const made = await make(feed.id, { from: '2020-01-01', to: '2020-12-31' })
+    expect(await maskChangeOf(context, made.masks[0]!.id)).toMatchObject({ runningEvents: 1, openAlerts: 1, regions: [{ id: region.id, allThen: false }] })
+    await alert.reload()
+    expect(alert.phase).toBe('running')
+    await force(feed.id, 2)
+    await alert.reload()
+    expect(alert).toMatchObject({ state: 'open', phase: 'ended', eventId: null })
+    const entries = await context.models.alertEntries.findAll({ where: { alertId: alert.id }, order: [['id', 'ASC']] })
+    expect(entries.at(-1)).toMatchObject({ kind: 'rejudged', text: 'By the water mask now in force (valid share, version 2) the rule no longer finds an event here.' })
+    expect(await context.models.letters.count()).toBe(letters)
+    expect(await explainAlert(context, alert)).toMatchObject({ agrees: true, differences: [] })
+  })
+})
+
+describe('a grid too large to be counted whole', () => {
+  it('is counted where somebody watches, and elsewhere as the land outline has it, which the mask says', async () => {
+    const side = 2100
+    const path = join(await seaFolder(), 'large.nc')
+    const data = new Float64Array(side * side).fill(NaN)
+    // The region is rows and columns 1000 to 1019; its western half is valid, all else is not.
+    for (let row = 1000; row < 1020; row++) data.fill(1, row * side + 1000, row * side + 1010)
+    await writeNetcdf4(path, {
+      latitudes: Array.from({ length: side }, (_, i) => 45 + (i + 0.5) / 500),
+      longitudes: Array.from({ length: side }, (_, i) => -20 + (i + 0.5) / 500),
+      times: [Date.parse('2025-06-01T12:00:00Z')],
+      variables: [{ name: 'chlor_a', dtype: 'f4', data, attributes: { units: 'mg m-3' } }],
+      globalAttributes: { processing_version: 'R1' },
+      deflate: 1,
+    })
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person, { geometry: { type: 'Polygon', coordinates: [[[-18, 47], [-17.96, 47], [-17.96, 47.04], [-18, 47.04], [-18, 47]]] } })
+    await send(context, path)
+    await runJobs(context)
+    expect((await coverage(region.id, feed.id))[0]).toBeCloseTo(0.5, 3)
+    const { masks, watchedOnly } = await make(feed.id)
+    expect(watchedOnly).toBe(true)
+    const bits = (await maskBits(context, masks[0]!.id))!
+    const at = (row: number, column: number) => bitAt(bits, row * side + column)
+    expect([at(1005, 1005), at(1005, 1015), at(100, 100), at(2000, 1000)]).toEqual([1, 0, 1, 1])
+    expect(masks[0]!.note).toBe(`The grid is too large to be counted whole: only tiles that hold a region were. ${side * side - 64 * 64} cells were not counted; there the mask is the land outline.`)
+    await force(feed.id, 2)
+    expect((await coverage(region.id, feed.id))[0]).toBeCloseTo(1, 9)
   })
 })
 

@@ -35,7 +35,7 @@ const making: MaskMaking = {
 }
 const masks = (change: Partial<GridMasks> = {}): FeedMasks => ({ feedId: 4, items: [{ ...grid, ...change }], nextCursor: null })
 const change: MaskChange = {
-  maskId: 9, insteadOf: 1, regions: [{ id: 2, name: 'Tarrow Bay', waterKm2Now: 120.4, waterKm2Then: 134.2 }], regionsInAll: 12, views: 40210, runningEvents: 2, openAlerts: 1, freshnessLimitHours: 72,
+  maskId: 9, insteadOf: 1, regions: [{ id: 2, name: 'Tarrow Bay', waterKm2Now: 120.4, waterKm2Then: 134.2, allThen: false }, { id: 3, name: 'Inner Loch', waterKm2Now: 4, waterKm2Then: 9, allThen: true }], regionsInAll: 12, views: 40210, runningEvents: 2, openAlerts: 1, freshnessLimitHours: 72,
 }
 
 function open(me: Me, shown: FeedMasks, answers: Parameters<typeof fakeServer>[0] = {}) {
@@ -115,6 +115,7 @@ test('an admin reads what it will change before a mask goes into force, and then
   expect(dialog.getByText(/2 running events and 1 open alert of this feed may change, end or go\./)).toBeVisible()
   expect(dialog.getByText('Views older than 72 h raise no letters.')).toBeVisible()
   expect(dialog.getByText('Tarrow Bay').nextElementSibling).toHaveTextContent('120 → 134 km²')
+  expect(dialog.getByText('no water by it: every cell counts').parentElement).toHaveTextContent('Inner Loch')
   expect(dialog.getByText('Land outline, version 1 stays and can be put in force again.')).toBeVisible()
   await userEvent.click(dialog.getByRole('button', { name: 'Put it in force' }))
   expect(await screen.findByText('11 Jun 2026, by Ines Marrow')).toBeVisible()
