@@ -16,7 +16,9 @@ const ViewMap = lazy(() => import('./view-map'))
 
 /** One view of the region at a time: its patches on the map and in a list, and the figures of the day. */
 export function ViewPart({ region, feedId }: { region: Region; feedId: number }) {
-  const [day, setDay] = useState<string | undefined>(region.standing.view?.day)
+  const [chosen, setDay] = useState<string>()
+  // Until somebody goes to a day, the one the region stands by, also when a newer one arrives.
+  const day = chosen ?? region.standing.view?.day
   const [level, setLevel] = useState<number | undefined>()
   const [marked, setMarked] = useState(1)
   const shown = useQuery(viewQuery({ regionId: region.id, feedId, day, level }))

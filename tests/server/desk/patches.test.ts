@@ -1,6 +1,7 @@
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import request from 'supertest'
 import type { Person } from '../../../server/accounts/person'
+import { LayerRefused } from '../../../server/grids/layer-refused'
 import type { FeedRecord } from '../../../server/models/feed'
 import type { RegionRecord } from '../../../server/models/region'
 import { awayText, patchSentence } from '../../../shared/patch-text'
@@ -184,6 +185,27 @@ describe('an alert', () => {
     expect(letter!.htmlPart).toContain(sentence)
     await arrive([{ at: '2026-06-11T12:30:00Z', value: drawn(calm) }])
     expect((await context.models.alerts.findAll())[0]!.evidence.largestPatch).toEqual(kept)
+  })
+
+  it('that rises keeps the largest patch of the day it rose to', async () => {
+    const higher = drawn('99999999 '.repeat(6) + '00000000 00000000')
+    await arrive(quietYears([2022, 2023, 2024, 2025], '05-25', 30))
+    await arrive([{ at: '2026-06-09T12:00:00Z', value: bloom }, { at: '2026-06-10T12:00:00Z', value: bloom }])
+    const [raised] = await context.models.alerts.findAll()
+    await arrive([{ at: '2026-06-11T12:00:00Z', value: higher }])
+    const [risen] = await context.models.alerts.findAll()
+    expect([raised!.evidence.largestPatch!.greatest, risen!.evidence.largestPatch!.greatest]).toEqual([7, 9])
+    expect(raised!.severity).not.toBe(risen!.severity)
+  })
+
+  it('is raised all the same when its layer cannot be read a second time', async () => {
+    const { heavy } = context.workers
+    context.workers.heavy = (task, input, options) => (task === 'findPatches' ? Promise.reject(new LayerRefused('reading-failed', 'Gone bad.')) : heavy(task, input, options))
+    await arrive(quietYears([2022, 2023, 2024, 2025], '05-25', 30))
+    await arrive([{ at: '2026-06-10T12:00:00Z', value: bloom }, { at: '2026-06-11T12:00:00Z', value: bloom }])
+    const [alert] = await context.models.alerts.findAll()
+    expect(alert!.state).toBe('open')
+    expect(alert!.evidence).not.toHaveProperty('largestPatch')
   })
 
   it('says where it is in plain words', () => {
