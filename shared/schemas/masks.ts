@@ -73,7 +73,13 @@ export const gridMasks = z.object({
 export type GridMasks = z.infer<typeof gridMasks>
 
 /** Grids of a feed, that of the newest layer first. */
-export const feedMasks = z.object({ feedId: id, items: z.array(gridMasks), nextCursor: z.null() })
+export const feedMasks = z.object({
+  feedId: id,
+  items: z.array(gridMasks),
+  nextCursor: z.null(),
+  /** How far the feed's history has been made anew, as after another mask was put in force; null when that is over. */
+  remaking: z.object({ state: z.enum(jobStates), done: z.number().int(), total: z.number().int() }).nullable(),
+})
 export type FeedMasks = z.infer<typeof feedMasks>
 
 export const newMask = z

@@ -17,7 +17,11 @@ export async function presentMasks(context: Context, feedId: number): Promise<Fe
   if ((await context.models.feeds.count({ where: { id: feedId } })) === 0) throw new ApiError('not-found', 'There is no such feed.')
   const items: GridMasks[] = []
   for (const grid of await gridsOfFeed(context, feedId)) items.push(await presentGrid(context, feedId, grid))
-  return { feedId, items, nextCursor: null }
+  const remaking = await context.db.first<NonNullable<FeedMasks['remaking']>>(
+    `SELECT state, done, total FROM jobs WHERE kind = 'backfill-feed' AND job_key = $key AND state IN ('waiting', 'running', 'paused') ORDER BY id DESC LIMIT 1`,
+    { key: String(feedId) },
+  )
+  return { feedId, items, nextCursor: null, remaking: remaking ?? null }
 }
 
 async function presentGrid(context: Context, feedId: number, { newestLayerId, oldest, newest, ...grid }: LayersOnGrid): Promise<GridMasks> {

@@ -7,6 +7,7 @@ import { feedMasksQuery, isMaking } from '../../api/masks'
 import { Button } from '../../components/ui/button'
 import { Failure } from '../../components/ui/failure'
 import { SectionHead } from '../../components/ui/page'
+import { Progress } from '../../components/ui/progress'
 import { Waiting } from '../../components/ui/waiting'
 import { grouped } from '../../lib/format'
 import { MakeMask } from './make-mask'
@@ -27,6 +28,11 @@ export function MaskPart({ feed }: { feed: Masked }) {
       <SectionHead>Water mask</SectionHead>
       {masks.isPending && <Waiting lines={4} />}
       {masks.error && <Failure error={masks.error} onRetry={() => void masks.refetch()} />}
+      {masks.data?.remaking && (
+        <div className="pt-3">
+          <Progress {...masks.data.remaking} total={masks.data.remaking.total || 1} label={masks.data.remaking.state === 'paused' ? 'Making the history anew, paused' : 'Making the history anew'} />
+        </div>
+      )}
       <div className="grid gap-8">
         {masks.data?.items.map((grid) => (
           <GridPart key={grid.gridId} feed={feed} grid={grid} several={masks.data.items.length > 1} />

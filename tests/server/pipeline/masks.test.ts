@@ -1,4 +1,5 @@
 import { join } from 'node:path'
+import sharp from 'sharp'
 import request from 'supertest'
 import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
 import type { Person } from '../../../server/accounts/person'
@@ -12,10 +13,12 @@ import { steerJob } from '../../../server/jobs/steer-job'
 import { deleteFile } from '../../../server/pipeline/delete-file'
 import { maskBits } from '../../../server/pipeline/masks/mask-in-force'
 import { maskChangeOf } from '../../../server/pipeline/masks/mask-change'
+import { maskTile } from '../../../server/pipeline/masks/mask-tiles'
 import { presentMasks } from '../../../server/pipeline/masks/present-masks'
 import { putInForce } from '../../../server/pipeline/masks/put-in-force'
 import { queueMask } from '../../../server/pipeline/masks/queue-mask'
 import { markSuspect } from '../../../server/pipeline/mark-suspect'
+import { maskInks } from '../../../shared/mask-picture'
 import { bitAt } from '../../../shared/science/water-mask'
 import { newMask, type GridMasks } from '../../../shared/schemas/masks'
 import { aUser, bearer } from '../../support/people'
@@ -395,6 +398,33 @@ describe('a mask of the files’ own', () => {
   })
 })
 
+describe('the picture of a mask', () => {
+  it('shows water that the outline has as land, and land that it has as water, each stroked its own way', async () => {
+    const feed = await aFeed(context, person)
+    await send(context, await daysFile({ days: 20, valid: (_, column) => column >= 5 }))
+    await runJobs(context)
+    const [made, outline] = (await make(feed.id)).masks
+    const inks = async (maskId: number, theme: 'light' | 'night') => {
+      // The tile of zoom 10 that holds the whole haven.
+      const { picture } = await maskTile(context, maskId, { z: 10, x: 497, y: 339, theme })
+      const { data } = await sharp(Buffer.from((await picture())!)).raw().toBuffer({ resolveWithObject: true })
+      const counts = new Map<string, number>()
+      for (let i = 0; i < data.length; i += 4) if (data[i + 3] === 255) counts.set(`${data[i]} ${data[i + 1]} ${data[i + 2]}`, (counts.get(`${data[i]} ${data[i + 1]} ${data[i + 2]}`) ?? 0) + 1)
+      return counts
+    }
+    for (const theme of ['light', 'night'] as const) {
+      const { water, land, gained, lost } = maskInks[theme]
+      const seen = await inks(made!.id, theme)
+      // Two of six pixels are strokes.
+      for (const [ground, wanted] of [[gained, made!.gained!], [lost, made!.lost!]] as const) {
+        const strokes = seen.get(ground.stroke.join(' '))!
+        expect(strokes / [...seen.values()].reduce((sum, count) => sum + count, 0)).toBeCloseTo(wanted / 300, 1)
+      }
+      expect([...(await inks(outline!.id, theme)).keys()].sort()).toEqual([water.fill.join(' '), land.fill.join(' ')].sort())
+    }
+  })
+})
+
 describe('over the interface', () => {
   it('an analyst makes a mask, an admin puts it in force, and who decided by an old sight of it is told', async () => {
     const feed = await aFeed(context, person)
@@ -409,13 +439,14 @@ describe('over the interface', () => {
     await runJobs(context)
     const made = (await onlyGrid(feed.id)).masks[0]!
     await post(`/masks/${made.id}/in-force`, analyst, { insteadOf: masks[0]!.id }).expect(403)
-    await post(`/masks/${made.id}/in-force`, admin, { insteadOf: masks[0]!.id }).expect(202)
+    const forced = await post(`/masks/${made.id}/in-force`, admin, { insteadOf: masks[0]!.id }).expect(202)
+    expect(forced.body.remaking).toMatchObject({ state: 'waiting', done: 0 })
     const stale = await post(`/masks/${masks[0]!.id}/in-force`, admin, { insteadOf: masks[0]!.id }).expect(409)
     expect(stale.body.error.code).toBe('stale-version')
     const twice = await post(`/masks/${made.id}/in-force`, admin, { insteadOf: made.id }).expect(409)
     expect(twice.body.error.message).toBe('This water mask is in force already.')
-    const tile = await request(context.app).get(`/api/masks/${made.id}/tiles/9/248/170.png`).set('Authorization', analyst).expect(200)
+    const tile = await request(context.app).get(`/api/masks/${made.id}/tiles/9/248/169.png`).set('Authorization', analyst).expect(200)
     expect(tile.type).toBe('image/png')
-    await request(context.app).get(`/api/masks/${made.id}/tiles/9/248/170.png`).set('Authorization', analyst).set('If-None-Match', tile.headers['etag'] as string).expect(304)
+    await request(context.app).get(`/api/masks/${made.id}/tiles/9/248/169.png`).set('Authorization', analyst).set('If-None-Match', tile.headers['etag'] as string).expect(304)
   })
 })

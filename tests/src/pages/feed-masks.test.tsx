@@ -33,7 +33,7 @@ const making: MaskMaking = {
   kind: 'valid share', from: '2017-01-01', to: '2025-12-31', layers: 3287, by: 'Ana Reed', askedAt: '2026-06-11T12:00:00Z',
   job: { id: 12, state: 'running', done: 620, total: 3287, lastError: null }, outcome: null, version: null,
 }
-const masks = (change: Partial<GridMasks> = {}): FeedMasks => ({ feedId: 4, items: [{ ...grid, ...change }], nextCursor: null })
+const masks = (change: Partial<GridMasks> = {}): FeedMasks => ({ feedId: 4, items: [{ ...grid, ...change }], nextCursor: null, remaking: null })
 const change: MaskChange = {
   maskId: 9, insteadOf: 1, regions: [{ id: 2, name: 'Tarrow Bay', waterKm2Now: 120.4, waterKm2Then: 134.2, allThen: false }, { id: 3, name: 'Inner Loch', waterKm2Now: 4, waterKm2Then: 9, allThen: true }], regionsInAll: 12, views: 40210, runningEvents: 2, openAlerts: 1, freshnessLimitHours: 72,
 }
@@ -104,7 +104,7 @@ test.each([
 })
 
 test('an admin reads what it will change before a mask goes into force, and then sees it in force', async () => {
-  const after = masks({ masks: [{ ...byShare, inForce: true, inForceBy: 'Ines Marrow', inForceSince: '2026-06-11T13:00:00Z' }, { ...outline, inForce: false }] })
+  const after = { ...masks({ masks: [{ ...byShare, inForce: true, inForceBy: 'Ines Marrow', inForceSince: '2026-06-11T13:00:00Z' }, { ...outline, inForce: false }] }), remaking: { state: 'running' as const, done: 62, total: 3653 } }
   const asked = open(admin, masks({ masks: [byShare, outline] }), {
     'GET /masks/9/change': () => reply(endpoints.maskChange, change),
     'POST /masks/9/in-force': () => reply(endpoints.putMaskInForce, after),
@@ -119,6 +119,7 @@ test('an admin reads what it will change before a mask goes into force, and then
   expect(dialog.getByText('Land outline, version 1 stays and can be put in force again.')).toBeVisible()
   await userEvent.click(dialog.getByRole('button', { name: 'Put it in force' }))
   expect(await screen.findByText('11 Jun 2026, by Ines Marrow')).toBeVisible()
+  expect(screen.getByRole('progressbar', { name: 'Making the history anew' })).toHaveAttribute('aria-valuenow', '62')
   expect(asked.find((one) => one.method === 'POST')?.body).toEqual({ insteadOf: 1 })
   expect(screen.queryByRole('dialog')).toBeNull()
   expect(screen.getByRole('button', { name: 'Put Land outline, version 1 in force…' })).toHaveTextContent('Go back to it…')
@@ -138,7 +139,7 @@ test('who decided by an old sight of it is told, and nothing is closed', async (
 })
 
 test('a feed without a layer has no part about masks', async () => {
-  const asked = open(admin, { feedId: 4, items: [], nextCursor: null })
+  const asked = open(admin, { feedId: 4, items: [], nextCursor: null, remaking: null })
   await expect.poll(() => asked.length).toBe(1)
   await expect.poll(() => screen.queryByRole('heading', { name: 'Water mask' })).toBeNull()
 })
