@@ -1,9 +1,9 @@
 import type { ViewKey } from './summarise-views'
 
-/** The views of one region, newest day first, and how many of them are done. */
+/** The views of one region, newest day first, and how many of them have been taken. */
 export interface Share {
   keys: readonly ViewKey[]
-  done: number
+  next: number
 }
 
 /**
@@ -12,7 +12,7 @@ export interface Share {
  */
 export function nextViews<T extends Share>(shares: readonly T[], most: number): Map<T, ViewKey[]> {
   const views = new Map<T, ViewKey[]>()
-  const next = new Map(shares.map((share) => [share, share.done]))
+  const next = new Map(shares.map((share) => [share, share.next]))
   const days = new Set<string>()
   while (days.size < most) {
     const day = Math.max(...shares.map((share) => share.keys[next.get(share)!]?.day ?? -Infinity))

@@ -9,7 +9,7 @@ import { nextViews, type Share } from './backfill-order'
 import { ensureFirstRule } from './first-rule'
 import { queueJudging } from './queue-judging'
 import { boxesMeet } from './summarise-layers'
-import { keepViews, makeViews, type ViewKey } from './summarise-views'
+import { keepViews, makeViews, type MadeViews, type ViewKey } from './summarise-views'
 import { viewDay } from './view-day'
 
 /** Days of a feed read between two marks of progress. */
@@ -19,6 +19,8 @@ const daysAtOnce = 128
 interface Part extends Share {
   job: JobRecord
   region: RegionRecord
+  /** How many of its views are written, or being written. */
+  done: number
 }
 
 export async function queueBackfill(context: Context, tx: Transaction, region: { id: number; name: string; geometryId: number }): Promise<void> {
@@ -34,22 +36,24 @@ export async function queueBackfill(context: Context, tx: Transaction, region: {
 /**
  * Reads the history of newly drawn outlines, newest day first, in small committed batches; the mark of progress is how
  * many views are done, so a restart goes on from there. Regions that wait for the same join in: each layer is read once
- * for all of them. While one batch is written the next is read.
+ * for all of them. While one batch is written the next is read, and the one after it prepared.
  */
 export async function backfillRegion(context: Context, job: JobRecord): Promise<'done' | 'paused'> {
   const own = await partOf(context, job)
   if (!own) return 'done'
   const parts = [own]
   let writing: Promise<unknown> = Promise.resolve()
+  let ahead: Batch | null = null
   try {
     while (own.done < own.keys.length) {
       await joinIn(context, parts)
       if (!(await stillRunning(parts))) return await leave(context, parts, writing)
-      const views = nextViews(parts, daysAtOnce)
-      const made = await makeViews(context, [...views.values()].flat())
+      const batch: Batch = ahead ?? take(context, parts)
+      ahead = own.next < own.keys.length ? take(context, parts) : null
+      const made = await batch.made
       await writing
-      for (const [part, keys] of views) part.done += keys.length
-      const marks = [...views.keys()].map((part) => ({ part, done: part.done }))
+      for (const [part, keys] of batch.views) part.done += keys.length
+      const marks = [...batch.views.keys()].map((part) => ({ part, done: part.done }))
       writing = keepViews(context, made, async (tx) => {
         for (const { part, done } of marks) await markProgress(context, tx, part.job, done, part.keys.length)
       }).then(() => told(context, parts))
@@ -69,6 +73,21 @@ export async function backfillRegion(context: Context, job: JobRecord): Promise<
   await leave(context, parts.slice(1), writing)
   await judgeNext(context, own.region)
   return 'done'
+}
+
+interface Batch {
+  views: Map<Part, ViewKey[]>
+  made: Promise<MadeViews>
+}
+
+/** The next views of all parts, being made from now on. */
+function take(context: Context, parts: readonly Part[]): Batch {
+  const views = nextViews(parts, daysAtOnce)
+  for (const [part, keys] of views) part.next += keys.length
+  const made = makeViews(context, [...views.values()].flat())
+  // One that is never waited for, because the work stops before it, may fail unheard.
+  made.catch(() => undefined)
+  return { views, made }
 }
 
 /** Those that still run go back to waiting, to be taken up again at once; the paused and cancelled stay as they are. */
@@ -127,7 +146,8 @@ async function partOf(context: Context, job: JobRecord): Promise<Part | null> {
   const region = geometry && (await context.models.regions.findByPk(geometry.regionId))
   if (!geometry || !region || region.geometryId !== geometry.id || region.retiredAt !== null) return null
   const keys = await viewsToRead(context, geometry.id, geometry)
-  return { job, region, keys, done: Math.min(job.done, keys.length) }
+  const done = Math.min(job.done, keys.length)
+  return { job, region, keys, done, next: done }
 }
 
 async function viewsToRead(context: Context, geometryId: number, box: { west: number; south: number; east: number; north: number; centreLongitude: number }): Promise<ViewKey[]> {

@@ -2,6 +2,7 @@ import type { Context } from '../context'
 import type { Transaction } from '../db'
 import { layersById, type PlacedLayer } from '../queries/layers'
 import { activeGeometries, type ActiveGeometry } from '../queries/geometries'
+import { worthHalving } from './figures-in-halves'
 import { placeOf } from './layer-place'
 import { summariseViews, type ViewKey } from './summarise-views'
 import { viewDay } from './view-day'
@@ -20,7 +21,18 @@ export async function summariseLayers(
   const geometries = await activeGeometries(context)
   await summariseViews(context, viewKeysOf(layers, geometries, feedId), alongside)
   const unwatched = layers.filter((layer) => !geometries.some((geometry) => boxesMeet(geometry, layer)))
-  if (unwatched.length > 0) await context.workers.heavy('decodeLayers', { layers: unwatched.map((layer) => placeOf(context, layer)) })
+  await decodeInHalves(context, unwatched)
+}
+
+/** Of many layers each of two threads decodes one half. */
+async function decodeInHalves(context: Context, layers: readonly PlacedLayer[]): Promise<void> {
+  if (layers.length === 0) return
+  const places = layers.map((layer) => placeOf(context, layer))
+  const middle = places.length < worthHalving ? places.length : places.length >> 1
+  await Promise.all([
+    context.workers.heavy('decodeLayers', { layers: places.slice(0, middle) }),
+    ...(middle < places.length ? [context.workers.second('decodeLayers', { layers: places.slice(middle) })] : []),
+  ])
 }
 
 /** The views that layers belong to: one for each region their grid's box meets, and day. */

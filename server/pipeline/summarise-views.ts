@@ -6,6 +6,7 @@ import { compareVersions } from '../../shared/science/merge-views'
 import { trustedLayers, type PlacedLayer } from '../queries/layers'
 import { writeSummaries, type SummaryRow } from '../queries/summaries'
 import { cellCentre } from '../grids/cell-centre'
+import { figuresInHalves } from './figures-in-halves'
 import { gridOf } from './known-grids'
 import { placeOf } from './layer-place'
 import { maskedWeights, maskInForce, maskNamed, noteWholeWater, type KnownMask } from './masks/mask-in-force'
@@ -116,7 +117,7 @@ async function figuresOf(context: Context, feed: FeedRecord, views: readonly Vie
   }
   const touched = views.map((view) => weights[weightsAt.get(`${view.geometryId}:${view.gridId}`)!]!.index.length > 0)
   const kept = views.filter((_, i) => touched[i])
-  const figures = await context.workers.heavy('summariseViews', {
+  const figures = await figuresInHalves(context, {
     layers: layers.map((layer) => placeOf(context, layer, from)),
     weights,
     views: tasks.filter((_, i) => touched[i]),

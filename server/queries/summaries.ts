@@ -37,12 +37,14 @@ export async function writeSummaries(
     ]
   })
   const picked = columns.map((_, i) => (i === columns.length - 1 ? `unhex(r.value ->> ${i})` : `r.value ->> ${i}`)).join(', ')
-  const changed = JSON.stringify([...rows, ...empty].map((row) => [row.geometryId, row.feedId, row.day]))
-  const isChanged = `(geometry_id, feed_id, day) IN (SELECT value ->> 0, value ->> 1, value ->> 2 FROM json_each($changed))`
-  await context.db.run(`DELETE FROM summary_reasons WHERE ${isChanged}`, { changed }, tx)
-  await context.db.run(`DELETE FROM view_layers WHERE ${isChanged}`, { changed }, tx)
-  await context.db.run(`DELETE FROM summaries WHERE ${isChanged}`, { changed }, tx)
-  await context.db.run(`INSERT INTO summaries (${columns.join(', ')}) SELECT ${picked} FROM json_each($rows) r`, { rows: JSON.stringify(summaries) }, tx)
+  await removeViews(context, tx, [...rows, ...empty])
+  // As jsonb each row is parsed once, not once a column.
+  await context.db.run(
+    `INSERT INTO summaries (${columns.join(', ')})
+     WITH r AS MATERIALIZED (SELECT jsonb(value) AS value FROM json_each($rows)) SELECT ${picked} FROM r`,
+    { rows: JSON.stringify(summaries) },
+    tx,
+  )
   const links = rows.flatMap((row) => row.layerIds.map((layerId) => [row.geometryId, row.feedId, row.day, layerId]))
   await context.db.run(
     `INSERT INTO view_layers (geometry_id, feed_id, day, layer_id)
@@ -58,4 +60,24 @@ export async function writeSummaries(
     { reasons: JSON.stringify(reasons) },
     tx,
   )
+}
+
+/** A region's history is mostly new; only where something of it is there already is each view looked for. */
+async function removeViews(context: Context, tx: Transaction, views: readonly { geometryId: number; feedId: number; day: number }[]): Promise<void> {
+  const spans = new Map<string, [geometryId: number, feedId: number, first: number, last: number]>()
+  for (const { geometryId, feedId, day } of views) {
+    const span = spans.get(`${geometryId}:${feedId}`)
+    if (!span) spans.set(`${geometryId}:${feedId}`, [geometryId, feedId, day, day])
+    else [span[2], span[3]] = [Math.min(span[2], day), Math.max(span[3], day)]
+  }
+  const there = await context.db.first(
+    `SELECT 1 AS one FROM json_each($spans) g CROSS JOIN summaries s
+     ON s.geometry_id = g.value ->> 0 AND s.feed_id = g.value ->> 1 AND s.day BETWEEN g.value ->> 2 AND g.value ->> 3 LIMIT 1`,
+    { spans: JSON.stringify([...spans.values()]) },
+    tx,
+  )
+  if (!there) return
+  const changed = JSON.stringify(views.map((view) => [view.geometryId, view.feedId, view.day]))
+  const isChanged = `(geometry_id, feed_id, day) IN (SELECT value ->> 0, value ->> 1, value ->> 2 FROM json_each($changed))`
+  for (const table of ['summary_reasons', 'view_layers', 'summaries']) await context.db.run(`DELETE FROM ${table} WHERE ${isChanged}`, { changed }, tx)
 }

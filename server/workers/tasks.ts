@@ -6,6 +6,7 @@ import type { Seen } from './inspect-file'
 import type { MaskTasks } from './mask-tasks'
 import type { OutlineTasks } from './outline-tasks'
 import type { PatchTasks } from './patch-tasks'
+import type { PackedFigures } from './packed-figures'
 import type { PictureTasks } from './picture-tasks'
 
 /** One variable of a stored file, at one step. */
@@ -86,7 +87,7 @@ export interface Tasks extends PictureTasks, OutlineTasks, PatchTasks, MaskTasks
       validMin: number | null
       validMax: number | null
     }
-    output: ViewFigures[]
+    output: PackedFigures
   }
   decodeLayers: { input: { layers: LayerPlace[] }; output: void }
   judgeRegion: { input: JudgeRegionInput; output: RegionJudgement }

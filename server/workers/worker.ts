@@ -13,6 +13,7 @@ import { judgeRegion } from './judge-region'
 import { writeDemoFile } from '../seeders/demo/write-file'
 import { comparePassword, hashPassword } from './password'
 import { readCells } from './read-cells'
+import { packFigures } from './packed-figures'
 import { decodeLayers } from './read-tiles'
 import { summariseViews } from './summarise-views'
 import { surveyLayer } from './survey-layer'
@@ -32,7 +33,7 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   checkOutline,
   measureOutline,
   readAreas,
-  summariseViews,
+  summariseViews: async (input) => packFigures(await summariseViews(input)),
   decodeLayers,
   judgeRegion,
   drawTile,

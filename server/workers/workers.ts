@@ -10,10 +10,14 @@ type Run = <K extends keyof Tasks>(
   options?: { signal?: AbortSignal },
 ) => Promise<Tasks[K]['output']>
 
-/** `light` keeps one worker free for tiles, points and passwords while `heavy` reads files. */
+/**
+ * `light` keeps one worker free for tiles, points and passwords while `heavy` reads files; `second` takes half of what can be
+ * halved, years of layers above all.
+ */
 export interface Workers {
   light: Run
   heavy: Run
+  second: Run
   close(): Promise<void>
 }
 
@@ -28,13 +32,14 @@ const readsFiles: ReadonlySet<keyof Tasks> = new Set(['inspectFile', 'summariseV
 export function startWorkers(bundle: string, seconds: Partial<Record<keyof Tasks, number>> = {}): Workers {
   if (!existsSync(bundle)) throw new Error(`The worker has not been built: ${bundle} is missing. Run: npm run build`)
   const start = () => createLane<Outcome<unknown>>(bundle, (outcome) => outcome.spent, { task: 'greet', input: null })
-  const [light, heavy] = [start(), start()]
+  const [light, heavy, second] = [start(), start(), start()]
   const limits = { ...secondsFor, ...seconds }
   return {
     light: runIn(light, limits),
     heavy: runIn(heavy, limits),
+    second: runIn(second, limits),
     close: async () => {
-      await Promise.all([light.close(), heavy.close()])
+      await Promise.all([light.close(), heavy.close(), second.close()])
     },
   }
 }

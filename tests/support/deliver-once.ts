@@ -18,7 +18,7 @@ await deliverDue({
   models: modelsOf(db),
   log: pino(),
   news: createNews(),
-  workers: { light: unused, heavy: unused, close: async () => undefined },
+  workers: { light: unused, heavy: unused, second: unused, close: async () => undefined },
   mailCatcher: null,
   lastTickAt: null,
   wake: () => undefined,
