@@ -66,12 +66,21 @@ const historyText: Record<HistoryState, string> = {
   failed: 'The reading of its history failed. What was read is kept.',
 }
 
+const feedHistoryText: Record<HistoryState, string> = {
+  waiting: 'being made anew',
+  running: 'being made anew',
+  paused: 'half made anew, and paused',
+  cancelled: 'half made anew, and stopped',
+  failed: 'half made anew, and failed',
+}
+
 function stateOf(facts: RegionFacts, now: number): { state: RegionStateName; because: string } {
   const { judged } = facts
   if (facts.jobState !== null) return { state: 'not ready', because: historyText[facts.jobState] }
   if (facts.feedId === null) return { state: 'not ready', because: 'No feed has seen this water yet.' }
   if (facts.ruleId === null || judged === null) return { state: 'not ready', because: 'It has not been judged yet.' }
   if (judged.inEvent) return { state: 'unusual', because: 'Its newest usable views meet the rule.' }
+  if (facts.feedJobState !== null) return { state: 'not ready', because: `The history of ${facts.feedName} is ${feedHistoryText[facts.feedJobState]}.` }
   const layerAge = facts.newestLayerAt === null ? null : (now - facts.newestLayerAt) / hourMs
   if (layerAge === null) return { state: 'stale', because: `${facts.feedName} has sent no layer.` }
   if (layerAge > facts.silentAfterHours!) return { state: 'stale', because: `${facts.feedName} has been silent for ${ageText(layerAge)}.` }

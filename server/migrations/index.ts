@@ -7,6 +7,7 @@ import { sql as quality } from './004-quality'
 import { sql as madeAndReplaced } from './005-made-and-replaced'
 import { sql as outlineVersions } from './006-outline-versions'
 import { sql as masks } from './008-masks'
+import { sql as jobsByKey } from './009-jobs-by-key'
 
 const migrations = [
   { name: '001-first-schema', sql: firstSchema },
@@ -16,6 +17,7 @@ const migrations = [
   { name: '005-made-and-replaced', sql: madeAndReplaced },
   { name: '006-outline-versions', sql: outlineVersions },
   { name: '008-masks', sql: masks },
+  { name: '009-jobs-by-key', sql: jobsByKey },
 ]
 
 /** Brings the database to the newest schema; answers the names of what was applied. */

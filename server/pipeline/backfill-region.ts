@@ -34,8 +34,8 @@ export async function queueBackfill(context: Context, tx: Transaction, region: {
 }
 
 /**
- * Reads the history of newly drawn outlines, newest day first, in small committed batches; the mark of progress is how
- * many views are done, so a restart goes on from there. Regions that wait for the same join in: each layer is read once
+ * Reads the history of newly drawn outlines, newest day first, in small committed batches; the mark of progress is the
+ * last whole day done, so a restart goes on from there. Regions that wait for the same join in: each layer is read once
  * for all of them. While one batch is written the next is read, and the one after it prepared.
  */
 export async function backfillRegion(context: Context, job: JobRecord): Promise<'done' | 'paused'> {
@@ -53,9 +53,12 @@ export async function backfillRegion(context: Context, job: JobRecord): Promise<
       const made = await batch.made
       await writing
       for (const [part, keys] of batch.views) part.done += keys.length
-      const marks = [...batch.views.keys()].map((part) => ({ part, done: part.done }))
+      const marks = [...batch.views].map(([part, keys]) => ({ part, done: part.done, day: keys.at(-1)!.day }))
       writing = keepViews(context, made, async (tx) => {
-        for (const { part, done } of marks) await markProgress(context, tx, part.job, done, part.keys.length)
+        for (const { part, done, day } of marks) {
+          await part.job.update({ payload: { ...part.job.payload, readTo: day } }, { transaction: tx })
+          await markProgress(context, tx, part.job, done, part.keys.length)
+        }
       }).then(() => told(context, parts))
       writing.catch(() => undefined)
       await endOthers(context, parts, writing)
@@ -146,7 +149,10 @@ async function partOf(context: Context, job: JobRecord): Promise<Part | null> {
   const region = geometry && (await context.models.regions.findByPk(geometry.regionId))
   if (!geometry || !region || region.geometryId !== geometry.id || region.retiredAt !== null) return null
   const keys = await viewsToRead(context, geometry.id, geometry)
-  const done = Math.min(job.done, keys.length)
+  // By the day, not by the number: layers may have gone or come since.
+  const readTo = job.payload['readTo']
+  const left = readTo === undefined ? 0 : keys.findIndex(({ day }) => day < Number(readTo))
+  const done = left < 0 ? keys.length : left
   return { job, region, keys, done, next: done }
 }
 

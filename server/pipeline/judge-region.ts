@@ -22,7 +22,7 @@ export async function judgeRegionJob(context: Context, job: JobRecord): Promise<
  */
 export async function judgeRegion(context: Context, ruleId: number): Promise<void> {
   const subject = await activeRule(context, ruleId)
-  if (!subject || (await isBeingRead(context, subject.geometry.id))) return
+  if (!subject || (await isBeingRead(context, subject.geometry.id, subject.feed.id))) return
   const views = await judgeableViews(context, subject.geometry.id, subject.feed.id)
   const nowDay = localSolarDay(context.clock.now(), subject.geometry.centreLongitude)
   const newest = views.reduce((day, view) => Math.max(day, view.day), -Infinity)
@@ -39,12 +39,16 @@ export async function judgeRegion(context: Context, ruleId: number): Promise<voi
   context.news.tell({ topic: 'regions', id: subject.region.id }, ...changes)
 }
 
-/** Half a history is no history: an outline is judged when the last of it has been read, which queues judging itself. */
-async function isBeingRead(context: Context, geometryId: number): Promise<boolean> {
+/**
+ * Half a history is no history: an outline, or a feed whose settings or mask changed, is judged when the last of it has been
+ * read, which queues judging itself.
+ */
+async function isBeingRead(context: Context, geometryId: number, feedId: number): Promise<boolean> {
+  const newest = (kind: string) => `SELECT max(id) FROM jobs WHERE kind = '${kind}' AND job_key =`
   const reading = await context.db.first(
     `SELECT 1 AS one FROM jobs WHERE state <> 'done' AND (total = 0 OR done < total)
-       AND id = (SELECT max(id) FROM jobs WHERE kind = 'backfill-region' AND job_key = $key)`,
-    { key: String(geometryId) },
+       AND id IN ((${newest('backfill-region')} $geometry), (${newest('backfill-feed')} $feed))`,
+    { geometry: String(geometryId), feed: String(feedId) },
   )
   return reading !== undefined
 }

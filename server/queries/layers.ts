@@ -79,9 +79,8 @@ export async function trustedAmong(context: Context, ids: readonly number[]): Pr
 }
 
 /** Every layer of a feed, the last observed first. */
-export async function layerIdsFromNewest(context: Context, feedId: number): Promise<number[]> {
-  const rows = await context.db.all<{ id: number }>('SELECT id FROM layers WHERE feed_id = $feedId ORDER BY observed_at DESC, id DESC', { feedId })
-  return rows.map((row) => row.id)
+export async function layersFromNewest(context: Context, feedId: number): Promise<{ id: number; observedAt: number }[]> {
+  return context.db.all('SELECT id, observed_at AS observedAt FROM layers WHERE feed_id = $feedId ORDER BY observed_at DESC, id DESC', { feedId })
 }
 
 export interface LayerTimes {

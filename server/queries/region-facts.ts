@@ -24,6 +24,8 @@ export interface RegionFacts {
   jobDone: number | null
   jobTotal: number | null
   jobState: HistoryState | null
+  /** Set while the history of its feed is being made anew. */
+  feedJobState: HistoryState | null
   judged: JudgedFacts | null
 }
 
@@ -54,7 +56,7 @@ export async function regionFacts(context: Context, regionId?: number): Promise<
           JOIN cell_weights w ON w.geometry_id = v.geometry_id AND w.grid_id = p.grid_id
           LEFT JOIN region_masks m ON m.geometry_id = v.geometry_id AND m.mask_id = p.mask_id
         WHERE v.geometry_id = r.geometry_id AND v.feed_id = f.id ORDER BY v.day DESC LIMIT 1) AS wholeWater,
-       a.id AS alertId, a.severity AS alertSeverity, j.done AS jobDone, j.total AS jobTotal, j.state AS jobState,
+       a.id AS alertId, a.severity AS alertSeverity, j.done AS jobDone, j.total AS jobTotal, j.state AS jobState, fj.state AS feedJobState,
        CASE WHEN s.rule_id IS NULL THEN NULL ELSE json_object('state', s.state, 'inEvent', s.in_event, 'severity', s.severity, 'day', s.day,
          'layerId', s.layer_id, 'observedAt', s.observed_at, 'coverage', s.coverage, 'value', s.value, 'usual', s.usual, 'p10', s.p10,
          'p90', s.p90, 'timesUsual', s.times_usual) END AS judged
@@ -65,6 +67,7 @@ export async function regionFacts(context: Context, regionId?: number): Promise<
      LEFT JOIN standings s ON s.rule_id = ru.id AND s.geometry_id = r.geometry_id
      LEFT JOIN alerts a ON a.region_id = r.id AND a.state <> 'closed'
      LEFT JOIN jobs j ON j.state <> 'done' AND j.id = (SELECT max(id) FROM jobs WHERE kind = 'backfill-region' AND job_key = CAST(r.geometry_id AS TEXT))
+     LEFT JOIN jobs fj ON fj.state <> 'done' AND fj.id = (SELECT max(id) FROM jobs WHERE kind = 'backfill-feed' AND job_key = CAST(f.id AS TEXT))
      WHERE r.retired_at IS NULL AND ($regionId IS NULL OR r.id = $regionId) GROUP BY r.id ORDER BY r.id`,
     { regionId: regionId ?? null, now: context.clock.now() },
   )

@@ -7,6 +7,9 @@ import { standings } from '../../../server/desk/standing'
 import { steerJob } from '../../../server/jobs/steer-job'
 import { runNextJob } from '../../../server/jobs/run-job'
 import { voidLeases } from '../../../server/jobs/queue'
+import { queueFeedBackfill } from '../../../server/pipeline/backfill-feed'
+import { markSuspect } from '../../../server/pipeline/mark-suspect'
+import { queueJudging } from '../../../server/pipeline/queue-judging'
 import { decodedFolder } from '../../../server/pipeline/decoded-layers'
 import { nextViews, type Share } from '../../../server/pipeline/backfill-order'
 import { sweepDecoded } from '../../../server/pipeline/sweep-decoded'
@@ -128,6 +131,50 @@ describe('history', () => {
     expect(await said()).toMatchObject({ progress: null })
     expect(await allSummaries()).toHaveLength(6)
     await expect(steerHistory(context, person, id, 'pause')).rejects.toMatchObject({ code: 'conflict', message: 'All of its history has been read.' })
+  })
+
+  it('that was paused goes on by the day, whatever became of the layers it had read', async () => {
+    const feed = await aFeed(context, person)
+    await send(context, await seaFile([...steps('01', 31), ...steps('03', 31), ...steps('05', 31)]))
+    await send(context, await seaFile([...steps('02', 28), ...steps('04', 30)]))
+    await runJobs(context)
+    const { id } = await draw('Here', 0)
+    const { heavy } = context.workers
+    context.workers.heavy = async (task, input, options) => {
+      if (task === 'summariseViews') await steerHistory(context, person, id, 'pause').catch(() => undefined)
+      return heavy(task, input, options)
+    }
+    await runNextJob(context)
+    context.workers.heavy = heavy
+    const job = await context.models.jobs.findOne({ where: { kind: 'backfill-region' }, rejectOnEmpty: true })
+    expect(job).toMatchObject({ state: 'paused', done: 128 })
+    const newest = await context.db.all<{ id: number }>('SELECT id FROM layers ORDER BY observed_at DESC LIMIT 3')
+    for (const layer of newest) await markSuspect(context, person, layer.id, { suspect: true, note: 'stripes' })
+    await steerHistory(context, person, id, 'go-on')
+    await runJobs(context)
+    const read = await context.db.first<{ n: number }>('SELECT COUNT(*) AS n FROM summaries WHERE feed_id = $feedId', { feedId: feed.id })
+    expect(read).toEqual({ n: 148 })
+  })
+
+  it('of a feed that is being made anew is not judged, and its regions say so', async () => {
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person)
+    await send(context, await seaFile(steps('05', 6)))
+    await runJobs(context)
+    const said = async () => (await standings(context, region.id)).get(region.id)!.because
+    const before = await said()
+    await context.db.write((tx) => queueFeedBackfill(context, tx, feed))
+    await context.db.write((tx) => queueJudging(context, tx, { feedId: feed.id }))
+    await runNextJob(context)
+    expect(await said()).toBe(`The history of ${feed.name} is being made anew.`)
+    const judgedAt = () => context.db.first('SELECT judged_at AS at FROM standings')
+    const judged = await judgedAt()
+    context.clock.pass(60_000)
+    await runNextJob(context)
+    expect(await judgedAt()).toEqual(judged)
+    await runJobs(context)
+    expect(await judgedAt()).not.toEqual(judged)
+    expect(await said()).toBe(before)
   })
 
   it('goes on from its last mark after the process was killed in the middle', async () => {
