@@ -130,12 +130,17 @@ async function figuresOf(context: Context, feed: FeedRecord, views: readonly Vie
 
 async function rowsOf(context: Context, views: readonly View[], figures: readonly ViewFigures[], masks: ReadonlyMap<number, KnownMask>): Promise<SummaryRow[]> {
   const rows: SummaryRow[] = []
+  const provenances = new Map<string, number>()
   for (const [i, view] of views.entries()) {
     const first = view.layers[0]!
     const maskId = masks.get(view.gridId)!.id
     const processingVersion = view.layers.map((layer) => layer.processingVersion).reduce((a, b) => (compareVersions(a, b) >= 0 ? a : b))
     const { maxCell } = figures[i]!
     const [maxLon, maxLat] = maxCell === null ? [null, null] : cellCentre(await gridOf(context, view.gridId), maxCell)
+    const formula = recipeText(first.recipe)
+    const kind = `${view.gridId}:${maskId}:${processingVersion}:${formula}`
+    const provenanceId = provenances.get(kind) ?? (await provenanceFor(context, { gridId: view.gridId, maskId, processingVersion, formula }))
+    provenances.set(kind, provenanceId)
     rows.push({
       geometryId: view.geometryId,
       feedId: view.feedId,
@@ -146,7 +151,7 @@ async function rowsOf(context: Context, views: readonly View[], figures: readonl
       layerIds: view.layers.map((layer) => layer.id),
       observedAt: first.observedAt,
       endsAt: view.layers.reduce<number | null>((end, layer) => (layer.endsAt === null ? end : Math.max(end ?? 0, layer.endsAt)), null),
-      provenanceId: await provenanceFor(context, { gridId: view.gridId, maskId, processingVersion, formula: recipeText(first.recipe) }),
+      provenanceId,
     })
   }
   return rows

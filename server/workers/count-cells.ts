@@ -53,7 +53,6 @@ async function addValid(layer: LayerPlace, tiles: readonly number[], first: read
       if (Number.isFinite(values[cell])) water[to]!++
     }
   }
-  await read.kept
 }
 
 async function addLand(layer: LayerPlace, tiles: readonly number[], first: readonly number[], { water, known }: CellCounts): Promise<void> {

@@ -3,7 +3,6 @@ import type { GridWindow } from '../../shared/science/grid'
 import { openPack, writePack, type OpenPack } from '../grids/decoded/pack-file'
 import { packTile, tileBox, tileCount, type PackShape, type PackedTile, type TileCells } from '../grids/decoded/tile-pack'
 import { tileRectangles } from '../grids/decoded/tile-rectangles'
-import { pendingPacks } from './pending-packs'
 import { readMasked, type MaskedValues } from './read-masked'
 import type { LayerPlace } from './tasks'
 
@@ -12,8 +11,6 @@ export interface LayerTiles {
   shape: PackShape
   reasons: string[]
   tiles: Map<number, TileCells>
-  /** Done when what was decoded is in the pack; the next layer may be read meanwhile. */
-  kept?: Promise<void>
 }
 
 /** Grids up to here are decoded whole when they are first read; of larger ones only what somebody watches. */
@@ -44,14 +41,12 @@ export async function readTiles(layer: LayerPlace, wanted: readonly number[], ke
 
 /** Decodes layers that nobody watches yet, so that a region drawn later finds them; very large ones wait for it. */
 export async function decodeLayers({ layers }: { layers: readonly LayerPlace[] }): Promise<void> {
-  const pending = pendingPacks()
   for (const layer of layers) {
     const [cells, tiles] = [layer.rows * layer.columns, [...Array(tileCount(layer)).keys()]]
     if (cells <= wholeGridCells && layer.pack !== null && !decodedTiles(layer, tiles.slice(0, 1))) {
-      await pending.add((await readTiles(layer, tiles, true)).kept)
+      await readTiles(layer, tiles, true)
     }
   }
-  await pending.all()
 }
 
 /** The wanted tiles where all of them have been decoded before; else null, and nothing was read. */
@@ -94,19 +89,16 @@ async function decode(layer: LayerPlace, known: LayerTiles, missing: readonly nu
       known.tiles.set(tile, cells)
     }
   }
-  if (keeping) known.kept = keepTiles(layer.pack!, known, added, pack)
+  if (keeping) keepTiles(layer.pack!, known, added, pack)
 }
 
-function keepTiles(path: string, { shape, reasons }: LayerTiles, added: Map<number, PackedTile>, pack: OpenPack | null): Promise<void> {
+function keepTiles(path: string, { shape, reasons }: LayerTiles, added: Map<number, PackedTile>, pack: OpenPack | null): void {
   const tiles = new Map<number, PackedTile>()
   for (let tile = 0; tile < tileCount(shape); tile++) {
     const packed = added.get(tile) ?? (pack?.has(tile) ? pack.packed(tile) : undefined)
     if (packed) tiles.set(tile, packed)
   }
-  const kept = writePack(path, { ...shape, reasons }, tiles)
-  // Whoever waits for it hears of a failure; until then it is nobody's.
-  kept.catch(() => undefined)
-  return kept
+  writePack(path, { ...shape, reasons }, tiles)
 }
 
 function cutTile({ values, hidden }: MaskedValues, window: GridWindow, box: GridWindow, reasons: string[]): TileCells {

@@ -3,7 +3,6 @@ import { packHistogram } from '../../shared/science/histogram'
 import { outlineOf, waterOf, type RegionOutline } from '../../shared/science/region-outline'
 import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-water'
 import { maskedAreas } from './masked-areas'
-import { pendingPacks } from './pending-packs'
 import { readTiles } from './read-tiles'
 import { planOf, type RegionPlan } from './region-cells'
 import type { RegionCellWeights, Tasks, ViewFigures } from './tasks'
@@ -31,13 +30,11 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
   const figures: ViewFigures[] = new Array(input.views.length)
   const users = viewsOfLayers(input)
   const cellsOfView = new Map<number, RegionLayer[]>()
-  const pending = pendingPacks()
   for (const [at, layer] of input.layers.entries()) {
     const ofLayer = users[at]!.map((view) => regions[input.views[view]!.weights]!)
     const wanted = new Set(ofLayer.flatMap(({ plan }) => plan.tiles))
     if (wanted.size === 0) continue
     const tiles = await readTiles(layer, [...wanted], true)
-    await pending.add(tiles.kept)
     for (const [i, view] of users[at]!.entries()) {
       const region = ofLayer[i]!
       const collected = cellsOfView.get(view) ?? []
@@ -50,7 +47,6 @@ export async function summariseViews(input: Input): Promise<ViewFigures[]> {
       cellsOfView.delete(view)
     }
   }
-  await pending.all()
   return figures
 }
 

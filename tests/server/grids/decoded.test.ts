@@ -42,24 +42,24 @@ describe('a pack', () => {
     const { rows, columns } = tileBox(shape, tile)
     return { values: Float64Array.from({ length: rows * columns }, (_, i) => tile + i / 4096), reasons: null }
   }
-  const write = async (name: string) => {
+  const write = (name: string) => {
     const path = join(folder, name)
-    await writePack(path, header, new Map([0, 1, 4, 5].map((tile) => [tile, packTile(cells(tile))])))
+    writePack(path, header, new Map([0, 1, 4, 5].map((tile) => [tile, packTile(cells(tile))])))
     return path
   }
 
-  it('answers each tile alone, cut off at the edge of the grid, and knows which it has not', async () => {
+  it('answers each tile alone, cut off at the edge of the grid, and knows which it has not', () => {
     expect(tileCount(shape)).toBe(6)
     expect(tileBox(shape, 5)).toEqual({ row: 128, column: 64, rows: 2, columns: 6 })
-    const pack = openPack(await write('whole'), shape)!
+    const pack = openPack(write('whole'), shape)!
     for (const tile of [0, 1, 4, 5]) expect(pack.cells(tile).values).toEqual(cells(tile).values)
     expect([2, 3].map((tile) => pack.has(tile))).toEqual([false, false])
     expect(pack.header).toEqual(header)
     pack.close()
   })
 
-  it('of another grid, cut short, or with another byte anywhere, is not taken for good', async () => {
-    const path = await write('hurt')
+  it('of another grid, cut short, or with another byte anywhere, is not taken for good', () => {
+    const path = write('hurt')
     const good = readFileSync(path)
     expect(openPack(path, { rows: 130, columns: 71 })).toBeNull()
     expect(openPack(join(folder, 'none'), shape)).toBeNull()
