@@ -16,6 +16,13 @@ export function changesReading(feed: FeedRow, change: Change): boolean {
   return readingSettings.some((name) => change[name] !== undefined && JSON.stringify(change[name]) !== JSON.stringify(feed[name]))
 }
 
+/** Settings by which files find their feed: what waits may fit now. */
+const matchingSettings = ['fileNamePattern', 'fileUnit', 'storedLog10', 'retired'] as const
+
+export function changesMatching(before: FeedRow, after: FeedRow): boolean {
+  return matchingSettings.some((name) => before[name] !== after[name])
+}
+
 /** Refuses a unit of the file that Offing cannot bring to the feed's, and a valid range turned round. */
 export function checkReading({ fileUnit, unit, validMin, validMax }: Pick<FeedRow, 'fileUnit' | 'unit' | 'validMin' | 'validMax'>): void {
   if (fileUnit !== null && unitFactor(fileUnit, unit) === null) {

@@ -8,7 +8,7 @@ import type { Transaction } from '../db'
 import type { FeedRecord } from '../models/feed'
 import { queueFeedBackfill } from './backfill-feed'
 import { derivedFields } from './derived-feed'
-import { changesReading, checkReading } from './feed-reading'
+import { changesMatching, changesReading, checkReading } from './feed-reading'
 import { queueJudging } from './queue-judging'
 import { queueFile } from './receive-file'
 
@@ -76,12 +76,20 @@ export async function createFeedsOfFile(context: Context, person: Person, fileId
 
 async function addFeed(context: Context, tx: Transaction, person: Person, fields: Omit<NewFeed, 'fileId'>, fileId: number | null): Promise<FeedRecord> {
   await freeName(context, tx, fields.name)
-  const known = fields.derivedFrom === undefined ? feedFields.parse(fields) : await derivedFields(context, tx, { ...fields, derivedFrom: fields.derivedFrom })
+  const known = fields.derivedFrom === undefined ? await withFileUnit(context, tx, feedFields.parse(fields), fileId) : await derivedFields(context, tx, { ...fields, derivedFrom: fields.derivedFrom })
   checkReading(known)
   const record = await context.models.feeds.create({ ...known, retired: false, createdAt: context.clock.now() }, { transaction: tx })
   if (record.derivedFrom !== null && record.derivedFrom !== undefined) await queueFeedBackfill(context, tx, record)
   await audit(context, tx, { userId: person.id, action: 'feed:create', subject: `feed ${record.id}`, details: { name: fields.name, fileId } })
   return record
+}
+
+/** Confirmed from a file that names no unit, a feed says the unit of its files' numbers too: that person looked at them. */
+async function withFileUnit(context: Context, tx: Transaction, fields: FeedProposal, fileId: number | null): Promise<FeedProposal> {
+  if (fileId === null || fields.fileUnit !== null) return fields
+  const file = await context.models.files.findByPk(fileId, { transaction: tx })
+  const variable = file?.report?.variables.find(({ name }) => name === fields.variable)
+  return variable?.unit === null ? { ...fields, fileUnit: fields.unit } : fields
 }
 
 async function requeueWaiting(context: Context, tx: Transaction, fileId?: number): Promise<void> {
@@ -98,13 +106,15 @@ export async function changeFeed(context: Context, person: Person, id: number, {
     checkReading({ ...record.get({ plain: true }), ...definedOf(change) })
     const rereads = changesReading(record, change)
     const rejudges = change.gapFilled !== undefined && change.gapFilled !== record.gapFilled
+    const before = record.get({ plain: true })
     await record.update({ ...change, version: version + 1 }, { transaction: tx })
     if (rereads) await queueFeedBackfill(context, tx, record)
     if (rejudges) await queueJudging(context, tx, { feedId: id })
+    if (changesMatching(before, record)) await requeueWaiting(context, tx)
     await audit(context, tx, { userId: person.id, action: 'feed:change', subject: `feed ${id}`, details: { ...change } })
     return record
   })
-  context.news.tell({ topic: 'feeds', id })
+  context.news.tell({ topic: 'feeds', id }, { topic: 'files' })
   context.wake()
   return feed
 }

@@ -2,6 +2,7 @@ import type { FeedRow } from '../models/feed'
 import type { FileRow } from '../models/file'
 import type { LayerTime } from '../grids/grid-source'
 import { LayerRefused } from '../grids/layer-refused'
+import { wavelengthInName } from '../grids/read/quantity'
 import type { Seen, SeenVariable } from '../workers/inspect-file'
 import { dateInName, fitsPattern } from './file-name-pattern'
 
@@ -24,6 +25,8 @@ export type Matching = { matches: FeedMatch[] } | { waitingFor: string; missed: 
 
 const mostMissed = 50
 
+export const fitsNoFeed = 'It fits no feed yet. Confirm the proposal, or say which feed it belongs to.'
+
 type Asked = Pick<FileRow, 'name' | 'feedId' | 'observedAt' | 'origin'>
 
 /** Which feeds a file serves. A file said to belong to a feed serves that one, or is refused with the reason. */
@@ -32,13 +35,12 @@ export function matchFeeds(seen: Seen, feeds: readonly FeedRow[], file: Asked): 
   if (file.feedId !== null) return matchNamed(seen, active, file)
   const byPattern = active.filter((feed) => feed.fileNamePattern !== null && fitsPattern(feed.fileNamePattern, file.name))
   const candidates = byPattern.length > 0 ? byPattern : active.filter((feed) => feed.fileNamePattern === null)
-  const pairs = candidates.flatMap((feed) => {
-    const variable = variableFor(feed, seen, byPattern.length > 0)
-    return variable ? [{ feed, variable }] : []
-  })
-  if (pairs.length === 0) {
+  const fits = candidates.flatMap((feed) => fitOf(feed, seen, byPattern.length > 0) ?? [])
+  const pairs = fits.filter((fit) => !fit.unitless)
+  const unitless = fits.find((fit) => fit.unitless && !pairs.some((pair) => pair.variable === fit.variable))
+  if (unitless || pairs.length === 0) {
     const missed = active.slice(0, mostMissed).map((feed) => missOf(feed, seen, file, byPattern))
-    return { waitingFor: 'It fits no feed yet. Confirm the proposal, or say which feed it belongs to.', missed }
+    return { waitingFor: unitless ? saysNoUnit(unitless) : fitsNoFeed, missed }
   }
   const twice = pairs.find((pair) => pairs.some((other) => other !== pair && other.variable === pair.variable))
   if (twice) {
@@ -51,8 +53,8 @@ export function matchFeeds(seen: Seen, feeds: readonly FeedRow[], file: Asked): 
 function matchNamed(seen: Seen, feeds: readonly FeedRow[], file: Asked): Matching {
   const feed = feeds.find((one) => one.id === file.feedId)
   if (!feed) throw new LayerRefused('not-this-feed', 'The feed it was sent to is retired, derived or gone.', { feedId: file.feedId })
-  const variable = variableFor(feed, seen, true)
-  if (!variable) {
+  const fit = fitOf(feed, seen, true)
+  if (!fit) {
     const found = seen.variables.map((one) => `${one.name}${one.unit ? ` (${one.unit})` : ''}`)
     throw new LayerRefused(
       'not-this-feed',
@@ -60,7 +62,7 @@ function matchNamed(seen: Seen, feeds: readonly FeedRow[], file: Asked): Matchin
       { feedId: feed.id, variables: found },
     )
   }
-  return timed([{ feed, variable }], file)
+  return fit.unitless ? { waitingFor: saysNoUnit(fit), missed: null } : timed([fit], file)
 }
 
 function missOf(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly FeedRow[]): Miss {
@@ -71,8 +73,8 @@ function whyMissed(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly F
   const { fileNamePattern, unit, variable } = feed
   const named = fileNamePattern !== null && !byPattern.includes(feed)
   const found = seen.variables.find((one) => one.name === variable)
-  const fits = variableFor(feed, seen, named || byPattern.length > 0) !== null
-  const reads = fits ? null : `reads ${inUnit(variable, unit)}; this file has ${found ? inUnit(found.name, found.unit) : heldWords(feed, seen)}.`
+  const fit = fitOf(feed, seen, named || byPattern.length > 0)
+  const reads = fit && !fit.unitless ? null : `reads ${inUnit(variable, unit)}; this file has ${found ? inUnit(found.name, found.unit) : heldWords(feed, seen)}.`
   if (named) return `takes files named ${fileNamePattern}, and ${file.name} is not.${reads === null ? '' : ` It ${reads}`}`
   return reads ?? `reads ${inUnit(variable, unit)}, but the name of this file fits the pattern of another feed.`
 }
@@ -88,13 +90,39 @@ function heldWords(feed: FeedRow, { variables }: Seen): string {
 
 const inUnit = (name: string, unit: string | null): string => (unit === null ? `${name} without a unit` : `${name} in ${unit}`)
 
+interface Fit {
+  feed: FeedRow
+  variable: SeenVariable
+  /** Neither the file nor the feed says the unit of its numbers: they may not be taken for the feed's. */
+  unitless: boolean
+}
+
+const saysNoUnit = ({ feed, variable }: Fit): string =>
+  `${variable.name} may be meant for the feed ${feed.name}, but its numbers have no unit; say the unit of the file’s numbers on the feed.`
+
 /** The variable of a feed; where the name says nothing (a band of a picture) a lone variable of a fitting unit serves. */
-function variableFor(feed: FeedRow, seen: Seen, lone: boolean): SeenVariable | null {
-  const sameUnit = (variable: SeenVariable) => variable.unit === feed.unit || variable.unit === null
-  const named = seen.variables.find((variable) => variable.name === feed.variable && sameUnit(variable))
-  if (named) return named
-  const fitting = seen.variables.filter((variable) => (variable.quantity === feed.quantity || seen.variables.length === 1) && sameUnit(variable))
-  return lone && fitting.length === 1 ? fitting[0]! : null
+function fitOf(feed: FeedRow, seen: Seen, lone: boolean): Fit | null {
+  const may = seen.variables.filter((variable) => mayServe(feed, variable))
+  const named = may.find((variable) => variable.name === feed.variable)
+  const alone = (variable: SeenVariable) => seen.variables.length === 1 || (variable.quantity !== 'other' && variable.quantity === feed.quantity)
+  const fitting = named ? [named] : lone ? may.filter((variable) => alone(variable) && sameNumbers(feed, variable)) : []
+  const [variable] = fitting
+  if (!variable || fitting.length > 1) return null
+  return { feed, variable, unitless: variable.unit === null && feed.unit !== null && feed.fileUnit === null }
+}
+
+/** What tells of another variable serves only a feed made of that very variable; what is known to be something else, none. */
+function mayServe(feed: FeedRow, { name, unit, quantity, wavelengthNm, tellsOfAnother }: SeenVariable): boolean {
+  if (unit !== null && unit !== feed.unit) return false
+  if (tellsOfAnother && (feed.quantity !== 'other' || name !== feed.variable)) return false
+  if (quantity !== 'other' && quantity !== feed.quantity) return false
+  const wanted = quantity === 'reflectance' ? wavelengthInName(feed.variable) : null
+  return wanted === null || wavelengthNm === null || wanted === wavelengthNm
+}
+
+/** That numbers are logarithms was said of the feed's own variable: under another name, a unit that is plain says otherwise. */
+function sameNumbers({ storedLog10 }: FeedRow, { unit, isLog10 }: SeenVariable): boolean {
+  return !storedLog10 || isLog10 || unit === null
 }
 
 function timed(pairs: { feed: FeedRow; variable: SeenVariable }[], file: Asked): Matching {

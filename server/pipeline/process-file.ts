@@ -8,7 +8,7 @@ import { addLayers, keepGrids } from './add-layers'
 import { deriveFrom, type DerivedShare } from './derive-from'
 import { noteQuality } from './feed-reading'
 import { ensureFirstRule, regionsWithoutRule } from './first-rule'
-import { matchFeeds, type FeedMatch, type Matching } from './match-feeds'
+import { fitsNoFeed, matchFeeds, type FeedMatch, type Matching } from './match-feeds'
 import { proposeFeeds } from './propose-feed'
 import { queueJudging } from './queue-judging'
 import { refuseFile } from './refuse-file'
@@ -97,7 +97,7 @@ async function letWait(context: Context, file: FileRecord, seen: Seen, waiting: 
   const variables = seen.report.variables.map((variable, i) => ({ ...variable, gridId: gridIds[seen.variables[i]!.grid]! }))
   await setStatus(context, file, {
     status: 'waiting',
-    waitingFor: unknown && !proposed ? nothingToPropose(seen) : waiting.waitingFor,
+    waitingFor: unknown && !proposed && waiting.waitingFor === fitsNoFeed ? nothingToPropose(seen) : waiting.waitingFor,
     report: { ...seen.report, variables, feeds: [], missed: waiting.missed ?? [], others: proposed?.others ?? [] },
     proposal: proposed?.proposal ?? null,
   })

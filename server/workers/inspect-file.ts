@@ -1,4 +1,5 @@
 import { inspectSource, type InspectReport } from '../grids/inspect'
+import { saysLogarithm } from '../grids/read/quantity'
 import { describeGrid } from '../grids/describe-grid'
 import { encodeGrid, gridFingerprint } from '../grids/grid-text'
 import type { GridVariable, LayerTime } from '../grids/grid-source'
@@ -24,6 +25,8 @@ export interface SeenVariable {
   quantity: GridVariable['quantity']
   unit: string | null
   wavelengthNm: number | null
+  /** Stored as base-10 logarithms, by what the file says. */
+  isLog10: boolean
   /** It is the error, bias, uncertainty, count or flags of another variable. */
   tellsOfAnother: boolean
   /** Position in `grids`. */
@@ -57,7 +60,7 @@ export async function inspectFile({ path, fileName }: Tasks['inspectFile']['inpu
       }
       const { name, longName, quantity, unit, wavelengthNm, times } = variable
       const { flags, gapFilled, tellsOfAnother } = report.variables[i]!
-      return { name, longName, quantity, unit, wavelengthNm, tellsOfAnother, grid, times, flagMeanings: nameable(flags), gapFilled }
+      return { name, longName, quantity, unit, wavelengthNm, isLog10: saysLogarithm(variable), tellsOfAnother, grid, times, flagMeanings: nameable(flags), gapFilled }
     })
     const attribute = (name: string) => {
       const value = source.globalAttributes[name]

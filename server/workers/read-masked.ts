@@ -5,6 +5,7 @@ import { formulaOf } from '../../shared/science/optics/formulas'
 import { cellsWith, type FlagMeaning } from '../grids/flags'
 import type { GridSource, GridVariable } from '../grids/grid-source'
 import { LayerRefused } from '../grids/layer-refused'
+import { saysLogarithm } from '../grids/read/quantity'
 import { unitFactor } from '../grids/unit-factor'
 import { forgetSource, sourceOf } from './open-sources'
 import type { LayerPlace, StoredValues, ValueReading } from './tasks'
@@ -54,7 +55,7 @@ async function storedValues(layer: StoredValues, reading: ValueReading, window: 
 
 /** What the feed says of its numbers counts where the file itself says nothing. */
 function convert(values: Float64Array, variable: GridVariable, { storedLog10, fileUnit, unit }: ValueReading): void {
-  const isLog10 = storedLog10 && !/logarithm/.test(variable.conversion ?? '')
+  const isLog10 = storedLog10 && !saysLogarithm(variable)
   const factor = (variable.fileUnit === null && fileUnit !== null ? unitFactor(fileUnit, unit) : null) ?? 1
   if (!isLog10 && factor === 1) return
   for (let cell = 0; cell < values.length; cell++) values[cell] = (isLog10 ? 10 ** values[cell]! : values[cell]!) * factor

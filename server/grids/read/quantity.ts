@@ -105,12 +105,21 @@ function chlorophyll(variable: Named, other: Meaning): Meaning {
 }
 
 function reflectanceWavelength({ name, standardName, wavelengthAttribute }: Named): number | null {
-  const fromName = /^rrs_?(\d{3,4}(?:[._]\d+)?)(?:_(?:mean|avg|average|median))?$/i.exec(baseName(name))
-  if (fromName) return Number(fromName[1]!.replace('_', '.'))
+  const fromName = wavelengthInName(name)
+  if (fromName !== null) return fromName
   if (standardName !== reflectanceStandardName) return null
   const anywhere = /(?:^|[^\d])(\d{3,4})(?:[^\d]|$)/.exec(baseName(name))
   return wavelengthAttribute ?? (anywhere ? Number(anywhere[1]) : null)
 }
+
+/** The wavelength in nm that the name of a reflectance says, as Rrs_443 does. */
+export function wavelengthInName(name: string): number | null {
+  const match = /^rrs_?(\d{3,4}(?:[._]\d+)?)(?:_(?:mean|avg|average|median))?$/i.exec(baseName(name))
+  return match ? Number(match[1]!.replace('_', '.')) : null
+}
+
+/** True where the file itself says that a variable is stored as logarithms; its values are turned back as they are read. */
+export const saysLogarithm = ({ conversion }: Pick<GridVariable, 'conversion'>): boolean => conversion !== null && conversion.includes('logarithm')
 
 function notConvertible({ name, fileUnit }: Named, what: string): string {
   return fileUnit === null

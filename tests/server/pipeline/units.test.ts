@@ -1,0 +1,138 @@
+import { join } from 'node:path'
+import { afterAll, afterEach, beforeEach, describe, expect, it } from 'vitest'
+import type { Person } from '../../../server/accounts/person'
+import { writeGeotiff } from '../../../server/grids/write/geotiff'
+import { writeNetcdf4 } from '../../../server/grids/write/netcdf4'
+import type { FileRecord } from '../../../server/models/file'
+import { changeFeed, createFeed } from '../../../server/pipeline/feeds'
+import type { Arrival } from '../../../server/pipeline/receive-file'
+import { newFeed } from '../../../shared/schemas/feeds'
+import { aFeed, aPerson, aRegion, cleanSea, runJobs, sea, seaFolder, send } from '../../support/sea'
+import { regionSeries } from '../../../server/desk/region-series'
+import { createTestContext, type TestContext } from '../../support/test-context'
+
+let context: TestContext
+let person: Person
+beforeEach(async () => {
+  context = await createTestContext({ at: new Date('2026-06-11T15:00:00Z') })
+  person = await aPerson(context)
+})
+afterEach(() => context.close())
+afterAll(cleanSea)
+
+type Held = Record<string, { units?: string; long_name?: string; standard_name?: string }>
+
+async function fileOf(held: Held, { value = 2, name = 'sea-20260610.nc' } = {}): Promise<string> {
+  const path = join(await seaFolder(), name)
+  await writeNetcdf4(path, {
+    latitudes: sea.latitudes,
+    longitudes: sea.longitudes,
+    times: [Date.parse('2026-06-10T12:00:00Z')],
+    variables: Object.entries(held).map(([variable, attributes]) => ({ name: variable, dtype: 'f4', data: new Float64Array(sea.cells).fill(value), attributes: { ...attributes } })),
+    globalAttributes: { processing_version: 'R1' },
+    deflate: 1,
+  })
+  return path
+}
+
+async function taken(path: string, wish: Partial<Arrival> = {}): Promise<FileRecord> {
+  const file = await send(context, path, wish)
+  await runJobs(context)
+  return file.reload()
+}
+
+const pattern = { fileNamePattern: 'sea-{yyyy}{MM}{dd}.nc' }
+const noUnit = (variable: string) => `${variable} may be meant for the feed Chlorophyll, but its numbers have no unit; say the unit of the file’s numbers on the feed.`
+
+describe('a lone variable of another name', () => {
+  it.each([
+    [{ chlor_a_rmsd: { units: 'mg m-3' } }],
+    [{ chlor_a_bias: {} }],
+    [{ Rrs_443: { units: 'sr-1' } }],
+  ] as [Held][])('that is known not to be the feed’s is not taken by the name of the file: %j', async (held) => {
+    await aFeed(context, person, { ...pattern, fileUnit: 'mg m-3' })
+    const file = await taken(await fileOf(held))
+    expect(file.status).toBe('waiting')
+    expect(await context.models.layers.count()).toBe(0)
+  })
+
+  it('is refused where the file was sent to the feed and holds the error of another variable', async () => {
+    const feed = await aFeed(context, person)
+    const file = await taken(await fileOf({ chlor_a_rmsd: { units: 'mg m-3' } }), { feedId: feed.id })
+    expect(file).toMatchObject({ status: 'refused', refusal: { code: 'not-this-feed' } })
+  })
+
+  it.each(['by its pattern', 'by its number'])('waits without a unit until the feed, found %s, says the unit of its files', async (how) => {
+    const feed = await aFeed(context, person, pattern)
+    const file = await taken(await fileOf({ sst: {} }), how === 'by its number' ? { feedId: feed.id } : {})
+    expect(file).toMatchObject({ status: 'waiting', waitingFor: noUnit('sst') })
+    expect(await context.models.layers.count()).toBe(0)
+  })
+
+  it('is taken without a unit where the feed says the unit of its files', async () => {
+    await aFeed(context, person, { ...pattern, fileUnit: 'mg m-3' })
+    expect((await taken(await fileOf({ green: {} }))).status).toBe('processed')
+  })
+
+  it('is not taken for logarithms because those of the feed are', async () => {
+    await aFeed(context, person, { ...pattern, variable: 'log10_chl', storedLog10: true })
+    expect((await taken(await fileOf({ chl: { units: 'mg m-3' } }))).status).toBe('waiting')
+  })
+
+  it('is not taken for a band of another wavelength', async () => {
+    const feed = await aFeed(context, person, { quantity: 'reflectance', variable: 'Rrs_443', unit: 'sr-1', scale: 'linear' })
+    expect((await taken(await fileOf({ Rrs_555: { units: 'sr-1' } }), { feedId: feed.id })).status).toBe('refused')
+  })
+})
+
+describe('a variable of the feed’s own name without a unit', () => {
+  it('waits until the feed says the unit of its files, though another of the file serves a feed', async () => {
+    await aFeed(context, person)
+    await aFeed(context, person, { name: 'Warmth', quantity: 'other', variable: 'sst', unit: 'K', scale: 'linear' })
+    const file = await taken(await fileOf({ chlor_a: {}, sst: { units: 'K' } }))
+    expect(file).toMatchObject({ status: 'waiting', waitingFor: noUnit('chlor_a') })
+    expect(await context.models.layers.count()).toBe(0)
+  })
+
+  it('is taken by a feed that has no unit', async () => {
+    await aFeed(context, person, { quantity: 'other', variable: 'turbidity', unit: null, scale: 'linear' })
+    expect((await taken(await fileOf({ turbidity: {} }))).status).toBe('processed')
+  })
+
+  it('is taken by a feed confirmed from such a file: that says the unit, and goes for the next picture too', async () => {
+    const picture = async (day: string) => {
+      const path = join(await seaFolder(), `chl_${day}.tif`)
+      await writeGeotiff(path, { rows: 10, columns: 10, west: -12, north: 51, lonStep: 0.1, latStep: 0.1, values: new Float64Array(100).fill(Number(day.slice(-2))) })
+      return path
+    }
+    const first = await taken(await picture('20260609'))
+    expect(first.proposal).toMatchObject({ variable: 'band 1', unit: null, fileNamePattern: 'chl_{yyyy}{MM}{dd}.tif' })
+    const feed = await createFeed(context, person, newFeed.parse({ ...first.proposal, name: 'Pictures', quantity: 'chlorophyll', unit: 'mg m-3', scale: 'log10', fileId: first.id }))
+    expect(feed.fileUnit).toBe('mg m-3')
+    await runJobs(context)
+    expect((await first.reload()).status).toBe('processed')
+    expect((await taken(await picture('20260610'))).status).toBe('processed')
+  })
+})
+
+describe('a feed that is changed', () => {
+  it('takes the waiting files whose name fits its new pattern', async () => {
+    const feed = await aFeed(context, person, { fileNamePattern: 'other-{yyyy}{MM}{dd}.nc' })
+    const file = await taken(await fileOf({ chlor_a: { units: 'mg m-3' } }))
+    expect(file.status).toBe('waiting')
+    await changeFeed(context, person, feed.id, { version: feed.version, ...pattern })
+    await runJobs(context)
+    expect((await file.reload()).status).toBe('processed')
+  })
+
+  it('takes the waiting files whose unit it says now, each number in that unit', async () => {
+    const feed = await aFeed(context, person)
+    const region = await aRegion(context, person)
+    const file = await taken(await fileOf({ chlor_a: {} }, { value: 0.000002 }))
+    expect(file.status).toBe('waiting')
+    await changeFeed(context, person, feed.id, { version: feed.version, fileUnit: 'kg m-3' })
+    await runJobs(context)
+    expect((await file.reload()).status).toBe('processed')
+    expect((await regionSeries(context, region.id, { feedId: feed.id, columns: 'day,median' })).columns.median![0]).toBeCloseTo(2, 6)
+  })
+})
