@@ -74,7 +74,9 @@ function whyMissed(feed: FeedRow, seen: Seen, file: Asked, byPattern: readonly F
   const named = fileNamePattern !== null && !byPattern.includes(feed)
   const found = seen.variables.find((one) => one.name === variable)
   const fit = fitOf(feed, seen, named || byPattern.length > 0)
-  const reads = fit && !fit.unitless ? null : `reads ${inUnit(variable, unit)}; this file has ${found ? inUnit(found.name, found.unit) : heldWords(feed, seen)}.`
+  const held = found ? inUnit(found.name, found.unit) : heldWords(feed, seen)
+  const advice = fit?.unitless ? ' Say the unit of the file’s numbers on the feed.' : ''
+  const reads = fit && !fit.unitless ? null : `reads ${inUnit(variable, unit)}; this file has ${held}.${advice}`
   if (named) return `takes files named ${fileNamePattern}, and ${file.name} is not.${reads === null ? '' : ` It ${reads}`}`
   return reads ?? `reads ${inUnit(variable, unit)}, but the name of this file fits the pattern of another feed.`
 }

@@ -53,7 +53,7 @@ function proposalOf(variable: SeenVariable, label: string, seen: Seen, fileName:
     hiddenFlags: proposeHiddenFlags(variable.flagMeanings),
     flagMeanings: variable.flagMeanings,
     gapFilled: variable.gapFilled === 'unmarked',
-    storedLog10: false,
+    storedLog10: variable.isLog10,
     fileUnit: null,
     silentAfterHours: cadence === 'daily' ? 72 : cadence === '8-day' ? 24 * 20 : 24 * 70,
   }

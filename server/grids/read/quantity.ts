@@ -1,5 +1,5 @@
 import type { GridVariable } from '../grid-source'
-import { insideLog10, isPerSteradian, milligramsPerCubicMetre } from './units'
+import { insideLog10, isBare, isPerSteradian, milligramsPerCubicMetre } from './units'
 
 export interface Named {
   name: string
@@ -20,7 +20,7 @@ export interface Meaning extends Pick<GridVariable, 'quantity' | 'wavelengthNm' 
 const chlorophyllStandardName =
   /^(mass_)?concentration_of_chlorophyll(_a)?_in_sea_water$|^chlorophyll_concentration_in_sea_water$/
 const chlorophyllName =
-  /^(log_?10_?)?(chl|chla|chl_a|chlor_a|chlora|chlorophyll|chlorophyll_?a|chl[12])(_(mean|avg|average|median|gm|oc\w*|oci|nn|conc|concentration|surface|log10))*$/
+  /^(log_?10_?|lg_?)?(chl|chla|chl_a|chlor_a|chlora|chlorophyll|chlorophyll_?a|chl[12])(_(mean|avg|average|median|gm|oc\w*|oci|nn|conc|concentration|surface|log_?10|lg))*$/
 const reflectanceStandardName =
   'surface_ratio_of_upwelling_radiance_emerging_from_sea_water_to_downwelling_radiative_flux_in_air'
 
@@ -79,8 +79,18 @@ function isChlorophyll({ name, standardName }: Named): boolean {
 
 function chlorophyll(variable: Named, other: Meaning): Meaning {
   const { fileUnit, name, longName } = variable
-  const saysLog10 = /log_?10/i.test(name) || (/log_?10|base[- ]?10/i.test(longName ?? '') && !/not log/i.test(longName ?? ''))
+  const saysLog10 = /log_?10|^lg_?|_lg(_|$)/i.test(baseName(name)) || (/log_?10|base[- ]?10/i.test(longName ?? '') && !/not log/i.test(longName ?? ''))
   const inside = fileUnit === null ? null : insideLog10(fileUnit)
+  if (saysLog10 && (fileUnit === null || inside === '' || isBare(fileUnit))) {
+    return {
+      ...other,
+      quantity: 'chlorophyll',
+      unit: 'mg m-3',
+      log10: true,
+      note: 'stored as base-10 logarithm, of mg m-3',
+      warning: `${name} is named like a base-10 logarithm and is read as one, of mg m-3: its unit (${fileUnit ?? 'none'}) does not say of what.`,
+    }
+  }
   if (saysLog10 && inside === null) {
     // Name and unit disagree, and the wrong choice would be wrong tenfold and more: the feed has to say.
     return {

@@ -42,6 +42,11 @@ export function isPerSteradian(unit: string): boolean {
   return /^((sr|steradian)s? ?-1|(1 ?\/|per) ?(sr|steradian)s?)$/.test(normalise(unit))
 }
 
+/** True for the ways to write that a number has no unit, as a logarithm has none. */
+export function isBare(unit: string): boolean {
+  return /^(1|none|no units?|unit-?less|dimension-?less|-|n\/?a|)$/.test(normalise(unit))
+}
+
 /** The unit inside a logarithm: log10(mg m-3), log10 mg m-3, lg(re 1 mg m-3); null if it is none. */
 export function insideLog10(unit: string): string | null {
   const match = /^\s*(?:log_?10|lg)\s*[([]?\s*(?:re:?\s*)?(?:1\s+)?(.*?)\s*[)\]]?\s*$/i.exec(unit)

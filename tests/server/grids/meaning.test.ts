@@ -70,6 +70,21 @@ describe('what a variable measures', () => {
     expect(named('log10_chl', 'log10(ug L-1)')).toMatchObject({ quantity: 'chlorophyll', log10: true })
   })
 
+  it.each([
+    ['log10_chl', '1', null], ['log10_chl', null, null], ['chl_log10', 'dimensionless', null], ['lg_chl', null, null], ['LOG10-CHL', 'log10', null],
+    ['chlor_a_lg', '', null], ['chl', '1', 'log10 of chlorophyll'], ['science/log10_chlor_a', '1', null],
+  ])('is chlorophyll stored as a logarithm where only the name says so: %s in %s', (name, unit, longName) => {
+    const meaning = named(name, unit, longName)
+    expect(meaning).toMatchObject({ quantity: 'chlorophyll', unit: 'mg m-3', log10: true, factor: 1, note: 'stored as base-10 logarithm, of mg m-3' })
+    expect(meaning.warning).toContain('named like a base-10 logarithm and is read as one')
+  })
+
+  it('is no logarithm by name alone for what tells of chlorophyll, nor for a name that only ends alike', () => {
+    for (const name of ['log10_chl_bias', 'chl_log10_std', 'lg_chl_count']) expect(named(name, '1').quantity).toBe('other')
+    expect(named('chl_alg', '1').log10).toBe(false)
+    expect(named('chl', '1').warning).toContain('"1" is none Offing can convert')
+  })
+
   it('is reflectance with its wavelength', () => {
     expect(named('Rrs_443', 'sr^-1')).toMatchObject({ quantity: 'reflectance', wavelengthNm: 443, unit: 'sr-1' })
     expect(named('RRS412_5', 'sr-1').wavelengthNm).toBe(412.5)

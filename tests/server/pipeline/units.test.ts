@@ -66,6 +66,7 @@ describe('a lone variable of another name', () => {
     const feed = await aFeed(context, person, pattern)
     const file = await taken(await fileOf({ sst: {} }), how === 'by its number' ? { feedId: feed.id } : {})
     expect(file).toMatchObject({ status: 'waiting', waitingFor: noUnit('sst') })
+    if (how === 'by its pattern') expect(file.report!.missed!.map((one) => one.why)).toEqual(['reads chlor_a in mg m-3; this file has sst without a unit. Say the unit of the file’s numbers on the feed.'])
     expect(await context.models.layers.count()).toBe(0)
   })
 
@@ -113,6 +114,24 @@ describe('a variable of the feed’s own name without a unit', () => {
     expect((await first.reload()).status).toBe('processed')
     expect((await taken(await picture('20260610'))).status).toBe('processed')
   })
+})
+
+describe('a variable named like a logarithm', () => {
+  it.each([['log10_chl', '1'], ['log10_chl', 'log10(mg m-3)'], ['chl_log10', undefined], ['lg_chl', undefined]])(
+    '%s in %s is proposed as chlorophyll stored as log10, and read as values once it is confirmed',
+    async (variable, units) => {
+      const region = await aRegion(context, person)
+      const file = await taken(await fileOf({ [variable]: units === undefined ? {} : { units } }, { value: 0.5 }))
+      expect(file.proposal).toMatchObject({ quantity: 'chlorophyll', variable, unit: 'mg m-3', scale: 'log10', storedLog10: true })
+      expect(file.report!.variables[0]!.conversion).toContain('stored as base-10 logarithm')
+      const feed = await createFeed(context, person, newFeed.parse({ ...file.proposal, fileId: file.id }))
+      await runJobs(context)
+      expect((await file.reload()).status).toBe('processed')
+      const { columns } = await regionSeries(context, region.id, { feedId: feed.id, columns: 'day,median' })
+      // Common tables give 10^0.5 = 3.16228.
+      expect(columns.median![0]).toBeCloseTo(3.16228, 4)
+    },
+  )
 })
 
 describe('a feed that is changed', () => {
