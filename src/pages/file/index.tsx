@@ -83,7 +83,14 @@ function WhichFile({ file }: { file: OffingFile }) {
       </Link>{' '}
       <span className="fig break-all">
         {file.name}, {megabytes(file.bytes)}
-        {file.report && `, ${formatWords(file.report.format)}`}, sha256 <span title={file.checksum}>{shortChecksum(file.checksum)}</span>
+        {file.report && `, ${formatWords(file.report.format)}`}
+        {file.checksum.startsWith('not-kept-') ? (
+          ', not kept'
+        ) : (
+          <>
+            , sha256 <span title={file.checksum}>{shortChecksum(file.checksum)}</span>
+          </>
+        )}
       </span>
     </>
   )
