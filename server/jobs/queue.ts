@@ -74,16 +74,3 @@ export async function joinJobs(context: Context, lead: JobRecord): Promise<JobRe
 export async function markProgress(context: Context, tx: Transaction, job: JobRecord, done: number, total: number): Promise<void> {
   await job.update({ done, total, leaseUntil: context.clock.system() + leaseMs, updatedAt: context.clock.now() }, { transaction: tx })
 }
-
-/** A restart voids what an earlier process had taken: its work is done again from the last committed mark. */
-export async function voidLeases(context: Context): Promise<number> {
-  return context.db.write(async (tx) => {
-    const held = await context.models.jobs.findAll({ where: { state: 'running' }, transaction: tx })
-    for (const job of held) {
-      const twin = await context.models.jobs.findOne({ where: { kind: job.kind, jobKey: job.jobKey, state: 'waiting' }, transaction: tx })
-      if (twin) await job.update({ state: 'cancelled', leaseOwner: null, leaseUntil: null, lastError: 'Taken over by a newer job.' }, { transaction: tx })
-      else await job.update({ state: 'waiting', leaseOwner: null, leaseUntil: null }, { transaction: tx })
-    }
-    return held.length
-  })
-}
