@@ -36,6 +36,8 @@ export const refusalCodes = [
   'unknown-unit',
   'not-this-feed',
   'reading-failed',
+  'reading-ended',
+  'not-readable',
 ] as const
 
 export type RefusalCode = (typeof refusalCodes)[number]

@@ -16,6 +16,8 @@ const steps: Record<RefusalCode, string> = {
   'unknown-unit': 'Send it with a unit this program knows, such as mg m-3.',
   'not-this-feed': 'Send it again without a feed, or choose the feed it belongs to.',
   'reading-failed': 'Send it again; if it fails again, an administrator finds the reason among the jobs.',
+  'reading-ended': 'Cut out the sea you watch and send that, or give the server more memory and send it again.',
+  'not-readable': 'An administrator gives the server leave to read it, then puts it back into the inbox.',
 }
 
 /** The next step after a refusal; codes of a later version have none here. */
