@@ -32,6 +32,7 @@ export const refusalCodes = [
   'no-time',
   'unknown-time',
   'climatology',
+  'not-surface',
   'no-quantity',
   'unknown-unit',
   'not-this-feed',

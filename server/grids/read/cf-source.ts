@@ -11,7 +11,7 @@ import { checkDeclaredGrid } from './limits'
 import { blockOf, find, type PlacedVariable, upright } from './placed-variable'
 import { meaningOf } from './quantity'
 import { numbersOf, plainAttributes, type RawNetcdf, type RawVariable, textOf } from './raw-netcdf'
-import { surfaceStep } from './surface-level'
+import { deepestSurface, isDepth, type SurfaceStep, surfaceStep } from './surface-level'
 import { convertInPlace, describeConversion, validLimits } from './values'
 import { checkWindow } from './window'
 
@@ -23,6 +23,7 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
   const helpers = helperNames(file)
   const placed: PlacedVariable[] = []
   let climatological: string | null = null
+  let deep: string | null = null
   for (const raw of file.variables) {
     if (raw.type === null || raw.dimensions.length < 2 || helpers.has(raw.name)) continue
     const axes = axesOf(file, raw)
@@ -31,8 +32,12 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
     const stepAxis = axes.findIndex((axis) => axis?.role === 'time')
     const surface = surfaceOf(file, raw, axes, [cells.rowAxis, cells.columnAxis, stepAxis])
     warnings.push(...surface.warnings)
+    if (surface.deep !== null) {
+      deep ??= surface.deep
+      warnings.push(`${raw.name} was left out: ${surface.deep}`)
+    }
     if (!surface.start) continue
-    const time = axes[stepAxis]?.coordinate ?? scalarTime(file, raw)
+    const time = axes[stepAxis]?.coordinate ?? scalarOf(file, raw, 'time')
     if (isClimatological(raw, time)) {
       climatological ??= raw.name
       warnings.push(`${raw.name} was left out: it is a climatology (several years folded into one).`)
@@ -42,7 +47,7 @@ export function cfSource(file: RawNetcdf, fileName: string): GridSource {
     one.variable.axes = found.of(raw, axes)
     placed.push(one)
   }
-  if (placed.length === 0) throw nothingPlaced(file, fileName, climatological)
+  if (placed.length === 0) throw nothingPlaced(file, fileName, { climatological, deep })
   if (placed.every(({ variable }) => variable.times.length === 0)) {
     throw new LayerRefused('no-time', 'This file holds no time step: its time axis is empty.', { fileName, variables: placed.slice(0, 20).map(({ variable }) => variable.name) })
   }
@@ -75,31 +80,42 @@ function surfaceOf(
   raw: RawVariable,
   axes: readonly (Axis | null)[],
   known: readonly number[],
-): { start: number[] | null; warnings: string[] } {
+): { start: number[] | null; warnings: string[]; deep: string | null } {
   const start = raw.dimensions.map(() => 0)
   const warnings: string[] = []
   const others: string[] = []
+  const levels: SurfaceStep[] = []
   for (const [index, { name, size }] of raw.dimensions.entries()) {
     if (known.includes(index)) continue
     const axis = axes[index]
     const surface = axis?.role === 'vertical' ? surfaceStep(file, axis.coordinate) : null
     if (surface) start[index] = surface.step
     else if (size !== 1) others.push(`${size} of ${name}`)
-    if (surface?.at) warnings.push(`${raw.name} is not at the surface: its only level is ${surface.at}.`)
+    if (surface?.at) levels.push(surface)
     if (surface && size > 1) warnings.push(`${raw.name} has ${size} levels; the one at the surface is read.`)
   }
-  if (others.length === 0) return { start, warnings }
+  const lone = scalarOf(file, raw, 'vertical')
+  // A height without a dimension may be that of the instrument.
+  const alone = lone && isDepth(lone) ? surfaceStep(file, lone) : null
+  if (alone?.at) levels.push(alone)
+  const tooDeep = levels.find((level) => level.deep)
+  if (tooDeep) {
+    const deep = `its only level is ${tooDeep.at}, and Offing reads the surface, down to ${deepestSurface} m.`
+    return { start: null, warnings: [], deep }
+  }
+  warnings.push(...levels.map(({ at }) => `${raw.name} is not at the surface: its only level is ${at}.`))
+  if (others.length === 0) return { start, warnings, deep: null }
   const problem = `${raw.name} was left out: it has ${others.join(' and ')}, and Offing reads one surface at a time.`
-  return { start: null, warnings: [problem] }
+  return { start: null, warnings: [problem], deep: null }
 }
 
-/** A single time may stand in a variable without dimensions, named by `coordinates` or simply called time. */
-function scalarTime(file: RawNetcdf, raw: RawVariable): RawVariable | null {
+/** A single time or level may stand in a variable without dimensions, named by `coordinates`; a time also by being called so. */
+function scalarOf(file: RawNetcdf, raw: RawVariable, role: 'time' | 'vertical'): RawVariable | null {
   const named = (textOf(raw.attributes, 'coordinates') ?? '').split(/\s+/).filter(Boolean)
-  for (const name of [...named, 'time']) {
+  for (const name of role === 'time' ? [...named, 'time'] : named) {
     const variable = lookUp(file, raw, name)
     const size = variable?.dimensions.reduce((product, dimension) => product * dimension.size, 1)
-    if (variable?.type && size === 1 && roleOf(variable) === 'time') return variable
+    if (variable?.type && size === 1 && roleOf(variable) === role) return variable
   }
   return null
 }
@@ -168,7 +184,7 @@ function readOutside(file: RawNetcdf, placed: PlacedVariable, step: number, wind
   return upright(placed, outsideRange(file.read(placed.raw, start, count), placed.packing), window)
 }
 
-function nothingPlaced(file: RawNetcdf, fileName: string, climatological: string | null): LayerRefused {
+function nothingPlaced(file: RawNetcdf, fileName: string, { climatological, deep }: Record<'climatological' | 'deep', string | null>): LayerRefused {
   const facts = { fileName, variables: file.variables.slice(0, 50).map(({ name }) => name) }
   if (climatological !== null) {
     return new LayerRefused(
@@ -177,6 +193,7 @@ function nothingPlaced(file: RawNetcdf, fileName: string, climatological: string
       { ...facts, variable: climatological },
     )
   }
+  if (deep !== null) return new LayerRefused('not-surface', `The file holds nothing of the sea’s surface: ${deep}`, facts)
   const fields = file.variables.filter(
     ({ type, dimensions }) => type !== null && dimensions.filter(({ size }) => size > 1).length >= 2,
   )

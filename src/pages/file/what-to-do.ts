@@ -12,6 +12,7 @@ const steps: Record<RefusalCode, string> = {
   'no-time': 'Send it again with its time in the field beside the chooser.',
   'unknown-time': 'Send it again with its time in the field beside the chooser.',
   climatology: 'Send the layers themselves; what is usual is worked out here.',
+  'not-surface': 'Send its level at the surface.',
   'no-quantity': 'Send a file that holds chlorophyll or reflectance, or choose its feed beside the chooser.',
   'unknown-unit': 'Send it with a unit this program knows, such as mg m-3.',
   'not-this-feed': 'Send it again without a feed, or choose the feed it belongs to.',
