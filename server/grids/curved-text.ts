@@ -9,10 +9,15 @@ const absent = 0
  * bits, deflated. Exact for numbers rounded to a billionth of a degree; a few bytes a corner where a grid is smooth.
  */
 export function packDegrees(values: Float64Array, across: number): string {
-  // Eight bytes of seven bits hold any difference of places on Earth.
-  const bytes = new Uint8Array(values.length * 8)
+  // Three bytes a corner are enough for smooth grids; eight of seven bits hold any difference of places on Earth.
+  let bytes = new Uint8Array(values.length * 3 + 8)
   let length = 0
   const put = (number: number) => {
+    if (length + 8 > bytes.length) {
+      const longer = new Uint8Array(Math.ceil(bytes.length * 1.5) + 8)
+      longer.set(bytes)
+      bytes = longer
+    }
     let rest = number
     while (rest >= 128) {
       bytes[length++] = (rest % 128) + 128

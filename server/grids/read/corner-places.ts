@@ -84,8 +84,9 @@ export function near(lon: number, reference: number): number {
   return lon - 360 * Math.round((lon - reference) / 360)
 }
 
-/** To a billionth of a degree, a tenth of a millimetre: what a grid as text keeps. */
+/** To a billionth of a degree, a tenth of a millimetre: what a grid as text keeps. In place: corners of large grids fill memory once. */
 export function roundDegrees(degrees: Float64Array): Float64Array {
   // Adding 0 makes -0 a plain 0.
-  return degrees.map((value) => Math.round(value * 1e9) / 1e9 + 0)
+  for (let i = 0; i < degrees.length; i++) degrees[i] = Math.round(degrees[i]! * 1e9) / 1e9 + 0
+  return degrees
 }

@@ -5,7 +5,7 @@ import { packingOf, unpackInPlace } from './cf-packing'
 import { lookUp } from './cf-roles'
 import { cornersFromBounds } from './corner-bounds'
 import { cornersFromCentres, type Corners, roundDegrees } from './corner-places'
-import { maxCurvedCells } from './limits'
+import { maxBoundedCells, maxCurvedCells } from './limits'
 import { type RawNetcdf, type RawVariable, textOf } from './raw-netcdf'
 
 export interface CurvedPlace {
@@ -63,6 +63,12 @@ function boundsOf(
   columns: number,
   warnings: string[],
 ): Corners | null {
+  if (rows * columns > maxBoundedCells) {
+    if (textOf(latitude.attributes, 'bounds') !== null) {
+      warnings.push(`The bounds of ${latitude.name} are left unread (more than ${maxBoundedCells / 1e6} million cells); corners are taken half-way between centres.`)
+    }
+    return null
+  }
   const read = (variable: RawVariable): Float64Array | null => {
     const name = textOf(variable.attributes, 'bounds')
     const bounds = name === null ? null : lookUp(file, variable, name)

@@ -2,8 +2,10 @@ import { LayerRefused } from '../layer-refused'
 
 /** Declared sizes above these are refused before anything is allocated for them. */
 export const maxCells = 400_000_000
-/** Cells whose places are given one by one. */
-export const maxCurvedCells = 25_000_000
+/** Cells whose places are given one by one: granules of 3,232 by 3,200 cells fit. Looking at so many takes about 500 MB. */
+export const maxCurvedCells = 12_000_000
+/** Of those, cells whose bounds are read too: eight more numbers a cell. */
+export const maxBoundedCells = 4_000_000
 export const maxWindowCells = 160_000_000
 export const maxSteps = 100_000
 export const maxAxisLength = 1_000_000

@@ -3,7 +3,9 @@ import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { deflateSync, gzipSync } from 'node:zlib'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { hdf5Library } from '../../../server/grids/hdf5-library'
 import { LayerRefused } from '../../../server/grids/layer-refused'
+import { maxCurvedCells } from '../../../server/grids/read/limits'
 import { writeGeotiff } from '../../../server/grids/write/geotiff'
 import { startWorkers, type Workers } from '../../../server/workers/workers'
 
@@ -23,11 +25,14 @@ afterAll(async () => {
   await rm(folder, { recursive: true })
 })
 
-/** As the server looks at what arrives: in a thread, within a time, and without the process growing much. */
-async function look(path: string) {
+/** As the server looks at what arrives: in a thread, within a time, and without the process growing much on the way. */
+async function look(path: string, mostMb = mostGrowthMb) {
   const before = process.memoryUsage.rss()
+  let peak = before
+  const watch = setInterval(() => (peak = Math.max(peak, process.memoryUsage.rss())), 20)
   const outcome: unknown = await workers.heavy('inspectFile', { path, fileName: path.split('/').at(-1)! }).catch((error: unknown) => error)
-  expect((process.memoryUsage.rss() - before) / 2 ** 20).toBeLessThan(mostGrowthMb)
+  clearInterval(watch)
+  expect((Math.max(peak, process.memoryUsage.rss()) - before) / 2 ** 20).toBeLessThan(mostMb)
   return outcome
 }
 
@@ -153,6 +158,43 @@ describe('an HDF5 file that means harm', () => {
   it('whose declared end lies behind its bytes is refused as cut', async () => {
     const bytes = await readFile(`${reference}grids/h5-lzf.h5`)
     expect(await refusalOf(bytes.subarray(0, -100), 'cut.h5')).toMatchObject({ code: 'truncated', facts: { neededBytes: bytes.length, fileSize: bytes.length - 100 } })
+  })
+})
+
+describe('a small file that places millions of cells one by one', () => {
+  /** Smooth places of `size` by `size` cells: deflated, a few hundred kilobytes. */
+  async function curved(size: number): Promise<string> {
+    const path = join(folder, `curved-${size}.nc`)
+    const library = await hdf5Library()
+    const file = new library.File(path, 'w')
+    for (const axis of ['y', 'x']) file.create_dataset({ name: axis, data: Float32Array.from({ length: size }, (_, i) => i), shape: [size], dtype: '<f4' }).make_scale(axis)
+    const places = (rowStep: number, columnStep: number, first: number) => {
+      const values = new Float32Array(size * size)
+      for (let i = 0; i < values.length; i++) values[i] = first + (Math.floor(i / size) * rowStep + (i % size) * columnStep) / size
+      return values
+    }
+    const chunks = [Math.min(size, 500), Math.min(size, 500)]
+    const put = (name: string, data: Float32Array, units: string) => {
+      const dataset = file.create_dataset({ name, data, shape: [size, size], dtype: '<f4', chunks, compression: 1 })
+      dataset.create_attribute('units', units)
+      for (const [at, axis] of ['y', 'x'].entries()) dataset.attach_scale(at, axis)
+      if (name === 'chlor_a') dataset.create_attribute('coordinates', 'lat lon')
+    }
+    put('lat', places(10, 0.5, 40), 'degrees_north')
+    put('lon', places(0.5, 10, -20), 'degrees_east')
+    put('chlor_a', new Float32Array(size * size).fill(1), 'mg m-3')
+    file.close()
+    return path
+  }
+
+  it('is read within 600 MB up to nearly 12 million', async () => {
+    const size = Math.floor(Math.sqrt(maxCurvedCells))
+    expect(await look(await curved(size), 600)).toMatchObject({ report: { variables: [{ name: 'chlor_a', grid: { kind: 'curvilinear', rows: size } }] } })
+  })
+
+  it('is refused above before their places are read', async () => {
+    const refused = (await look(await curved(3500), 100)) as LayerRefused
+    expect(refused).toMatchObject({ code: 'too-large', message: 'lat places 3500 by 3500 cells one by one; Offing reads up to 12 million.', facts: { rows: 3500, columns: 3500 } })
   })
 })
 
