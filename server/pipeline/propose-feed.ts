@@ -44,7 +44,7 @@ function proposalOf(variable: SeenVariable, label: string, seen: Seen, fileName:
     unit: variable.unit ?? (variable.quantity === 'chlorophyll' ? 'mg m-3' : null),
     scale: variable.quantity === 'chlorophyll' ? 'log10' : 'linear',
     cadence,
-    stage: 'near-real-time',
+    stage: seen.stage ?? 'near-real-time',
     processingVersion: seen.processingVersion ?? '1',
     validMin: null,
     validMax: null,

@@ -3,6 +3,7 @@ import { saysLogarithm } from '../grids/read/quantity'
 import { describeGrid } from '../grids/describe-grid'
 import { encodeGrid, gridFingerprint } from '../grids/grid-text'
 import type { GridVariable, LayerTime } from '../grids/grid-source'
+import { producerWords, type Stage } from '../grids/producer-words'
 import { forgetSource, sourceOf } from './open-sources'
 import type { Tasks } from './tasks'
 
@@ -42,7 +43,8 @@ export interface Seen {
   grids: SeenGrid[]
   variables: SeenVariable[]
   processingVersion: string | null
-  title: string | null
+  /** As the file says; null where it does not. */
+  stage: Stage | null
 }
 
 export async function inspectFile({ path, fileName }: Tasks['inspectFile']['input']): Promise<Seen> {
@@ -62,11 +64,7 @@ export async function inspectFile({ path, fileName }: Tasks['inspectFile']['inpu
       const { flags, gapFilled, tellsOfAnother } = report.variables[i]!
       return { name, longName, quantity, unit, wavelengthNm, isLog10: saysLogarithm(variable), tellsOfAnother, grid, times, flagMeanings: nameable(flags), gapFilled }
     })
-    const attribute = (name: string) => {
-      const value = source.globalAttributes[name]
-      return typeof value === 'string' && value.trim() ? value.trim().slice(0, 50) : null
-    }
-    return { report, grids, variables, processingVersion: attribute('processing_version'), title: attribute('title') }
+    return { report, grids, variables, ...producerWords(source.globalAttributes) }
   } catch (error) {
     await forgetSource(path)
     throw error

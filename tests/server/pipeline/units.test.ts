@@ -22,14 +22,14 @@ afterAll(cleanSea)
 
 type Held = Record<string, { units?: string; long_name?: string; standard_name?: string }>
 
-async function fileOf(held: Held, { value = 2, name = 'sea-20260610.nc' } = {}): Promise<string> {
+async function fileOf(held: Held, { value = 2, name = 'sea-20260610.nc', said = { processing_version: 'R1' } }: { value?: number; name?: string; said?: Record<string, string> } = {}): Promise<string> {
   const path = join(await seaFolder(), name)
   await writeNetcdf4(path, {
     latitudes: sea.latitudes,
     longitudes: sea.longitudes,
     times: [Date.parse('2026-06-10T12:00:00Z')],
     variables: Object.entries(held).map(([variable, attributes]) => ({ name: variable, dtype: 'f4', data: new Float64Array(sea.cells).fill(value), attributes: { ...attributes } })),
-    globalAttributes: { processing_version: 'R1' },
+    globalAttributes: said,
     deflate: 1,
   })
   return path
@@ -132,6 +132,17 @@ describe('a variable named like a logarithm', () => {
       expect(columns.median![0]).toBeCloseTo(3.16228, 4)
     },
   )
+})
+
+describe('what the producer says of a file', () => {
+  it('is proposed: its version and that it is reprocessed', async () => {
+    const said = { product_version: '6.0', title: 'Chlorophyll, reprocessed' }
+    expect((await taken(await fileOf({ chlor_a: { units: 'mg m-3' } }, { said }))).proposal).toMatchObject({ stage: 'reprocessed', processingVersion: '6.0' })
+  })
+
+  it('is near-real-time and version 1 where it says nothing', async () => {
+    expect((await taken(await fileOf({ chlor_a: { units: 'mg m-3' } }, { said: {} }))).proposal).toMatchObject({ stage: 'near-real-time', processingVersion: '1' })
+  })
 })
 
 describe('a feed that is changed', () => {
