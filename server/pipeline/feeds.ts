@@ -104,6 +104,7 @@ export async function changeFeed(context: Context, person: Person, id: number, {
     if (record.version !== version) throw new ApiError('stale-version', 'Somebody else changed this feed meanwhile. Look at it again.', { version: record.version })
     if (change.name !== undefined && change.name !== record.name) await freeName(context, tx, change.name)
     checkReading({ ...record.get({ plain: true }), ...definedOf(change) })
+    if (change.cadence !== undefined && change.cadence !== record.cadence) await cadenceOfDerived(context, tx, record, change.cadence)
     const rereads = changesReading(record, change)
     const rejudges = change.gapFilled !== undefined && change.gapFilled !== record.gapFilled
     const before = record.get({ plain: true })
@@ -117,6 +118,12 @@ export async function changeFeed(context: Context, person: Person, id: number, {
   context.news.tell({ topic: 'feeds', id }, { topic: 'files' })
   context.wake()
   return feed
+}
+
+/** What is worked out from a feed comes as often as that feed. */
+async function cadenceOfDerived(context: Context, tx: Transaction, { id, derivedFrom }: FeedRecord, cadence: Feed['cadence']): Promise<void> {
+  if (derivedFrom !== null) throw new ApiError('not-valid', 'A derived feed has the cadence of the feed it is derived from.', { fields: { cadence: 'Change it on the feed it is derived from.' } })
+  await context.models.feeds.update({ cadence }, { where: { derivedFrom: id }, transaction: tx })
 }
 
 function definedOf<T extends object>(change: T): { [K in keyof T]?: Exclude<T[K], undefined> } {

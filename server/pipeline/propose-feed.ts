@@ -1,4 +1,4 @@
-import type { FeedProposal } from '../../shared/schemas/feeds'
+import { usualSilence, type FeedProposal } from '../../shared/schemas/feeds'
 import { proposeHiddenFlags } from './propose-flags'
 import type { Seen, SeenVariable } from '../workers/inspect-file'
 
@@ -55,7 +55,7 @@ function proposalOf(variable: SeenVariable, label: string, seen: Seen, fileName:
     gapFilled: variable.gapFilled === 'unmarked',
     storedLog10: variable.isLog10,
     fileUnit: null,
-    silentAfterHours: cadence === 'daily' ? 72 : cadence === '8-day' ? 24 * 20 : 24 * 70,
+    silentAfterHours: usualSilence[cadence],
   }
 }
 

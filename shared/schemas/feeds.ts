@@ -4,6 +4,8 @@ import { id, instant, version } from './common'
 export const quantities = ['chlorophyll', 'reflectance', 'other'] as const
 export const stages = ['near-real-time', 'reprocessed'] as const
 export const cadences = ['daily', '8-day', 'monthly'] as const
+/** Hours without a layer after which a feed of that cadence is usually silent. */
+export const usualSilence = { daily: 72, '8-day': 24 * 20, monthly: 24 * 70 } as const
 
 const text = (max: number) => z.string().trim().min(1).max(max)
 
@@ -72,6 +74,7 @@ export const feedsOfFile = z.object({ feeds: z.array(feedFields).min(1, 'Choose 
 export const feedChange = z.object({
   version,
   name: text(100).optional(),
+  cadence: z.enum(cadences).optional(),
   stage: z.enum(stages).optional(),
   processingVersion: text(50).optional(),
   validMin: z.number().nullable().optional(),

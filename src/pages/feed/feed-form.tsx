@@ -1,7 +1,7 @@
 import { zodResolver } from '@hookform/resolvers/zod'
 import { useForm } from 'react-hook-form'
 import { z } from 'zod'
-import { stages, type Feed } from '../../../shared/schemas/feeds'
+import { cadences, stages, type Feed } from '../../../shared/schemas/feeds'
 import { isConflict, sentenceOf } from '../../api/api-error'
 import { useChangeFeed } from '../../api/feeds'
 import { Button } from '../../components/ui/button'
@@ -12,6 +12,7 @@ import { SectionHead } from '../../components/ui/page'
 const fields = z.object({
   name: z.string().trim().min(1, 'The feed needs a name.').max(100, 'At most 100 characters.'),
   stage: z.enum(stages),
+  cadence: z.enum(cadences),
   processingVersion: z.string().trim().min(1, 'Say the version; 1 if there is none.').max(50, 'At most 50 characters.'),
   fileNamePattern: z.string().trim().max(200, 'At most 200 characters.'),
   freshnessLimitHours: z.number('Give a number of hours.').min(1, 'At least 1 hour.').max(1440, 'At most 1440 hours.'),
@@ -26,6 +27,7 @@ export function FeedForm({ feed }: { feed: Feed }) {
     defaultValues: {
       name: feed.name,
       stage: feed.stage,
+      cadence: feed.cadence,
       processingVersion: feed.processingVersion,
       fileNamePattern: feed.fileNamePattern ?? '',
       freshnessLimitHours: feed.freshnessLimitHours,
@@ -33,7 +35,7 @@ export function FeedForm({ feed }: { feed: Feed }) {
     },
   })
   const { errors, isDirty } = form.formState
-  const submit = form.handleSubmit((given) => change.mutate({ ...given, version: feed.version, fileNamePattern: given.fileNamePattern || null }))
+  const submit = form.handleSubmit((given) => change.mutate({ ...given, cadence: feed.derivedFrom === null ? given.cadence : undefined, version: feed.version, fileNamePattern: given.fileNamePattern || null }))
   return (
     <section>
       <SectionHead>Settings</SectionHead>
@@ -53,6 +55,13 @@ export function FeedForm({ feed }: { feed: Feed }) {
             {...form.register('processingVersion')}
           />
         </div>
+        {feed.derivedFrom === null && (
+          <SelectField label="Cadence" hint="How often its files come, each for a period of that length." {...form.register('cadence')}>
+            {cadences.map((cadence) => (
+              <option key={cadence}>{cadence}</option>
+            ))}
+          </SelectField>
+        )}
         <TextField
           label="File names"
           className="fig"

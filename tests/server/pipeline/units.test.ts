@@ -7,6 +7,7 @@ import type { FileRecord } from '../../../server/models/file'
 import { changeFeed, createFeed } from '../../../server/pipeline/feeds'
 import type { Arrival } from '../../../server/pipeline/receive-file'
 import { newFeed } from '../../../shared/schemas/feeds'
+import { aBandFeed, aDerivedFeed } from '../../support/reflectance-sea'
 import { aFeed, aPerson, aRegion, cleanSea, runJobs, sea, seaFolder, send } from '../../support/sea'
 import { regionSeries } from '../../../server/desk/region-series'
 import { createTestContext, type TestContext } from '../../support/test-context'
@@ -146,6 +147,17 @@ describe('what the producer says of a file', () => {
 })
 
 describe('a feed that is changed', () => {
+  it('has a new cadence, and so has what is worked out from it; a derived feed alone has none of its own', async () => {
+    const feed = await aBandFeed(context, person, 490)
+    await aBandFeed(context, person, 443)
+    await aBandFeed(context, person, 510)
+    await aBandFeed(context, person, 555)
+    const derived = await aDerivedFeed(context, person, feed.id)
+    await changeFeed(context, person, feed.id, { version: feed.version, cadence: '8-day' })
+    expect([(await feed.reload()).cadence, (await derived.reload()).cadence]).toEqual(['8-day', '8-day'])
+    await expect(changeFeed(context, person, derived.id, { version: derived.version, cadence: 'daily' })).rejects.toThrow('A derived feed has the cadence of the feed it is derived from.')
+  })
+
   it('takes the waiting files whose name fits its new pattern', async () => {
     const feed = await aFeed(context, person, { fileNamePattern: 'other-{yyyy}{MM}{dd}.nc' })
     const file = await taken(await fileOf({ chlor_a: { units: 'mg m-3' } }))
