@@ -32,14 +32,16 @@ const readsFiles: ReadonlySet<keyof Tasks> = new Set(['inspectFile', 'summariseV
 export function startWorkers(bundle: string, seconds: Partial<Record<keyof Tasks, number>> = {}): Workers {
   if (!existsSync(bundle)) throw new Error(`The worker has not been built: ${bundle} is missing. Run: npm run build`)
   const start = () => createLane<Outcome<unknown>>(bundle, (outcome) => outcome.spent, { task: 'greet', input: null })
-  const [light, heavy, second] = [start(), start(), start()]
+  const [light, heavy] = [start(), start()]
+  // A thread takes memory: this one begins with the first work there is for it.
+  let second: Lane<Outcome<unknown>> | null = null
   const limits = { ...secondsFor, ...seconds }
   return {
     light: runIn(light, limits),
     heavy: runIn(heavy, limits),
-    second: runIn(second, limits),
+    second: (task, input, options) => runIn((second ??= start()), limits)(task, input, options),
     close: async () => {
-      await Promise.all([light.close(), heavy.close(), second.close()])
+      await Promise.all([light.close(), heavy.close(), second?.close()])
     },
   }
 }
