@@ -30,19 +30,23 @@ export function proposeFeeds(seen: Seen, fileName: string, takenNames: readonly 
 
 function proposable(all: readonly SeenVariable[]): SeenVariable[] {
   const variables = all.filter((variable) => !variable.tellsOfAnother)
-  const of = (quantity: SeenVariable['quantity']) => variables.filter((variable) => variable.quantity === quantity)
+  const of = (quantity: SeenVariable['quantity']) => variables.filter((variable) => quantityOf(variable) === quantity)
   const known = [...of('chlorophyll'), ...of('reflectance')]
   return known.length > 0 || variables.length > 1 ? known : variables
 }
 
+/** What is named as chlorophyll and has no unit is proposed as such, its unit with it: the person who confirms says it. */
+const quantityOf = ({ quantity, lacksUnit, unit }: SeenVariable): SeenVariable['quantity'] => (lacksUnit && unit === null ? 'chlorophyll' : quantity)
+
 function proposalOf(variable: SeenVariable, label: string, seen: Seen, fileName: string, takenNames: readonly string[]): FeedProposal {
   const cadence = cadenceOf(variable)
+  const quantity = quantityOf(variable)
   return {
     name: unusedName(`${label}, ${cadence}`.slice(0, 90), takenNames),
-    quantity: variable.quantity,
+    quantity,
     variable: variable.name,
-    unit: variable.unit ?? (variable.quantity === 'chlorophyll' ? 'mg m-3' : null),
-    scale: variable.quantity === 'chlorophyll' ? 'log10' : 'linear',
+    unit: variable.unit ?? (quantity === 'chlorophyll' ? 'mg m-3' : null),
+    scale: quantity === 'chlorophyll' ? 'log10' : 'linear',
     cadence,
     stage: seen.stage ?? 'near-real-time',
     processingVersion: seen.processingVersion ?? '1',
@@ -54,13 +58,14 @@ function proposalOf(variable: SeenVariable, label: string, seen: Seen, fileName:
     flagMeanings: variable.flagMeanings,
     gapFilled: variable.gapFilled === 'unmarked',
     storedLog10: variable.isLog10,
-    fileUnit: null,
+    fileUnit: variable.unit === null && quantity === 'chlorophyll' ? 'mg m-3' : null,
     silentAfterHours: usualSilence[cadence],
   }
 }
 
 function labelOf(variable: SeenVariable, main: SeenVariable): string {
-  const { quantity, wavelengthNm, longName, name } = variable
+  const { wavelengthNm, longName, name } = variable
+  const quantity = quantityOf(variable)
   if (quantity === 'chlorophyll') return variable === main ? 'Chlorophyll' : `Chlorophyll ${name}`
   return quantity === 'reflectance' && wavelengthNm !== null ? `Reflectance ${wavelengthNm} nm` : (longName ?? name)
 }

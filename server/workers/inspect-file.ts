@@ -1,5 +1,5 @@
 import { inspectSource, type InspectReport } from '../grids/inspect'
-import { saysLogarithm } from '../grids/read/quantity'
+import { isChlorophyllWithoutUnit, saysLogarithm } from '../grids/read/quantity'
 import { describeGrid } from '../grids/describe-grid'
 import { encodeGrid, gridFingerprint } from '../grids/grid-text'
 import type { GridVariable, LayerTime } from '../grids/grid-source'
@@ -26,6 +26,8 @@ export interface SeenVariable {
   quantity: GridVariable['quantity']
   unit: string | null
   wavelengthNm: number | null
+  /** Named as chlorophyll, of no unit: a person has to say it. */
+  lacksUnit: boolean
   /** Stored as base-10 logarithms, by what the file says. */
   isLog10: boolean
   /** It is the error, bias, uncertainty, count or flags of another variable. */
@@ -62,7 +64,7 @@ export async function inspectFile({ path, fileName }: Tasks['inspectFile']['inpu
       }
       const { name, longName, quantity, unit, wavelengthNm, times } = variable
       const { flags, gapFilled, tellsOfAnother } = report.variables[i]!
-      return { name, longName, quantity, unit, wavelengthNm, isLog10: saysLogarithm(variable), tellsOfAnother, grid, times, flagMeanings: nameable(flags), gapFilled }
+      return { name, longName, quantity, unit, wavelengthNm, lacksUnit: isChlorophyllWithoutUnit(variable), isLog10: saysLogarithm(variable), tellsOfAnother, grid, times, flagMeanings: nameable(flags), gapFilled }
     })
     return { report, grids, variables, ...producerWords(source.globalAttributes) }
   } catch (error) {

@@ -122,6 +122,11 @@ function reflectanceWavelength({ name, standardName, wavelengthAttribute }: Name
   return wavelengthAttribute ?? (anywhere ? Number(anywhere[1]) : null)
 }
 
+/** True for what is named as chlorophyll and would be taken for it if the file gave it a unit. */
+export function isChlorophyllWithoutUnit(variable: Names & Pick<Named, 'fileUnit'>): boolean {
+  return variable.fileUnit === null && meaningOf({ ...variable, fileUnit: 'mg m-3', wavelengthAttribute: null }).quantity === 'chlorophyll'
+}
+
 /** The wavelength in nm that the name of a reflectance says, as Rrs_443 does. */
 export function wavelengthInName(name: string): number | null {
   const match = /^rrs_?(\d{3,4}(?:[._]\d+)?)(?:_(?:mean|avg|average|median))?$/i.exec(baseName(name))

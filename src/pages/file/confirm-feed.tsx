@@ -51,7 +51,7 @@ export function ConfirmFeed({ file, proposal }: { file: OffingFile; proposal: Fe
         <div className="grid grid-cols-[minmax(0,1fr)] content-start gap-8">
           <section>
             <SectionHead ruled={false}>What was understood</SectionHead>
-            <UnderstoodTable rows={variable && file.report ? understoodRows(file.report.format, variable) : []} label="What was understood">
+            <UnderstoodTable rows={variable && file.report ? understoodRows(file.report.format, { ...variable, quantity: proposal.quantity }) : []} label="What was understood">
               {mayConfirm && <AnswerRows form={form} proposal={proposal} variable={variable} several={several} />}
             </UnderstoodTable>
           </section>

@@ -101,6 +101,18 @@ describe('a variable of the feed’s own name without a unit', () => {
     expect((await taken(await fileOf({ turbidity: {} }))).status).toBe('processed')
   })
 
+  it('is proposed with the unit its name makes likely, for a person to confirm; the next such file is taken then', async () => {
+    const region = await aRegion(context, person)
+    const first = await taken(await fileOf({ chlor_a: {} }))
+    expect(first.proposal).toMatchObject({ quantity: 'chlorophyll', variable: 'chlor_a', unit: 'mg m-3', fileUnit: 'mg m-3', scale: 'log10' })
+    const feed = await createFeed(context, person, newFeed.parse({ ...first.proposal, fileUnit: 'kg m-3', fileId: first.id }))
+    await runJobs(context)
+    expect((await first.reload()).status).toBe('processed')
+    const { columns } = await regionSeries(context, region.id, { feedId: feed.id, columns: 'day,median' })
+    expect(columns.median![0]).toBeCloseTo(2e6, 0)
+    expect((await taken(await fileOf({ chlor_a: {} }, { value: 3 }))).status).toBe('processed')
+  })
+
   it('is taken by a feed confirmed from such a file: that says the unit, and goes for the next picture too', async () => {
     const picture = async (day: string) => {
       const path = join(await seaFolder(), `chl_${day}.tif`)
