@@ -8,6 +8,7 @@ import { sql as madeAndReplaced } from './005-made-and-replaced'
 import { sql as outlineVersions } from './006-outline-versions'
 import { sql as masks } from './008-masks'
 import { sql as jobsByKey } from './009-jobs-by-key'
+import { sql as outsideWater } from './010-outside-water'
 
 const migrations = [
   { name: '001-first-schema', sql: firstSchema },
@@ -18,6 +19,7 @@ const migrations = [
   { name: '006-outline-versions', sql: outlineVersions },
   { name: '008-masks', sql: masks },
   { name: '009-jobs-by-key', sql: jobsByKey },
+  { name: '010-outside-water', sql: outsideWater },
 ]
 
 /** Brings the database to the newest schema; answers the names of what was applied. */

@@ -50,6 +50,8 @@ export interface RegionCellWeights {
   share: Float64Array
   areaKm2: Float64Array
   water: Uint8Array
+  /** Water of the region outside the grid, by the land outline; seen by no layer on it. */
+  outsideWaterKm2: number
 }
 
 export interface ViewTask {

@@ -9,6 +9,8 @@ export interface RegionShares {
   areaKm2: Float64Array
   /** 1 where the mask says water; without a mask every cell is water. */
   water?: Uint8Array
+  /** Water of the region that lies outside the grid in km2: never seen, and part of its water all the same. */
+  outsideWaterKm2?: number
 }
 
 /** What is the same for every view of a region: worked out once, used for a decade of layers. */
@@ -19,6 +21,7 @@ export interface RegionOutline {
   kind: Uint8Array
   cells: number
   wholeCells: number
+  /** On the grid and outside it. */
   waterAreaKm2: number
 }
 
@@ -27,11 +30,11 @@ export const isWhole = 2
 export const isWater = 4
 
 /** Lists of different lengths are a RangeError. */
-export function regionOutline({ share, areaKm2, water }: RegionShares): RegionOutline {
+export function regionOutline({ share, areaKm2, water, outsideWaterKm2 = 0 }: RegionShares): RegionOutline {
   if (areaKm2.length !== share.length || (water && water.length !== share.length)) {
     throw new RangeError('Shares, areas and mask of a region have one length.')
   }
-  const outline: RegionOutline = { weightKm2: new Float64Array(share.length), kind: new Uint8Array(share.length), cells: 0, wholeCells: 0, waterAreaKm2: 0 }
+  const outline: RegionOutline = { weightKm2: new Float64Array(share.length), kind: new Uint8Array(share.length), cells: 0, wholeCells: 0, waterAreaKm2: outsideWaterKm2 }
   for (let i = 0; i < share.length; i++) {
     if (!(share[i]! > 0)) continue
     const whole = share[i]! >= wholeShare
@@ -51,7 +54,7 @@ export function waterOf({ water }: { water: Uint8Array }): Uint8Array | undefine
 }
 
 /** The outline as figures and patches take it, with that rule for its mask. */
-export function outlineOf({ share, areaKm2, water: mask }: Required<RegionShares>): RegionOutline {
+export function outlineOf({ share, areaKm2, water: mask, outsideWaterKm2 }: Required<RegionShares>): RegionOutline {
   const water = waterOf({ water: mask })
-  return regionOutline({ share, areaKm2, ...(water ? { water } : {}) })
+  return regionOutline({ share, areaKm2, outsideWaterKm2, ...(water ? { water } : {}) })
 }

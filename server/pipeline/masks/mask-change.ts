@@ -37,5 +37,5 @@ function countedAs({ water }: RegionCellWeights): Uint8Array {
 }
 
 function waterKm2(weights: RegionCellWeights): number {
-  return countedAs(weights).reduce((sum, is, i) => sum + is * weights.share[i]! * weights.areaKm2[i]!, 0)
+  return countedAs(weights).reduce((sum, is, i) => sum + is * weights.share[i]! * weights.areaKm2[i]!, weights.outsideWaterKm2)
 }
