@@ -7,6 +7,7 @@ import { calciteMolPerM3, type CalciteVersion } from '../../shared/science/optic
 import { case1GreenLimit } from '../../shared/science/optics/case1-green-limit'
 import { colourIndex, colourIndexChlorophyll, colourIndexVersions } from '../../shared/science/optics/colour-index-chlorophyll'
 import { differenceIndex, differenceIndexChlorophyll, lowestNdci } from '../../shared/science/optics/difference-index-chlorophyll'
+import { bandDistance, formulaOf } from '../../shared/science/optics/formulas'
 import { rrsAt555 } from '../../shared/science/optics/green-band-shift'
 import { cyanobacteriaIndex, lineHeight, lineHeightBands } from '../../shared/science/optics/line-height'
 import { redBandThreshold, wattsPerSquareMetre } from '../../shared/science/optics/red-band-difference'
@@ -89,6 +90,14 @@ describe('line heights, indices and turbidity', () => {
       for (const { x, lh, ss } of checks) close(lineHeight(x, lineHeightBands[name]), (lh ?? ss)!)
     }
     close(cyanobacteriaIndex([0.012, 0.011, 0.014]), 0.0017428571)
+  })
+
+  it('FLH of OLCI is offered for derived feeds by the bands it was published with (usage from memory)', () => {
+    const formula = formulaOf('flh-olci', '1999')!
+    expect(formula).toMatchObject({ unit: 'sr-1', status: 'from memory', bands: [{ nm: [665] }, { nm: [681.25] }, { nm: [708.75] }] })
+    close(formula.value([0.5, 0.6, 0.4], [665, 681.25, 708.75]), 0.1371428571)
+    expect(formula.value([0.5, NaN, 0.4], [665, 681.25, 708.75])).toBeNaN()
+    expect(bandDistance(formula.bands[1]!, 681)).toBeCloseTo(0.25, 9)
   })
 
   it('NDCI (verified)', () => {

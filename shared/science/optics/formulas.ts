@@ -101,6 +101,11 @@ const lines: Formula[] = [
     value: ([first, peak, last]) => fluorescenceLineHeight([first! * modis[667], peak! * modis[678], last! * modis[748]]),
   },
   {
+    ...other, name: 'flh-olci', version: '1999', title: 'Fluorescence line height (MERIS, OLCI)', variable: 'flh', unit: 'sr-1',
+    bands: lineHeightBands['flh-olci'].map((nm) => band(nm, 1)), status: 'from memory', caution: 'Of reflectance rather than radiance: compare it only with itself.',
+    value: (rrs) => lineHeight(triple(rrs), lineHeightBands['flh-olci']),
+  },
+  {
     ...other, name: 'mci', version: '2005', title: 'Maximum chlorophyll index', variable: 'mci', unit: 'sr-1',
     bands: lineHeightBands.mci.map((nm) => band(nm, 1)), status: 'from memory',
     value: (rrs) => lineHeight(triple(rrs), lineHeightBands.mci),
