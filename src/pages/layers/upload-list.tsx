@@ -22,7 +22,7 @@ export function UploadList() {
       {over && (
         <div>
           <Button kind="text" size="small" onClick={uploads.forget}>
-            Clear what is finished
+            Put away what is finished
           </Button>
         </div>
       )}
