@@ -6,7 +6,6 @@ const blankAsMissing = (value: unknown) => (value === '' ? undefined : value)
 const optional = <T extends z.ZodType>(type: T) => z.preprocess(blankAsMissing, type)
 
 const schema = z.object({
-  NODE_ENV: optional(z.enum(['production', 'development', 'test']).default('production')),
   PORT: optional(z.coerce.number().int().min(0).max(65535).default(4100)),
   HOST: optional(z.string().default('127.0.0.1')),
   BASE_URL: optional(z.url().optional()),
