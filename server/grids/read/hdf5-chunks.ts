@@ -83,12 +83,18 @@ function drop(key: string): void {
   kept.delete(key)
 }
 
+/** Null where the bytes are not as they should be, which the library then says in its own words; a fault of ours stays one. */
 export function orNull<T>(work: () => T): T | null {
   try {
     return work()
-  } catch {
-    return null
+  } catch (error) {
+    if (error instanceof LayerRefused || error instanceof RangeError || isOfZlib(error)) return null
+    throw error
   }
+}
+
+function isOfZlib(error: unknown): boolean {
+  return error instanceof Error && 'code' in error && /^(Z_|ERR_BUFFER)/.test(String(error.code))
 }
 
 /** An object reference is the address of the object's header. */
@@ -117,6 +123,7 @@ function unpack(name: string, stored: Uint8Array, { chunk, cellBytes, shuffle, d
     if (deflate) plain = inflateSync(stored, { maxOutputLength: expected, chunkSize: Math.max(64, expected) })
   } catch (error) {
     if (error instanceof RangeError) throw wrongSize(name, expected)
+    if (!isOfZlib(error)) throw error
     return null
   }
   if (plain.length !== expected) throw wrongSize(name, expected)
