@@ -1,4 +1,3 @@
-import { closeSync, openSync } from 'node:fs'
 import type { Dataset, File } from 'h5wasm'
 import { readExactly } from './bytes'
 import { addressOf } from './hdf5-chunks'
@@ -10,19 +9,14 @@ const [wholeNumbers, floats] = [0, 1]
 /**
  * What is unusual about how a dataset stores its numbers, as words; null for numbers that fill their bytes. The library
  * hands narrower ones over as they lie there, so that -9 in 17 bits would read as 131063. `start` is where HDF5 begins
- * in the file.
+ * in the file, which is handed over open: an unpacked one has no name any more.
  */
-export function oddNumbers(path: string, start: number, library: Parameters<typeof addressOf>[0], file: File, dataset: Dataset): string | null {
-  const descriptor = openSync(path, 'r')
-  try {
-    const read = (offset: number, length: number) => readExactly(descriptor, start + offset, length)
-    for (const { type, body } of messages(read, addressOf(library, file, dataset))) {
-      if (type === datatype) return oddIn(body)
-    }
-    return null
-  } finally {
-    closeSync(descriptor)
+export function oddNumbers(descriptor: number, start: number, library: Parameters<typeof addressOf>[0], file: File, dataset: Dataset): string | null {
+  const read = (offset: number, length: number) => readExactly(descriptor, start + offset, length)
+  for (const { type, body } of messages(read, addressOf(library, file, dataset))) {
+    if (type === datatype) return oddIn(body)
   }
+  return null
 }
 
 /** HDF5 file format, datatype message: class and version, 24 bits of the class, size, then offset and precision in bits. */

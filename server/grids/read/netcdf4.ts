@@ -1,3 +1,4 @@
+import { closeSync, openSync } from 'node:fs'
 import { basename } from 'node:path'
 import type { Dataset, File, Group } from 'h5wasm'
 import { guarded, hdf5Library, PointsElsewhere, quietly } from '../hdf5-library'
@@ -25,6 +26,7 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
   if (file.file_id < 0n) {
     throw new LayerRefused('damaged', 'This file begins like NetCDF-4 (HDF5), but its structure cannot be read.', {})
   }
+  const descriptor = openSync(path, 'r')
   try {
     const datasets = new Map<string, Dataset>()
     const attributes = reading('its structure', () => {
@@ -38,7 +40,7 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
     const checked = new Set<string>()
     const datasetOf = ({ name }: RawVariable): Dataset => {
       const dataset = datasets.get(name)!
-      if (!checked.has(name)) checkNumbers(name, orNull(() => oddNumbers(path, start, library.Module, file, dataset)))
+      if (!checked.has(name)) checkNumbers(name, orNull(() => oddNumbers(descriptor, start, library.Module, file, dataset)))
       checked.add(name)
       return dataset
     }
@@ -53,10 +55,12 @@ export async function openNetcdf4(path: string, start: number, fileSize: number)
       readWords: (variable, from, count) => readWords(variable, datasetOf(variable), from, count),
       close: () => {
         chunks?.close()
+        closeSync(descriptor)
         file.close()
       },
     }
   } catch (error) {
+    closeSync(descriptor)
     file.close()
     throw error
   }
