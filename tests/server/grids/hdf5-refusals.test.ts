@@ -1,4 +1,7 @@
-import { readFile } from 'node:fs/promises'
+import { mkdtemp, readFile, rm, writeFile } from 'node:fs/promises'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { gzipSync } from 'node:zlib'
 import { describe, expect, it } from 'vitest'
 import { LayerRefused } from '../../../server/grids/layer-refused'
 import { inspectGrid } from '../../../server/grids/inspect'
@@ -49,5 +52,18 @@ describe('an HDF5 file that is packed in a way that is not read', () => {
       message: 'The file is damaged: chlor_a cannot be read back whole.',
       facts: { what: 'chlor_a', reason: expect.stringMatching(/\S/) },
     })
+  })
+})
+
+describe('an HDF5 file packed by gzip', () => {
+  it('is refused for numbers of odd widths as it would be unpacked', async () => {
+    const own = await mkdtemp(join(tmpdir(), 'offing-gzip-'))
+    try {
+      const path = join(own, 'narrow.h5.gz')
+      await writeFile(path, gzipSync(await readFile(`${folder}h5-nbit-17-bits.h5`)))
+      await expect(inspectGrid(path, 'narrow.h5.gz')).rejects.toThrow('chlor_a stores numbers of 17 bits in 32, which Offing does not read.')
+    } finally {
+      await rm(own, { recursive: true })
+    }
   })
 })
