@@ -32,6 +32,7 @@ const around0 = (most: number) => known('departure', 'linear', -most, most)
 /** Line heights and indices by the name their variable goes by, with the unit the range is meant in. */
 const lines: { name: RegExp; unit: RegExp; colouring: Colouring }[] = [
   { name: /^n?flh$/, unit: /^mW cm-2 um-1 sr-1$/, colouring: around0(0.1) },
+  { name: /^n?flh$/, unit: /^sr-1$/, colouring: around0(0.002) },
   { name: /^mci$/, unit: /^sr-1$/, colouring: around0(0.004) },
   { name: /^ci_cyano$/, unit: /^sr-1$/, colouring: around0(0.004) },
   { name: /^rbd$/, unit: /^W m-2 um-1 sr-1$/, colouring: around0(1) },
