@@ -34,10 +34,10 @@ function limit(context: Context, { perWindow, windowMs, by, onlyFailures = false
 
 const byAddress = (req: Request): string => ipKeyGenerator(req.ip ?? 'unknown')
 
-/** All calls by address; a monitor's health calls and programs with a personal token are spared. */
+/** All calls by address, which a whole office may share; a monitor's health calls and programs with a personal token are spared. */
 export function generalLimit(context: Context): RequestHandler {
   const spare = (req: Request) => req.path === '/health' || bearerOf(req) !== null
-  return limit(context, { perWindow: 1800, windowMs: minute, by: byAddress, spare })
+  return limit(context, { perWindow: 6000, windowMs: minute, by: byAddress, spare })
 }
 
 /** Calls that try a password or a link: many people of one office share an address, so only failures count. */

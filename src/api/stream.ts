@@ -14,12 +14,26 @@ export function readChange(data: string): Change | undefined {
   }
 }
 
-/** Which queries (by the first word of their key) a change makes old. */
-export const queriesOfTopic: Record<Topic, readonly string[]> = {
-  alerts: ['alerts', 'today', 'regions'],
-  regions: ['regions', 'today'],
-  files: ['files', 'layers', 'today'],
-  jobs: ['jobs'],
-  feeds: ['feeds', 'today'],
-  letters: ['letters'],
+/** Queries by the beginning of their key, or by all of it. */
+export interface StaleQueries {
+  queryKey: readonly (string | number)[]
+  exact?: boolean
+}
+
+const all = (...words: string[]): StaleQueries[] => words.map((word) => ({ queryKey: [word] }))
+
+/** Which queries a change makes old. Of one region or file only its own, and the lists it stands in: others stay as they are. */
+export function staleQueries({ topic, id }: Change): StaleQueries[] {
+  switch (topic) {
+    case 'alerts': return all('alerts', 'today', 'regions')
+    case 'regions':
+      return id === undefined ? all('regions', 'today') : [{ queryKey: ['regions'], exact: true }, { queryKey: ['regions', id] }, ...all('today')]
+    case 'files':
+      return id === undefined
+        ? all('files', 'layers', 'today')
+        : [['files', 'list'], ['files', 'one', id], ['layers', 'list'], ['layers', 'days']].map((queryKey): StaleQueries => ({ queryKey })).concat(all('today'))
+    case 'feeds': return all('feeds', 'today')
+    case 'jobs': return all('jobs')
+    case 'letters': return all('letters')
+  }
 }

@@ -1,10 +1,12 @@
 import { useQueryClient } from '@tanstack/react-query'
 import { useEffect } from 'react'
 import { onSessionRenewed, renewSession } from '../api/session'
-import { queriesOfTopic, readChange, topics, type Topic } from '../api/stream'
+import { readChange, staleQueries, topics, type Change, type StaleQueries } from '../api/stream'
 
 const pollMs = 30_000
+/** A change is on screen at once; while more keep coming, as when years are read, pages ask again every other second. */
 const gatherMs = 150
+const betweenMs = 2_000
 const leavingMs = 1_000
 
 /**
@@ -18,18 +20,21 @@ export function useStream(): void {
     let poll: ReturnType<typeof setInterval> | undefined
     let flush: ReturnType<typeof setTimeout> | undefined
     let renewal: ReturnType<typeof setTimeout> | undefined
-    const waiting = new Set<Topic>()
+    const waiting = new Map<string, StaleQueries>()
+    let refreshedAt = -Infinity
 
     const refreshWaiting = () => {
       flush = undefined
-      const keys = new Set([...waiting].flatMap((topic) => queriesOfTopic[topic]))
+      refreshedAt = performance.now()
+      const queries = [...waiting.values()]
       waiting.clear()
-      keys.forEach((key) => void client.invalidateQueries({ queryKey: [key] }))
+      for (const { queryKey, exact = false } of queries) void client.invalidateQueries({ queryKey, exact })
     }
-    const changed = (changes: readonly Topic[]) => {
-      changes.forEach((topic) => waiting.add(topic))
-      flush ??= setTimeout(refreshWaiting, gatherMs)
+    const changed = (changes: readonly Change[]) => {
+      for (const query of changes.flatMap(staleQueries)) waiting.set(JSON.stringify(query), query)
+      flush ??= setTimeout(refreshWaiting, Math.max(gatherMs, refreshedAt + betweenMs - performance.now()))
     }
+    const everything = topics.map((topic) => ({ topic }))
     const renew = () => {
       renewal = undefined
       void renewSession()
@@ -39,17 +44,17 @@ export function useStream(): void {
       source = new EventSource('/api/stream')
       source.addEventListener('open', () => {
         // Whatever happened while nobody listened is unknown, so everything is asked again.
-        if (poll) changed(topics)
+        if (poll) changed(everything)
         clearInterval(poll)
         poll = undefined
       })
       source.addEventListener('change', (event: MessageEvent<string>) => {
         const change = readChange(event.data)
-        if (change) changed([change.topic])
+        if (change) changed([change])
       })
       source.addEventListener('error', () => {
         poll ??= setInterval(() => {
-          changed(topics)
+          changed(everything)
           if (source?.readyState === EventSource.CLOSED) open()
         }, pollMs)
         // Closed for good means refused: the session has run out. Renewing it reopens the stream. A page that is being

@@ -81,7 +81,7 @@ describe('rate limits', () => {
     const authorization = await bearer(context, await aUser(context))
     expect((await request(app).get('/api/auth/me').set('Authorization', authorization).expect(200)).get('RateLimit')).toBeUndefined()
     expect((await request(app).get('/api/health')).get('RateLimit')).toBeUndefined()
-    expect((await request(app).get('/api/auth/me').expect(401)).get('RateLimit')).toContain('limit=1800')
+    expect((await request(app).get('/api/auth/me').expect(401)).get('RateLimit')).toContain('limit=6000')
   })
 })
 

@@ -55,6 +55,17 @@ test('what changed on the server makes the queries of that topic old, each once 
   expect(made()).toEqual(['alerts', 'today', 'regions'])
 })
 
+test('while changes keep coming pages ask again every other second, of one region only what is its own', async () => {
+  const client = show(<Listener />)
+  const old = vi.spyOn(client, 'invalidateQueries')
+  for (let tenth = 0; tenth < 40; tenth++) {
+    latest()?.say({ topic: 'regions', id: 7 })
+    await act(() => vi.advanceTimersByTimeAsync(100))
+  }
+  const asked = old.mock.calls.map(([filters]) => [...(filters?.queryKey ?? []), ...(filters?.exact ? ['alone'] : [])].join(' '))
+  expect(asked).toEqual([...['regions alone', 'regions 7', 'today'], ...['regions alone', 'regions 7', 'today']])
+})
+
 test('a message nobody agreed on changes nothing', async () => {
   const made = listen()
   latest()?.say({ topic: 'weather' })
