@@ -22,7 +22,10 @@ export interface StaleQueries {
 
 const all = (...words: string[]): StaleQueries[] => words.map((word) => ({ queryKey: [word] }))
 
-/** Which queries a change makes old. Of one region or file only its own, and the lists it stands in: others stay as they are. */
+/**
+ * Which queries a change makes old. Of one region only its own and the lists it stands in; of a file all files, as one may
+ * replace another, but no layer that was read before.
+ */
 export function staleQueries({ topic, id }: Change): StaleQueries[] {
   switch (topic) {
     case 'alerts': return all('alerts', 'today', 'regions')
@@ -31,7 +34,7 @@ export function staleQueries({ topic, id }: Change): StaleQueries[] {
     case 'files':
       return id === undefined
         ? all('files', 'layers', 'today')
-        : [['files', 'list'], ['files', 'one', id], ['layers', 'list'], ['layers', 'days']].map((queryKey): StaleQueries => ({ queryKey })).concat(all('today'))
+        : [...all('files', 'today'), { queryKey: ['layers', 'list'] }, { queryKey: ['layers', 'days'] }]
     case 'feeds': return all('feeds', 'today')
     case 'jobs': return all('jobs')
     case 'letters': return all('letters')

@@ -118,7 +118,8 @@ async function furnish(api: JourneyApi): Promise<{ feedId: number; regionIds: nu
   await api.call(endpoints.createSubscription, { body: { allRegions: true, minimumSeverity: 'Minor' } })
   const regionIds: number[] = []
   for (const [name, ring] of Object.entries(outlines)) {
-    const region = await api.call(endpoints.createRegion, { body: { name, geometry: { type: 'Polygon', coordinates: [ring] }, feedId: feed.id } })
+    // Drawn for no feed yet: Offing would give it a first rule of its own as soon as its empty history is read, or not, as it happens.
+    const region = await api.call(endpoints.createRegion, { body: { name, geometry: { type: 'Polygon', coordinates: [ring] } } })
     const definition = { ...defaultRule(), statistic: 'median' as const, test: { kind: 'above-level' as const, level: 5 } }
     const rule = await api.call(endpoints.createRule, { params: { id: region.id }, body: { feedId: feed.id, name: 'Above 5', definition } })
     await api.call(endpoints.activateRule, { params: { id: rule.id }, body: { ruleVersion: 1 } })

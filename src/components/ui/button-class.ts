@@ -3,7 +3,7 @@ export type ButtonSize = 'small' | 'normal' | 'tall'
 
 const base =
   'inline-flex items-center justify-center gap-2 rounded-press font-strong text-center select-none ' +
-  'disabled:border-dashed disabled:border-rule2 disabled:bg-transparent disabled:text-ink3 transition-colors'
+  'disabled:border-dashed disabled:border-rule2 disabled:bg-transparent disabled:text-ink3 transition-colors motion-reduce:transition-none'
 
 const kinds: Record<ButtonKind, string> = {
   filled: 'border border-accent bg-accent text-onAccent hover:bg-accentDeep hover:border-accentDeep',
