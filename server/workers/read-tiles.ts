@@ -1,7 +1,7 @@
 import { rmSync } from 'node:fs'
 import type { GridWindow } from '../../shared/science/grid'
 import { openPack, writePack, type OpenPack } from '../grids/decoded/pack-file'
-import { packTile, tileBox, tileCount, type PackShape, type PackedTile, type TileCells } from '../grids/decoded/tile-pack'
+import { packTile, tileBox, tileCount, wholeGridCells, type PackShape, type PackedTile, type TileCells } from '../grids/decoded/tile-pack'
 import { tileRectangles } from '../grids/decoded/tile-rectangles'
 import { readMasked, type MaskedValues } from './read-masked'
 import type { LayerPlace } from './tasks'
@@ -13,8 +13,6 @@ export interface LayerTiles {
   tiles: Map<number, TileCells>
 }
 
-/** Grids up to here are decoded whole when they are first read; of larger ones only what somebody watches. */
-const wholeGridCells = 4 * 1024 * 1024
 const mostReasons = 32
 
 /**

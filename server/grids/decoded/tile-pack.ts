@@ -8,6 +8,9 @@ import { shuffled, unshuffled } from './shuffle'
  */
 export const tileSide = 64
 
+/** Grids up to here are decoded whole when they are first read; of larger ones only what somebody watches. */
+export const wholeGridCells = 4 * 1024 * 1024
+
 export interface PackShape {
   rows: number
   columns: number
@@ -28,6 +31,8 @@ const withReasons = 4
 const magic = 'OFFTILE2'
 const indexEntry = 16
 const headBytes = 8
+/** A header names at most 32 reasons: a longer one is damage, and no memory is asked for it. */
+const mostHeaderBytes = 64 * 1024
 const empty = new Uint8Array(0)
 
 export interface PackHeader extends PackShape {
@@ -95,7 +100,8 @@ export function unpackTile(flags: number, bytes: Uint8Array, cells: number): Til
   const values = new Float64Array(cells).fill(NaN)
   if (bytes.length === 0) return { values, reasons: null }
   const own = bytes.byteOffset % 8 === 0 ? bytes : Uint8Array.from(bytes)
-  const [length, count] = new Uint32Array(own.buffer, own.byteOffset, 2) as unknown as [number, number]
+  const head = new Uint32Array(own.buffer, own.byteOffset, 2)
+  const [length, count] = [head[0]!, head[1]!]
   const numbers = own.subarray(headBytes, headBytes + length)
   const mask = own.subarray(headBytes + length, headBytes + length + Math.ceil(cells / 8))
   const seen = flags & wide ? new Float64Array(inflated(numbers, count * 8, 8).buffer) : new Float32Array(numbers.buffer, numbers.byteOffset, count)
@@ -157,7 +163,8 @@ export function encodePack(header: PackHeader, tiles: ReadonlyMap<number, Packed
 /** How many bytes the front of a pack has, from its first twelve; null when they are no pack's. */
 export function frontLength(first: Buffer, shape: PackShape): number | null {
   if (first.length < magic.length + 4 || first.toString('latin1', 0, magic.length) !== magic) return null
-  return magic.length + 4 + first.readUInt32LE(magic.length) + tileCount(shape) * indexEntry + 4
+  const textLength = first.readUInt32LE(magic.length)
+  return textLength > mostHeaderBytes ? null : magic.length + 4 + textLength + tileCount(shape) * indexEntry + 4
 }
 
 /** The front of a pack read back; null when it does not check or is of another grid. */

@@ -3,7 +3,7 @@ import { promisify } from 'node:util'
 import { deflate, inflate } from 'node:zlib'
 import type { Context } from '../../context'
 import type { Transaction } from '../../db'
-import { tileCount, tileSide, tilesAcross } from '../../grids/decoded/tile-pack'
+import { tileCount, wholeGridCells } from '../../grids/decoded/tile-pack'
 import { giveWay, moreUrgent } from '../../jobs/give-way'
 import { markProgress } from '../../jobs/queue'
 import type { FeedRecord } from '../../models/feed'
@@ -11,12 +11,11 @@ import type { JobRecord } from '../../models/job'
 import { activeGeometries } from '../../queries/geometries'
 import { layersById, trustedAmong, type PlacedLayer } from '../../queries/layers'
 import type { CellCounts, ComposedMask } from '../../workers/mask-tasks'
+import { planOf } from '../../workers/region-cells'
 import { cellWeights } from '../cell-weights'
 import { placeOf } from '../layer-place'
 import { boxesMeet } from '../summarise-layers'
 
-/** Larger grids are decoded only where somebody watches, and counted only there. */
-export const wholeGridCells = 4 * 1024 * 1024
 /** Cells counted between two marks of progress, and layers at most. */
 const cellsAtOnce = 16 * 1024 * 1024
 const mostLayersAtOnce = 62
@@ -112,8 +111,7 @@ async function tilesToCount(context: Context, gridId: number): Promise<number[]>
   const tiles = new Set<number>()
   for (const geometry of await activeGeometries(context)) {
     if (!boxesMeet(geometry, grid)) continue
-    const { index } = await cellWeights(context, geometry.id, gridId, grid)
-    for (const cell of index) tiles.add(Math.floor(cell / grid.columns / tileSide) * tilesAcross(grid) + Math.floor((cell % grid.columns) / tileSide))
+    for (const tile of planOf(await cellWeights(context, geometry.id, gridId, grid), grid).tiles) tiles.add(tile)
   }
   return [...tiles].sort((a, b) => a - b)
 }

@@ -191,7 +191,7 @@ describe('history', () => {
     }
     void runNextJob(context)
     const job = () => context.models.jobs.findOne({ where: { kind: 'backfill-region' }, rejectOnEmpty: true })
-    await expect.poll(async () => (await job()).done).toBe(128)
+    await expect.poll(async () => (await job()).done, { timeout: 20_000 }).toBe(128)
     context.workers.heavy = heavy
     await voidLeases(context)
     await runJobs(context)
