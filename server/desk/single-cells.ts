@@ -1,6 +1,5 @@
 import type { SingleCells } from '../../shared/schemas/outlines'
 import { dateOf } from '../../shared/science/local-day'
-import { mergeLayers } from '../../shared/science/merge-views'
 import { wholeShare } from '../../shared/science/region-outline'
 import { fewestWholeCells, wholeWaterCells } from '../../shared/science/whole-water'
 import { ApiError } from '../api-error'
@@ -8,9 +7,9 @@ import type { Context } from '../context'
 import { cellCentre } from '../grids/cell-centre'
 import { gridOf } from '../pipeline/known-grids'
 import { maskedWeights, maskInForce } from '../pipeline/masks/mask-in-force'
-import { rangeOf } from '../pipeline/layer-pictures'
+import { rangeOf, readable } from '../pipeline/layer-pictures'
 import { placeOf } from '../pipeline/layer-place'
-import { layersById, type PlacedLayer } from '../queries/layers'
+import { layersById } from '../queries/layers'
 import { newestView } from '../queries/newest-view'
 
 /** More than these are no few cells, however little of each lies inside. */
@@ -33,7 +32,8 @@ export async function singleCells(context: Context, regionId: number, feedId: nu
   const wholeCells = wholeWaterCells(weights)
   const head = { wholeCells, day: dateOf(view.day), unit: feed.unit }
   if (wholeCells >= fewestWholeCells || weights.index.length > mostCells) return { few: wholeCells < fewestWholeCells, ...head, cells: [] }
-  const values = await valuesOf(context, layers, weights.index, rangeOf(feed), feed.scale)
+  const reading = { ...rangeOf(feed), scale: feed.scale }
+  const values = await readable(context.workers.light('readView', { layers: layers.map((layer) => placeOf(context, layer)), weights, reading }))
   const grid = await gridOf(context, first.gridId)
   const cells = Array.from(weights.index, (cell, i) => {
     const [longitude, latitude] = cellCentre(grid, cell)
@@ -41,22 +41,4 @@ export async function singleCells(context: Context, regionId: number, feedId: nu
     return { longitude, latitude, share, whole: share >= wholeShare, water: weights.water[i] === 1, value: Number.isFinite(values[i]) ? values[i]! : null }
   })
   return { few: true, ...head, cells }
-}
-
-async function valuesOf(context: Context, layers: readonly PlacedLayer[], index: Uint32Array, range: ReturnType<typeof rangeOf>, scale: 'log10' | 'linear'): Promise<Float64Array> {
-  const asked = layers.flatMap((layer) => {
-    const place = placeOf(context, layer)
-    return Array.from(index, (cell) => ({ layer: place, row: Math.floor(cell / layer.columns), column: cell % layer.columns }))
-  })
-  const read = await context.workers.light('readCells', { cells: asked, range })
-  return mergeLayers(
-    layers.map(({ processingVersion, observedAt, endsAt, producedAt }, at) => ({
-      values: Float64Array.from(index, (_, i) => read[at * index.length + i] ?? NaN),
-      processingVersion,
-      observedAt,
-      endsAt,
-      producedAt,
-    })),
-    scale,
-  )
 }

@@ -1,3 +1,4 @@
+import { columnsRound } from '../../shared/science/cell-box'
 import type { Grid } from '../../shared/science/grid'
 import { polygonAreaKm2 } from '../../shared/science/ring-area'
 import { bitAt } from '../../shared/science/water-mask'
@@ -42,24 +43,23 @@ function waterOf({ grid, mask }: MeasuredGrid, { index, share, areaKm2, water }:
     return found
   }
   for (const [i, cell] of index.entries()) if (water[i] === 1) landOf.set(cell, false)
+  const round = columnsRound(grid)
   let [waterKm2, nearKm2] = [0, 0]
   for (const [i, cell] of index.entries()) {
     if (water[i] === 0) continue
     const part = share[i]! * areaKm2[i]!
     waterKm2 += part
-    if (neighbours(grid, cell).some(land)) nearKm2 += part
+    if (neighbours(grid, cell, round).some(land)) nearKm2 += part
   }
   return { waterAreaKm2: waterKm2, nearLandShare: waterKm2 > 0 ? nearKm2 / waterKm2 : null }
 }
 
-function neighbours(grid: Grid, cell: number): number[] {
-  const { rows, columns } = grid
+function neighbours({ rows, columns }: Grid, cell: number, round: number | null): number[] {
   const [row, column] = [Math.floor(cell / columns), cell % columns]
-  const goesRound = grid.kind === 'axes' && Math.abs(grid.lonEdges[columns]! - grid.lonEdges[0]!) >= 360 - 1e-6
   const around: number[] = []
   for (let r = Math.max(0, row - 1); r <= Math.min(rows - 1, row + 1); r++) {
     for (const c of [column - 1, column, column + 1]) {
-      const at = goesRound ? (c + columns) % columns : c
+      const at = round === null ? c : (c + round) % round
       if (at >= 0 && at < columns && !(r === row && at === column)) around.push(r * columns + at)
     }
   }

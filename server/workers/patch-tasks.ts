@@ -51,7 +51,10 @@ export interface FoundPatches {
   gone: GonePatch[]
 }
 
+/** Tasks that read the cells of single views. */
 export interface PatchTasks {
+  /** The values of a view's cells, in the order of its weights; NaN for missing. */
+  readView: { input: Omit<ViewAsked, 'grid'> & { reading: ValidRange & { scale: Scale } }; output: Float64Array }
   findPatches: {
     input: {
       now: ViewAsked

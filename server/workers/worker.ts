@@ -19,6 +19,7 @@ import { summariseViews } from './summarise-views'
 import { surveyLayer } from './survey-layer'
 import { readAreas } from './read-areas'
 import type { Tasks } from './tasks'
+import { readView } from './view-cells'
 import { weighCells } from './weigh-cells'
 
 /** Errors lose their class between threads: a refusal crosses as data. `spent`: this thread should do no further task. */
@@ -44,6 +45,7 @@ const handlers: { [K in keyof Tasks]: (input: Tasks[K]['input']) => Promise<Task
   composeMask,
   drawMaskTile,
   findPatches,
+  readView: ({ layers, weights, reading }) => readView(layers, weights, reading),
   writeDemoFile: ({ file, directory }) => writeDemoFile(file, directory),
 }
 

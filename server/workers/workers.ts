@@ -22,11 +22,11 @@ export interface Workers {
 }
 
 /** After these a task is given up and its thread ended. */
-const secondsFor: Partial<Record<keyof Tasks, number>> = { inspectFile: 300, drawTile: 60, readCells: 120, surveyLayer: 120, findPatches: 60, checkOutline: 60, measureOutline: 60, readAreas: 60, findLandMarks: 60, drawMaskTile: 60 }
+const secondsFor: Partial<Record<keyof Tasks, number>> = { inspectFile: 300, drawTile: 60, readCells: 120, surveyLayer: 120, findPatches: 60, readView: 60, checkOutline: 60, measureOutline: 60, readAreas: 60, findLandMarks: 60, drawMaskTile: 60 }
 const secondsForOthers = 900
 
 /** Tasks that read what somebody sent: what ends their thread is the file's doing until shown otherwise. */
-const readsFiles: ReadonlySet<keyof Tasks> = new Set(['inspectFile', 'summariseViews', 'drawTile', 'readCells', 'surveyLayer', 'findPatches', 'readAreas', 'findLandMarks', 'countCells'])
+const readsFiles: ReadonlySet<keyof Tasks> = new Set(['inspectFile', 'summariseViews', 'drawTile', 'readCells', 'surveyLayer', 'findPatches', 'readView', 'decodeLayers', 'readAreas', 'findLandMarks', 'countCells'])
 
 /** Starts the threads on the bundled worker (`npm run build:server` makes it). */
 export function startWorkers(bundle: string, seconds: Partial<Record<keyof Tasks, number>> = {}): Workers {
