@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import type { Feed } from '../../../shared/schemas/feeds'
 import { formulaOf } from '../../../shared/science/optics/formulas'
+import { Fact, Facts } from '../../components/ui/facts'
 import { SectionHead } from '../../components/ui/page'
 import { dayWithYear } from '../../lib/dates'
 import { unitWords } from '../../../shared/figure-text'
@@ -37,23 +38,14 @@ export function FeedFacts({ feed }: { feed: Feed }) {
   return (
     <section>
       <SectionHead>How it is read</SectionHead>
-      <dl className="grid grid-cols-[auto_minmax(0,1fr)] text-small">
+      <Facts>
         {facts.map(([name, value]) => (
           <Fact key={name} name={name}>
             {value}
           </Fact>
         ))}
-      </dl>
+      </Facts>
     </section>
-  )
-}
-
-function Fact({ name, children }: { name: string; children: ReactNode }) {
-  return (
-    <>
-      <dt className="border-b border-rule py-2 pr-6 text-ink2">{name}</dt>
-      <dd className="border-b border-rule py-2">{children}</dd>
-    </>
   )
 }
 

@@ -1,5 +1,6 @@
 import type { ReactNode } from 'react'
 import type { WaterMaskShown } from '../../../shared/schemas/masks'
+import { Fact, Facts } from '../../components/ui/facts'
 import { dayWithYear } from '../../lib/dates'
 import { grouped, percent } from '../../lib/format'
 import { maskMeaning, maskName, periodWords } from './mask-words'
@@ -20,21 +21,12 @@ export function MaskFacts({ mask, cells }: { mask: WaterMaskShown; cells: number
   if (mask.inForceSince) facts.push(['In force since', `${dayWithYear(mask.inForceSince)}${mask.inForceBy ? `, by ${mask.inForceBy}` : ''}`])
   if (mask.note) facts.push(['Mind', mask.note])
   return (
-    <dl className="grid grid-cols-[auto_minmax(0,1fr)] text-small">
+    <Facts>
       {facts.map(([name, value]) => (
         <Fact key={name} name={name}>
           {value}
         </Fact>
       ))}
-    </dl>
-  )
-}
-
-function Fact({ name, children }: { name: string; children: ReactNode }) {
-  return (
-    <>
-      <dt className="border-b border-rule py-2 pr-6 text-ink2">{name}</dt>
-      <dd className="border-b border-rule py-2">{children}</dd>
-    </>
+    </Facts>
   )
 }

@@ -1,7 +1,7 @@
-import type { ReactNode } from 'react'
 import type { FeedPull } from '../../../shared/schemas/pulls'
 import { useMe } from '../../api/auth'
 import { Age } from '../../components/ui/age'
+import { Fact, Facts } from '../../components/ui/facts'
 import { FaultMark } from '../../components/ui/fault-mark'
 import { dayAndTime, zoneWord } from '../../lib/dates'
 import { credentialWords, everyWords, lookBackWords, runWords } from './pull-words'
@@ -11,7 +11,7 @@ export function PullState({ pull, settings }: { pull: FeedPull; settings: NonNul
   const zone = useMe()?.timeZone ?? 'UTC'
   return (
     <>
-      <dl className="grid grid-cols-[auto_minmax(0,1fr)] text-small">
+      <Facts>
         <Fact name="Address">
           <span className="fig wrap-anywhere">{settings.address}</span>
         </Fact>
@@ -27,7 +27,7 @@ export function PullState({ pull, settings }: { pull: FeedPull; settings: NonNul
         <Fact name="Next">
           {pull.running ? 'now' : pull.nextDueAt && <span className="tabular-nums">{`${dayAndTime(pull.nextDueAt, zone)} ${zoneWord(pull.nextDueAt, zone)}`}</span>}
         </Fact>
-      </dl>
+      </Facts>
       {pull.runs.length > 1 && <EarlierRuns runs={pull.runs.slice(1)} />}
     </>
   )
@@ -56,14 +56,5 @@ function EarlierRuns({ runs }: { runs: FeedPull['runs'] }) {
         ))}
       </ol>
     </details>
-  )
-}
-
-function Fact({ name, children }: { name: string; children: ReactNode }) {
-  return (
-    <>
-      <dt className="border-b border-rule py-2 pr-6 text-ink2">{name}</dt>
-      <dd className="border-b border-rule py-2">{children}</dd>
-    </>
   )
 }

@@ -1,4 +1,5 @@
 import type { OffingFile } from '../../../shared/schemas/files'
+import { Fact, Facts } from '../../components/ui/facts'
 import { Message } from '../../components/ui/message'
 import { whatToDo } from './what-to-do'
 
@@ -13,25 +14,16 @@ export function RefusedPart({ refusal }: { refusal: NonNullable<OffingFile['refu
       {facts.length > 0 && (
         <details>
           <summary className="link inline-flex min-h-11 items-center font-strong tab:min-h-0">What was found</summary>
-          <dl className="mt-2 grid max-w-3xl grid-cols-[auto_minmax(0,1fr)] text-small">
-            <dt className="border-b border-rule py-2 pr-6 text-ink2">code</dt>
-            <dd className="fig border-b border-rule py-2">{refusal.code}</dd>
-            {facts.map(([name, value]) => (
-              <Fact key={name} name={name} value={value} />
+          <Facts className="mt-2 max-w-3xl">
+            {[['code', refusal.code] as const, ...facts].map(([name, value]) => (
+              <Fact key={name} name={inWords(name)} className="fig break-words">
+                {typeof value === 'object' ? JSON.stringify(value) : String(value)}
+              </Fact>
             ))}
-          </dl>
+          </Facts>
         </details>
       )}
     </section>
-  )
-}
-
-function Fact({ name, value }: { name: string; value: unknown }) {
-  return (
-    <>
-      <dt className="border-b border-rule py-2 pr-6 text-ink2">{inWords(name)}</dt>
-      <dd className="fig border-b border-rule py-2 break-words">{typeof value === 'object' ? JSON.stringify(value) : String(value)}</dd>
-    </>
   )
 }
 
