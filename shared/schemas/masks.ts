@@ -77,7 +77,7 @@ export const feedMasks = z.object({
   feedId: id,
   items: z.array(gridMasks),
   nextCursor: z.null(),
-  /** How far the feed's history has been made anew, as after another mask was put in force; null when that is over. */
+  /** How far the feed's history has been made anew, as after another mask was put in force; null when all of it has. Until then its regions are not judged. */
   remaking: z.object({ state: z.enum(jobStates), done: z.number().int(), total: z.number().int() }).nullable(),
 })
 export type FeedMasks = z.infer<typeof feedMasks>

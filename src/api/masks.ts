@@ -16,7 +16,7 @@ export const feedMasksQuery = (feedId: number) =>
     queryKey: ['feeds', feedId, 'masks'],
     queryFn: ({ signal }) => call(endpoints.feedMasks, { params: { id: feedId }, signal }),
     // The stream tells how far it is; this is for when the stream is down.
-    refetchInterval: ({ state: { data } }) => (data?.remaking || data?.items.some((grid) => isMaking(grid.making)) ? whileMakingMs : false),
+    refetchInterval: ({ state: { data } }) => (data?.remaking?.state === 'waiting' || data?.remaking?.state === 'running' || data?.items.some((grid) => isMaking(grid.making)) ? whileMakingMs : false),
   })
 
 export const maskChangeQuery = (maskId: number) =>

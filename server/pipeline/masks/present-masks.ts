@@ -18,7 +18,7 @@ export async function presentMasks(context: Context, feedId: number): Promise<Fe
   const items: GridMasks[] = []
   for (const grid of await gridsOfFeed(context, feedId)) items.push(await presentGrid(context, feedId, grid))
   const remaking = await context.db.first<NonNullable<FeedMasks['remaking']>>(
-    `SELECT state, done, total FROM jobs WHERE kind = 'backfill-feed' AND job_key = $key AND state IN ('waiting', 'running', 'paused') ORDER BY id DESC LIMIT 1`,
+    `SELECT state, done, total FROM jobs WHERE state <> 'done' AND id = (SELECT max(id) FROM jobs WHERE kind = 'backfill-feed' AND job_key = $key)`,
     { key: String(feedId) },
   )
   return { feedId, items, nextCursor: null, remaking: remaking ?? null }

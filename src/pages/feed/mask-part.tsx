@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query'
 import { lazy, Suspense, useState } from 'react'
 import type { Feed } from '../../../shared/schemas/feeds'
-import type { GridMasks } from '../../../shared/schemas/masks'
+import type { FeedMasks, GridMasks } from '../../../shared/schemas/masks'
 import { useCan } from '../../api/auth'
 import { feedMasksQuery, isMaking } from '../../api/masks'
 import { Button } from '../../components/ui/button'
@@ -29,8 +29,9 @@ export function MaskPart({ feed }: { feed: Masked }) {
       {masks.isPending && <Waiting lines={4} />}
       {masks.error && <Failure error={masks.error} onRetry={() => void masks.refetch()} />}
       {masks.data?.remaking && (
-        <div className="pt-3">
-          <Progress {...masks.data.remaking} total={masks.data.remaking.total || 1} label={masks.data.remaking.state === 'paused' ? 'Making the history anew, paused' : 'Making the history anew'} />
+        <div className="grid gap-2 pt-3">
+          <Progress {...masks.data.remaking} total={masks.data.remaking.total || 1} label={remakingWords[masks.data.remaking.state]} />
+          <p className="text-small text-ink2">Until all of it is made anew its regions are not judged, and no alert is raised from this feed.{stands(masks.data.remaking.state) && ' An admin goes on with it among the jobs.'}</p>
         </div>
       )}
       <div className="grid gap-8">
@@ -41,6 +42,17 @@ export function MaskPart({ feed }: { feed: Masked }) {
     </section>
   )
 }
+
+const remakingWords: Record<NonNullable<FeedMasks['remaking']>['state'], string> = {
+  waiting: 'Making the history anew',
+  running: 'Making the history anew',
+  paused: 'Making the history anew, paused',
+  cancelled: 'Making the history anew, stopped before its end',
+  failed: 'Making the history anew, failed',
+  done: 'History made anew',
+}
+
+const stands = (state: NonNullable<FeedMasks['remaking']>['state']) => state === 'paused' || state === 'cancelled' || state === 'failed'
 
 function GridPart({ feed, grid, several }: { feed: Masked; grid: GridMasks; several: boolean }) {
   const [shownId, setShownId] = useState<number>()

@@ -125,6 +125,12 @@ test('an admin reads what it will change before a mask goes into force, and then
   expect(screen.getByRole('button', { name: 'Put Land outline, version 1 in force…' })).toHaveTextContent('Go back to it…')
 })
 
+test('a history that was not made anew to its end says that nothing is judged, and who goes on', async () => {
+  open(officer, { ...masks(), remaking: { state: 'failed' as const, done: 62, total: 3653 } })
+  expect(await screen.findByRole('progressbar', { name: 'Making the history anew, failed' })).toHaveAttribute('aria-valuenow', '62')
+  expect(screen.getByText(/its regions are not judged, and no alert is raised from this feed\. An admin goes on with it among the jobs\./)).toBeVisible()
+})
+
 test('who decided by an old sight of it is told, and nothing is closed', async () => {
   open(admin, masks({ masks: [byShare, outline] }), {
     'GET /masks/9/change': () => reply(endpoints.maskChange, { ...change, regions: [], runningEvents: 0, openAlerts: 0 }),
