@@ -29,9 +29,9 @@ let keptBytes = 0
 let readers = 0
 
 /**
- * NetCDF-4's usual storage (chunks under a version 1 B-tree, shuffle and deflate, little-endian) unpacked by Node's own
- * zlib, which takes about half the time of the library's compiled one, and each chunk once however many windows cut it. Whatever is unlike this, damaged or
- * never written is left to the library and its error messages.
+ * NetCDF-4's usual storage (chunks under a version 1 B-tree, shuffle and deflate, little-endian), each chunk unpacked once
+ * however many windows cut it; the library unpacks it for each. Whatever is unlike this, cannot be unpacked or was never
+ * written is left to the library and its error messages.
  */
 export function openChunkReader(path: string, library: { create_object_reference(file: bigint, name: string): Uint8Array }, file: File): ChunkReader {
   const descriptor = openSync(path, 'r')
